@@ -1,0 +1,4 @@
+declare module '*.grammar' {
+  import type { LRParser } from '@lezer/lr';
+  export const parser: LRParser;
+}
