@@ -1,0 +1,9 @@
+export {
+  createClient,
+  type ClientOptions,
+  type EvaluatorClient,
+  type EvaluatorState,
+  type WorkerPort,
+} from './client.ts';
+export type { VocabularyEntry } from './protocol.ts';
+export { startEvaluator } from './start.ts';
