@@ -6,7 +6,11 @@ export default {
   preprocess: vitePreprocess(),
   kit: {
     adapter: adapter({ out: 'build/page' }),
-    files: { routes: 'src/routes', appTemplate: 'src/routes/app.html' },
+    files: {
+      routes: 'src/routes',
+      appTemplate: 'src/routes/app.html',
+      hooks: { server: 'src/routes/hooks.server' },
+    },
     csp: {
       mode: 'auto',
       directives: {

@@ -1,0 +1,9 @@
+import type { FileService } from '../server/index.ts';
+
+declare global {
+  namespace App {
+    interface Locals {
+      service: FileService;
+    }
+  }
+}
