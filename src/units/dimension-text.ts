@@ -45,8 +45,7 @@ export function dimensionText(dimension: Dimension, counted: Counted = {}): stri
     plain.exponents.every((exponent, i) => exponent === (exponents[i] ?? 0)),
   );
   if (named && !isCounted) return named[0];
-  // Per radian or per hertz an engineer thinks of torques and forces, N m/(rad s), not of power, W/rad.
-  const candidates = MASS_SUBSTITUTES.filter(([symbol]) => !isCounted || symbol !== 'W').map(
+  const candidates = MASS_SUBSTITUTES.filter(([symbol]) => suits(symbol, plain, isCounted)).map(
     (substitute) => factorsWith(plain, ...substitute),
   );
   const best = candidates.reduce((least, next) => (cost(next) < cost(least) ? next : least));
@@ -56,6 +55,11 @@ export function dimensionText(dimension: Dimension, counted: Counted = {}): stri
     { symbol: 'Hz', exponent: cycles },
   ];
   return productText(counting.filter((factor) => factor.exponent !== 0));
+}
+
+/** No volts without a current; per radian or per hertz torques and forces, N m/(rad s), rather than power, W/rad. */
+function suits(symbol: string, dimension: Dimension, isCounted: boolean): boolean {
+  return !(symbol === 'V' && dimension.exponents[3] === 0) && !(symbol === 'W' && isCounted);
 }
 
 /** The dimension as powers of `symbol` (in place of kg) and the other base units. */

@@ -49,6 +49,7 @@ export function unknownUnit(text: string, custom?: ReadonlyMap<string, unknown>)
 function likelyUnit(text: string, custom?: ReadonlyMap<string, unknown>): string | null {
   return (
     HABITS.get(text.toLowerCase()) ??
+    capitalKilo(text) ??
     gluedPower(text) ??
     gluedProduct(text) ??
     otherCase(text, custom)
