@@ -24,12 +24,12 @@ export interface OpenWorksheet {
 }
 
 /**
- * What is on disk where somebody else's version would have been overwritten; `text` is null where it is no UTF-8
- * text, both are null where the file was removed.
+ * What is on disk where somebody else's version would have been overwritten. A file that was removed is an empty text
+ * without a hash: to save it anew is to save over `hash`, in this case too.
  */
 export interface SaveConflict {
   readonly kind: 'conflict';
-  readonly text: string | null;
+  readonly text: string;
   readonly hash: string | null;
 }
 
@@ -184,8 +184,8 @@ async function create(
   { path }: ConfinedPath,
   bytes: Uint8Array,
   baseHash: string | null,
-): Promise<SavedWorksheet | SaveConflict> {
-  if (baseHash !== null) return { kind: 'conflict', text: null, hash: null };
+): Promise<SavedWorksheet | SaveConflict | Refusal> {
+  if (baseHash !== null) return { kind: 'conflict', text: '', hash: null };
   try {
     await createAtomically(path, bytes);
   } catch (error) {
@@ -196,7 +196,7 @@ async function create(
   return { kind: 'saved', hash: contentHash(bytes) };
 }
 
-function conflict(onDisk: Uint8Array, hash: string): SaveConflict {
+function conflict(onDisk: Uint8Array, hash: string): SaveConflict | Refusal {
   const text = decodeWorksheet(onDisk);
-  return { kind: 'conflict', text: isRefusal(text) ? null : text, hash };
+  return isRefusal(text) ? text : { kind: 'conflict', text, hash };
 }

@@ -1,0 +1,66 @@
+import type { Verdict } from '../engine/index.ts';
+import type { CheckRecord, ProblemRecord } from './check-record.ts';
+
+type RequirementRecord = CheckRecord['requirements'][number];
+
+const MARKS: Readonly<Record<Verdict, string>> = {
+  met: '●',
+  'met at nominal only': '◐',
+  'not met': '✕',
+  undecided: '◌',
+};
+const VERDICTS = Object.keys(MARKS) as readonly Verdict[];
+const WIDEST_VERDICT = Math.max(...VERDICTS.map((verdict) => verdict.length));
+
+/** What `check` prints for a reader: verdicts with values and margins, problems with their places, and a summary. */
+export function checkText(record: CheckRecord): string {
+  const labelWidth = Math.max(0, ...record.requirements.map((row) => title(row).length));
+  return [
+    record.file,
+    ...record.requirements.map((row) => `  ${verdictLine(row, labelWidth)}`),
+    ...record.problems.flatMap((problem) => problemLines(record.file, problem)),
+    `  ${summary(record)}`,
+    '',
+  ].join('\n');
+}
+
+function title({ label, text }: RequirementRecord): string {
+  return label ?? text;
+}
+
+function verdictLine(row: RequirementRecord, labelWidth: number): string {
+  const verdict = `${MARKS[row.verdict]} ${verdictWords(row)}`.padEnd(WIDEST_VERDICT + 2);
+  const label = title(row).padEnd(labelWidth);
+  return `${verdict}  ${label}  ${margin(row)}`.trimEnd();
+}
+
+/** A verdict that rests on samples says so, since samples prove nothing. */
+function verdictWords({ verdict, how, n }: RequirementRecord): string {
+  return how === 'sampled' && verdict === 'met' ? `met (sampled, n = ${n})` : verdict;
+}
+
+function margin({ text, label, nominal, worst, limit, unit }: RequirementRecord): string {
+  if (nominal === null || limit === null) return label === null ? '' : text;
+  const shown = (value: number) => String(Number(value.toPrecision(4)));
+  const values = worst === null ? shown(nominal) : `${shown(nominal)}, worst ${shown(worst)}`;
+  return `${values}, limit ${shown(limit)}${unit === null ? '' : ` ${unit}`}`;
+}
+
+function problemLines(file: string, problem: ProblemRecord): string[] {
+  const { line, column, severity, message, fixes } = problem;
+  return [
+    `  ${file}:${line}:${column}: ${severity}: ${message}`,
+    ...fixes.map((fix) => `      fix: ${fix.title}`),
+  ];
+}
+
+function summary({ requirements, problems }: CheckRecord): string {
+  const count = (verdict: Verdict) => requirements.filter((row) => row.verdict === verdict).length;
+  const errors = problems.filter(({ severity }) => severity === 'error').length;
+  const others = VERDICTS.filter((verdict) => verdict !== 'met' && count(verdict) > 0);
+  return [
+    requirements.length === 0 ? 'no requirements' : `${count('met')} of ${requirements.length} met`,
+    ...others.map((verdict) => `${count(verdict)} ${verdict.replace('met at', 'at')}`),
+    ...(errors === 0 ? [] : [`${errors} ${errors === 1 ? 'error' : 'errors'}`]),
+  ].join(' · ');
+}

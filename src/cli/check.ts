@@ -1,0 +1,60 @@
+import { readFile, stat } from 'node:fs/promises';
+import { isRefusal, type Refusal } from '../base/index.ts';
+import { createSession } from '../engine/index.ts';
+import { decodeWorksheet, fileRefusal, refuseSize } from '../server/index.ts';
+import { checkRecord, unreadableRecord, type CheckRecord } from './check-record.ts';
+import { checkText } from './check-text.ts';
+
+const BYTE_ORDER_MARK = '\uFEFF';
+
+/** Exit codes of the command; where several apply, the largest wins. */
+export const EXIT = { allMet: 0, notMet: 1, error: 2 } as const;
+
+/**
+ * Evaluates worksheet files one after the other and prints what became of each.
+ *
+ * @param files paths, as given
+ * @param print takes a piece of the output, line end included
+ * @param options.json one JSON object a file, one a line, instead of text
+ * @returns the exit code: 0 all requirements met, 1 one not met, 2 an error in a worksheet or a file that cannot be read
+ */
+export async function check(
+  files: readonly string[],
+  print: (text: string) => void,
+  options: { readonly json: boolean },
+): Promise<number> {
+  let worst: number = EXIT.allMet;
+  for (const file of files) {
+    const record = await checkFile(file);
+    print(options.json ? `${JSON.stringify(record)}\n` : checkText(record));
+    worst = Math.max(worst, exitCode(record));
+  }
+  return worst;
+}
+
+/** Evaluates one file in a session of its own; a file that cannot be read is a problem like any other. */
+export async function checkFile(file: string): Promise<CheckRecord> {
+  const text = await readWorksheet(file);
+  if (isRefusal(text)) return unreadableRecord(file, text.reason);
+  return checkRecord(file, text, createSession({}).update(text));
+}
+
+/** The text without a byte order mark, which counts neither as a character of the first line nor as part of it. */
+async function readWorksheet(file: string): Promise<string | Refusal> {
+  try {
+    const { size } = await stat(file);
+    const bytes = refuseSize(size) ?? (await readFile(file));
+    if (isRefusal(bytes)) return bytes;
+    const text = decodeWorksheet(bytes);
+    if (isRefusal(text)) return text;
+    return text.startsWith(BYTE_ORDER_MARK) ? text.slice(1) : text;
+  } catch (error) {
+    return fileRefusal(error, file);
+  }
+}
+
+/** What one record alone makes the command exit with. */
+export function exitCode({ requirements, problems }: CheckRecord): number {
+  if (problems.some(({ severity }) => severity === 'error')) return EXIT.error;
+  return requirements.every(({ verdict }) => verdict === 'met') ? EXIT.allMet : EXIT.notMet;
+}
