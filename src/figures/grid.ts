@@ -1,0 +1,91 @@
+import { invariant } from '../base/index.ts';
+
+/** A side of the gain plane: `n` samples in the middles of equal cells from `from` to `to`. */
+export interface Side {
+  readonly from: number;
+  readonly to: number;
+  readonly n: number;
+}
+
+/** Says for a batch of points how far a condition is met: above 0 it holds; not a number counts as not held. */
+export type BatchMargin = (xs: Float64Array, ys: Float64Array) => ArrayLike<number>;
+
+/**
+ * The plane cut into cells, each with one sample in its middle, row by row:
+ *
+ *     y.to   ·  ·  ·  ·      index = row · x.n + column
+ *            ·  ·  ·  ·      grid coordinates: column + ½, row + ½ at a sample,
+ *     y.from ·  ·  ·  ·      0 to x.n and 0 to y.n over the whole plane
+ *        x.from      x.to
+ */
+export interface Grid {
+  readonly x: Side;
+  readonly y: Side;
+}
+
+/** Points for one call of a condition: enough to amortise the call, few enough to stay in the cache. */
+const CHUNK = 4096;
+
+/** The value at a grid coordinate of a side. */
+export function alongSide(side: Side, coordinate: number): number {
+  return side.from + ((side.to - side.from) * coordinate) / side.n;
+}
+
+/** Where a condition holds, sample by sample: 1 or 0. */
+export function holdsOver(grid: Grid, margin: BatchMargin): Uint8Array {
+  const holds = new Uint8Array(grid.x.n * grid.y.n);
+  inChunks(holds.length, (start, end) => {
+    const { xs, ys } = samples(grid, start, end);
+    markHolding(margin(xs, ys), holds, start);
+  });
+  return holds;
+}
+
+/** Of the samples marked in `candidates`, those where a condition holds; only these are evaluated. */
+export function holdsAmong(grid: Grid, margin: BatchMargin, candidates: Uint8Array): Uint8Array {
+  const places: number[] = [];
+  candidates.forEach((marked, i) => marked && places.push(i));
+  const xs = Float64Array.from(places, (i) => alongSide(grid.x, (i % grid.x.n) + 0.5));
+  const ys = Float64Array.from(places, (i) => alongSide(grid.y, Math.floor(i / grid.x.n) + 0.5));
+  const verdicts = holdsAt(margin, xs, ys);
+  const holds = new Uint8Array(candidates.length);
+  places.forEach((place, i) => (holds[place] = verdicts[i]));
+  return holds;
+}
+
+/** Whether a condition holds at each of some points: 1 or 0. */
+export function holdsAt(margin: BatchMargin, xs: Float64Array, ys: Float64Array): Uint8Array {
+  const holds = new Uint8Array(xs.length);
+  inChunks(xs.length, (start, end) => {
+    markHolding(margin(xs.subarray(start, end), ys.subarray(start, end)), holds, start);
+  });
+  return holds;
+}
+
+/** Samples at which all of these hold. */
+export function intersection(fields: readonly Uint8Array[]): Uint8Array {
+  invariant(fields.length > 0, 'an area without conditions');
+  const all = fields[0].slice();
+  for (const field of fields.slice(1)) for (let i = 0; i < all.length; i++) all[i] &= field[i];
+  return all;
+}
+
+function inChunks(length: number, visit: (start: number, end: number) => void): void {
+  for (let start = 0; start < length; start += CHUNK) visit(start, Math.min(start + CHUNK, length));
+}
+
+function samples(grid: Grid, start: number, end: number): { xs: Float64Array; ys: Float64Array } {
+  const columns = grid.x.n;
+  const xs = new Float64Array(end - start);
+  const ys = new Float64Array(end - start);
+  for (let i = start; i < end; i++) {
+    const row = Math.floor(i / columns);
+    xs[i - start] = alongSide(grid.x, i - row * columns + 0.5);
+    ys[i - start] = alongSide(grid.y, row + 0.5);
+  }
+  return { xs, ys };
+}
+
+function markHolding(margins: ArrayLike<number>, holds: Uint8Array, start: number): void {
+  for (let i = 0; i < margins.length; i++) holds[start + i] = margins[i] > 0 ? 1 : 0;
+}
