@@ -1,0 +1,130 @@
+import type { Complex } from './complex.ts';
+
+/** Half the gap between 1 and the next double. */
+const ROUNDING = Number.EPSILON / 2;
+/** Parts below this of a root's magnitude are rounding: real roots have none, roots on the axis no real part. */
+const NEGLIGIBLE = 4 * Number.EPSILON;
+
+/**
+ * Roots in their final form: clusters that the rounding of the coefficients explains as one multiple root become one
+ * value, repeated, and complex roots exact conjugate pairs.
+ */
+export function settleRoots(coefficients: Float64Array, roots: readonly Complex[]): Complex[] {
+  const merged = mergeClusters(coefficients, roots, 1);
+  return conjugatePairs(merged.map(snapToAxes));
+}
+
+/**
+ * Merges overlapping uncertainty discs (radius: what a relative change of the coefficients by their rounding moves a
+ * simple root, times `reach`) into their mean, where the mean passes as a multiple root; else tries a shorter reach.
+ */
+function mergeClusters(
+  coefficients: Float64Array,
+  roots: readonly Complex[],
+  reach: number,
+): Complex[] {
+  const radii = roots.map((root) => reach * uncertainty(coefficients, root));
+  return overlapping(roots, radii).flatMap((group) => {
+    if (group.length === 1) return group;
+    const mean = meanOf(group);
+    if (isMultipleRoot(coefficients, mean, group.length)) return group.map(() => mean);
+    return reach < 1e-6 ? group : mergeClusters(coefficients, group, reach / 10);
+  });
+}
+
+/** How far the rounding of the coefficients may move a simple root: n ε Σ|a_k||z|^k / |p'(z)|. */
+function uncertainty(coefficients: Float64Array, z: Complex): number {
+  const slope = taylorCoefficient(coefficients, z, 1);
+  const size = Math.hypot(slope.re, slope.im);
+  return (2 * coefficients.length * ROUNDING * termSizes(coefficients, z, 0)) / size;
+}
+
+/** Groups of roots whose discs overlap, directly or through others. */
+function overlapping(roots: readonly Complex[], radii: readonly number[]): Complex[][] {
+  const groupOf = roots.map((_, i) => i);
+  roots.forEach((a, i) => {
+    for (let j = 0; j < i; j++) {
+      const distance = Math.hypot(a.re - roots[j]!.re, a.im - roots[j]!.im);
+      if (distance > radii[i]! + radii[j]!) continue;
+      const [old, now] = [groupOf[i]!, groupOf[j]!];
+      groupOf.forEach((group, k) => {
+        if (group === old) groupOf[k] = now;
+      });
+    }
+  });
+  return [...new Set(groupOf)].map((group) => roots.filter((_, i) => groupOf[i] === group));
+}
+
+function meanOf(group: readonly Complex[]): Complex {
+  const re = group.reduce((sum, root) => sum + root.re, 0) / group.length;
+  const im = group.reduce((sum, root) => sum + root.im, 0) / group.length;
+  return { re, im };
+}
+
+/** Whether p, p', … to the order before `multiplicity` vanish at z to within the rounding of the coefficients. */
+function isMultipleRoot(coefficients: Float64Array, z: Complex, multiplicity: number): boolean {
+  for (let order = 0; order < multiplicity; order++) {
+    const value = taylorCoefficient(coefficients, z, order);
+    const allowed = 4 * coefficients.length * ROUNDING * termSizes(coefficients, z, order);
+    if (Math.hypot(value.re, value.im) > allowed) return false;
+  }
+  return true;
+}
+
+/** p^(order)(z)/order!, by Horner's rule with binomial weights. */
+function taylorCoefficient(coefficients: Float64Array, z: Complex, order: number): Complex {
+  let re = 0;
+  let im = 0;
+  for (const weighted of binomialWeighted(coefficients, order)) {
+    const next = re * z.re - im * z.im + weighted;
+    im = re * z.im + im * z.re;
+    re = next;
+  }
+  return { re, im };
+}
+
+/** The sum of the magnitudes of the terms of p^(order)(z)/order!. */
+function termSizes(coefficients: Float64Array, z: Complex, order: number): number {
+  const modulus = Math.hypot(z.re, z.im);
+  return binomialWeighted(coefficients, order).reduce((sum, a) => sum * modulus + Math.abs(a), 0);
+}
+
+/** Coefficients of p^(order)/order!, highest power first. */
+function binomialWeighted(coefficients: Float64Array, order: number): Float64Array {
+  const degree = coefficients.length - 1;
+  return coefficients.slice(0, degree - order + 1).map((a, i) => a * binomial(degree - i, order));
+}
+
+function binomial(n: number, k: number): number {
+  let value = 1;
+  for (let i = 1; i <= k; i++) value = (value * (n - k + i)) / i;
+  return value;
+}
+
+function snapToAxes({ re, im }: Complex): Complex {
+  const small = NEGLIGIBLE * Math.hypot(re, im);
+  return { re: Math.abs(re) <= small ? 0 : re, im: Math.abs(im) <= small ? 0 : im };
+}
+
+/** Pairs each root above the real axis with the nearest mirror image below it; what finds none is real. */
+function conjugatePairs(roots: readonly Complex[]): Complex[] {
+  const settled = roots.filter((root) => root.im === 0);
+  const below = roots.filter((root) => root.im < 0);
+  const above = roots.filter((root) => root.im > 0).sort((a, b) => b.im - a.im);
+  for (const upper of above) {
+    const mirror = nearestMirror(upper, below);
+    if (mirror < 0) {
+      settled.push({ re: upper.re, im: 0 });
+      continue;
+    }
+    const [lower] = below.splice(mirror, 1);
+    const pair = { re: (upper.re + lower!.re) / 2, im: (upper.im - lower!.im) / 2 };
+    settled.push(pair, { re: pair.re, im: -pair.im });
+  }
+  return [...settled, ...below.map((root) => ({ re: root.re, im: 0 }))];
+}
+
+function nearestMirror(upper: Complex, below: readonly Complex[]): number {
+  const distances = below.map((root) => Math.hypot(root.re - upper.re, root.im + upper.im));
+  return distances.indexOf(Math.min(...distances));
+}
