@@ -4,11 +4,9 @@ import { createSession } from '../engine/index.ts';
 import { decodeWorksheet, fileRefusal, refuseSize } from '../server/index.ts';
 import { checkRecord, unreadableRecord, type CheckRecord } from './check-record.ts';
 import { checkText } from './check-text.ts';
+import { EXIT, exitCode } from './exit-code.ts';
 
 const BYTE_ORDER_MARK = '\uFEFF';
-
-/** Exit codes of the command; where several apply, the largest wins. */
-export const EXIT = { allMet: 0, notMet: 1, error: 2 } as const;
 
 /**
  * Evaluates worksheet files one after the other and prints what became of each.
@@ -49,12 +47,6 @@ async function readWorksheet(file: string): Promise<string | Refusal> {
     if (isRefusal(text)) return text;
     return text.startsWith(BYTE_ORDER_MARK) ? text.slice(1) : text;
   } catch (error) {
-    return fileRefusal(error, file);
+    return fileRefusal(error, 'Cannot read the file');
   }
-}
-
-/** What one record alone makes the command exit with. */
-export function exitCode({ requirements, problems }: CheckRecord): number {
-  if (problems.some(({ severity }) => severity === 'error')) return EXIT.error;
-  return requirements.every(({ verdict }) => verdict === 'met') ? EXIT.allMet : EXIT.notMet;
 }
