@@ -10,14 +10,13 @@ const MARKS: Readonly<Record<Verdict, string>> = {
   undecided: '◌',
 };
 const VERDICTS = Object.keys(MARKS) as readonly Verdict[];
-const WIDEST_VERDICT = Math.max(...VERDICTS.map((verdict) => verdict.length));
 
 /** What `check` prints for a reader: verdicts with values and margins, problems with their places, and a summary. */
 export function checkText(record: CheckRecord): string {
-  const labelWidth = Math.max(0, ...record.requirements.map((row) => title(row).length));
+  const rows = record.requirements.map((row) => [verdictWords(row), title(row), margin(row)]);
   return [
     record.file,
-    ...record.requirements.map((row) => `  ${verdictLine(row, labelWidth)}`),
+    ...columns(rows).map((line) => `  ${line}`),
     ...record.problems.flatMap((problem) => problemLines(record.file, problem)),
     `  ${summary(record)}`,
     '',
@@ -28,15 +27,21 @@ function title({ label, text }: RequirementRecord): string {
   return label ?? text;
 }
 
-function verdictLine(row: RequirementRecord, labelWidth: number): string {
-  const verdict = `${MARKS[row.verdict]} ${verdictWords(row)}`.padEnd(WIDEST_VERDICT + 2);
-  const label = title(row).padEnd(labelWidth);
-  return `${verdict}  ${label}  ${margin(row)}`.trimEnd();
+/** Sets rows of cells in columns as wide as their widest cell. */
+function columns(rows: readonly (readonly string[])[]): string[] {
+  const width = (column: number) => Math.max(...rows.map((row) => row[column].length));
+  return rows.map((row) =>
+    row
+      .map((cell, column) => cell.padEnd(width(column)))
+      .join('  ')
+      .trimEnd(),
+  );
 }
 
 /** A verdict that rests on samples says so, since samples prove nothing. */
 function verdictWords({ verdict, how, n }: RequirementRecord): string {
-  return how === 'sampled' && verdict === 'met' ? `met (sampled, n = ${n})` : verdict;
+  const basis = how === 'sampled' && verdict === 'met' ? ` (sampled, n = ${n})` : '';
+  return `${MARKS[verdict]} ${verdict}${basis}`;
 }
 
 function margin({ text, label, nominal, worst, limit, unit }: RequirementRecord): string {

@@ -38,15 +38,16 @@ function readServe(words: readonly string[]): Order | Refusal {
   if ('kind' in read) return read;
   const { positionals, values } = read;
   if (positionals.length > 1) return refuse('usage', 'serve takes one folder.');
-  const port = typeof values.port === 'string' ? Number(values.port) : null;
-  if (port !== null && !isPort(port)) {
+  const port = typeof values.port === 'string' ? wholeNumber(values.port) : null;
+  if (port !== null && !(port <= 65535)) {
     return refuse('usage', '--port takes a whole number from 0 to 65535.');
   }
   return { verb: 'serve', folder: positionals[0] ?? DEFAULT_FOLDER, port };
 }
 
-function isPort(port: number): boolean {
-  return Number.isInteger(port) && port >= 0 && port <= 65535;
+/** NaN for anything that is not written in digits alone. */
+function wholeNumber(text: string): number {
+  return /^\d+$/.test(text) ? Number(text) : NaN;
 }
 
 function readCheck(words: readonly string[]): Order | Refusal {
