@@ -4,7 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { listReply, openReply, saveReply, TOKEN_HEADER } from '../../src/server/replies.ts';
 import { openService, type FileService } from '../../src/server/service.ts';
 import { contentHash } from '../../src/server/worksheet-bytes.ts';
-import { temporaryFolder } from './temporary-folder.ts';
+import { temporaryFolder } from '../temporary-folder.ts';
 
 const hashOf = (text: string) => contentHash(Buffer.from(text));
 

@@ -5,7 +5,7 @@ import { eventStream } from '../../src/server/event-stream.ts';
 import { watchFolder, type FolderChange } from '../../src/server/watch.ts';
 import { contentHash } from '../../src/server/worksheet-bytes.ts';
 import { openFolder, type WorksheetFolder } from '../../src/server/worksheet-folder.ts';
-import { temporaryFolder } from './temporary-folder.ts';
+import { temporaryFolder } from '../temporary-folder.ts';
 
 const hashOf = (text: string) => contentHash(Buffer.from(text));
 

@@ -4,7 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { refuse } from '../../src/base/index.ts';
 import { contentHash } from '../../src/server/worksheet-bytes.ts';
 import { openFolder, type WorksheetFolder } from '../../src/server/worksheet-folder.ts';
-import { temporaryFolder } from './temporary-folder.ts';
+import { temporaryFolder } from '../temporary-folder.ts';
 
 const TEXT = '# Mast\r\n\r\nθ leans.\n';
 const hashOf = (text: string) => contentHash(Buffer.from(text));
