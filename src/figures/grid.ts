@@ -7,7 +7,10 @@ export interface Side {
   readonly n: number;
 }
 
-/** Says for a batch of points how far a condition is met: above 0 it holds; not a number counts as not held. */
+/**
+ * Says for a batch of points whether, or how far, a condition is met: above 0 it holds; not a number counts as not
+ * held. The arrays of points are used again for the next batch, so it must not keep them.
+ */
 export type BatchMargin = (xs: Float64Array, ys: Float64Array) => ArrayLike<number>;
 
 /**
@@ -33,12 +36,27 @@ export function alongSide(side: Side, coordinate: number): number {
 
 /** Where a condition holds, sample by sample: 1 or 0. */
 export function holdsOver(grid: Grid, margin: BatchMargin): Uint8Array {
-  const holds = new Uint8Array(grid.x.n * grid.y.n);
-  inChunks(holds.length, (start, end) => {
-    const { xs, ys } = samples(grid, start, end);
-    markHolding(margin(xs, ys), holds, start);
-  });
+  const columns = grid.x.n;
+  const holds = new Uint8Array(columns * grid.y.n);
+  const rows = Math.max(1, Math.floor(CHUNK / columns));
+  const xs = repeatedRow(grid, rows);
+  const ys = new Float64Array(xs.length);
+  for (let row = 0; row < grid.y.n; row += rows) {
+    const count = Math.min(rows, grid.y.n - row);
+    for (let k = 0; k < count; k++) {
+      ys.fill(alongSide(grid.y, row + k + 0.5), k * columns, (k + 1) * columns);
+    }
+    const length = count * columns;
+    markHolding(margin(xs.subarray(0, length), ys.subarray(0, length)), holds, row * columns);
+  }
   return holds;
+}
+
+function repeatedRow(grid: Grid, rows: number): Float64Array {
+  const row = Float64Array.from({ length: grid.x.n }, (_, i) => alongSide(grid.x, i + 0.5));
+  const repeated = new Float64Array(row.length * rows);
+  for (let k = 0; k < rows; k++) repeated.set(row, k * row.length);
+  return repeated;
 }
 
 /** Of the samples marked in `candidates`, those where a condition holds; only these are evaluated. */
@@ -72,18 +90,6 @@ export function intersection(fields: readonly Uint8Array[]): Uint8Array {
 
 function inChunks(length: number, visit: (start: number, end: number) => void): void {
   for (let start = 0; start < length; start += CHUNK) visit(start, Math.min(start + CHUNK, length));
-}
-
-function samples(grid: Grid, start: number, end: number): { xs: Float64Array; ys: Float64Array } {
-  const columns = grid.x.n;
-  const xs = new Float64Array(end - start);
-  const ys = new Float64Array(end - start);
-  for (let i = start; i < end; i++) {
-    const row = Math.floor(i / columns);
-    xs[i - start] = alongSide(grid.x, i - row * columns + 0.5);
-    ys[i - start] = alongSide(grid.y, row + 0.5);
-  }
-  return { xs, ys };
 }
 
 function markHolding(margins: ArrayLike<number>, holds: Uint8Array, start: number): void {

@@ -12,44 +12,80 @@ export interface LineLabel {
 const GAP = 6;
 const STEP = 14;
 
-/** What a position costs: worst is another label, then a line through the text, then being near the frame. */
-const COSTS = { label: 1000, line: 40, frame: 8 };
+/**
+ * What a position costs: worst is another label; then a line through the text, or another's line as near as the own
+ * one, which makes it doubtful whose label it is; then standing at a short piece, at its end, or near the frame.
+ */
+const COSTS = { label: 1000, line: 40, doubt: 20, short: 12, end: 6, frame: 8, light: 0.2 };
 
 /**
  * A box for each label, beside one of its lines, inside the frame, on as few other things as can be; null for a label
  * that has no line or no room. Labels are placed in order, each avoiding those before it.
  *
+ * @param light lines that labels need not quite so much avoid
  * @param occupied boxes that no label may cover, such as a marked point
  */
 export function placeLabels(
   labels: readonly LineLabel[],
   frame: Box,
+  light: readonly Line[] = [],
   occupied: readonly Box[] = [],
 ): readonly (Box | null)[] {
-  const all = labels.flatMap(({ lines }) => lines);
   const taken = [...occupied];
   return labels.map((label) => {
-    const box = cheapest(candidatesFor(label, frame), (b) => costOf(b, all, taken, frame));
+    const others = labels.filter((other) => other !== label).flatMap(({ lines }) => lines);
+    const scene: Scene = { own: label.lines, others, light, taken, frame };
+    const box = cheapest(candidatesFor(label, frame), scene);
     if (box !== null) taken.push(box);
     return box;
   });
 }
 
-function cheapest(boxes: readonly Box[], cost: (box: Box) => number): Box | null {
+/** What a label's place is judged by. */
+interface Scene {
+  readonly own: readonly Line[];
+  readonly others: readonly Line[];
+  readonly light: readonly Line[];
+  readonly taken: readonly Box[];
+  readonly frame: Box;
+}
+
+interface Candidate {
+  readonly box: Box;
+  /** What the place on the line costs, apart from what is around it. */
+  readonly cost: number;
+}
+
+function cheapest(candidates: readonly Candidate[], scene: Scene): Box | null {
   let best: Box | null = null;
   let lowest = COSTS.label;
-  for (const box of boxes) {
-    const price = cost(box);
+  for (const { box, cost } of candidates) {
+    const price = cost < lowest ? cost + surroundings(box, scene) : Infinity;
     if (price < lowest) [best, lowest] = [box, price];
   }
   return best;
 }
 
-function candidatesFor(label: LineLabel, frame: Box): readonly Box[] {
-  return label.lines
-    .flatMap(stations)
-    .flatMap(({ at, normal }) => [beside(label, at, normal, 1), beside(label, at, normal, -1)])
-    .filter((box) => isInside(box, frame));
+function candidatesFor(label: LineLabel, frame: Box): readonly Candidate[] {
+  const lengths = label.lines.map(lengthOf);
+  const longest = Math.max(1, ...lengths);
+  return label.lines.flatMap((line, i) => {
+    const short = COSTS.short * (1 - lengths[i] / longest);
+    const places = stations(line);
+    return places.flatMap(({ at, normal }, k) => {
+      const offCentre = Math.abs((2 * k + 1) / places.length - 1);
+      const cost = short + COSTS.end * offCentre;
+      const boxes = [beside(label, at, normal, 1), beside(label, at, normal, -1)];
+      return boxes.filter((box) => isInside(box, frame)).map((box) => ({ box, cost }));
+    });
+  });
+}
+
+function lengthOf(line: Line): number {
+  return line.reduce((length, [x, y], i) => {
+    if (i === 0) return 0;
+    return length + Math.hypot(x - line[i - 1][0], y - line[i - 1][1]);
+  }, 0);
 }
 
 /** Points along a line at equal steps, with the direction across it. */
@@ -83,10 +119,27 @@ function beside(label: LineLabel, [x, y]: Point, normal: Point, side: 1 | -1): B
   };
 }
 
-function costOf(box: Box, lines: readonly Line[], taken: readonly Box[], frame: Box): number {
-  const covered = taken.filter((other) => overlaps(box, other)).length;
-  const crossings = lines.filter((line) => crosses(line, box)).length;
-  return covered * COSTS.label + crossings * COSTS.line + nearness(box, frame) * COSTS.frame;
+function surroundings(box: Box, scene: Scene): number {
+  const covered = scene.taken.filter((other) => overlaps(box, other)).length;
+  const crossed = (lines: readonly Line[], room: number): number =>
+    lines.filter((line) => crosses(line, grown(box, room))).length;
+  const crossings =
+    crossed(scene.own, 0) + crossed(scene.others, 0) + COSTS.light * crossed(scene.light, 0);
+  return (
+    covered * COSTS.label +
+    crossings * COSTS.line +
+    crossed(scene.others, GAP) * COSTS.doubt +
+    nearness(box, scene.frame) * COSTS.frame
+  );
+}
+
+function grown(box: Box, room: number): Box {
+  return {
+    left: box.left - room,
+    right: box.right + room,
+    top: box.top - room,
+    bottom: box.bottom + room,
+  };
 }
 
 /** 1 at the frame, falling to 0 a text height away from it. */

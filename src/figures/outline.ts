@@ -2,8 +2,8 @@ import { contours } from 'd3';
 import type { Line, Point, Polygon } from './data.ts';
 import { alongSide, holdsAt, type BatchMargin, type Grid } from './grid.ts';
 
-/** Halvings of a cell when a boundary is located on it: to 1/256 of a cell. */
-const HALVINGS = 8;
+/** Halvings of a cell when a boundary is located on it: to 1/128 of a cell, well below a pixel. */
+const HALVINGS = 6;
 
 /** Deviation, in cells, up to which boundary points on a straight line are dropped. */
 const STRAIGHT = 0.03;
@@ -37,47 +37,48 @@ function located(
   margin: BatchMargin,
 ): readonly (readonly GridRing[])[] {
   const points = polygons.flat(2).filter((point) => !isOnFrame(grid, point));
-  const brackets = points.map((point) => bracketOf(grid, point, holds));
-  halve(grid, brackets, margin);
-  const moved = new Map(points.map((point, i) => [point, middleOf(brackets[i])]));
+  const crossings = crossingsOf(grid, points, holds, margin);
+  const moved = new Map(points.map((point, i) => [point, crossings[i]]));
   return polygons.map((polygon) =>
-    polygon.map((ring) =>
-      fitted(
-        grid,
-        ring.map((point) => moved.get(point) ?? point),
-      ),
-    ),
+    polygon.map((ring) => {
+      const placed = ring.map((point) => moved.get(point) ?? point);
+      return fitted(grid, placed);
+    }),
   );
 }
 
-/** The ends of a grid edge: the condition holds at `inside`, not at `outside`. */
-interface Bracket {
-  inside: readonly [number, number];
-  outside: readonly [number, number];
-}
-
-function bracketOf(grid: Grid, [x, y]: readonly [number, number], holds: Uint8Array): Bracket {
-  const acrossColumns = Number.isInteger(x);
-  const before = acrossColumns ? ([x - 0.5, y] as const) : ([x, y - 0.5] as const);
-  const after = acrossColumns ? ([x + 0.5, y] as const) : ([x, y + 0.5] as const);
-  const index = Math.floor(before[1]) * grid.x.n + Math.floor(before[0]);
-  return holds[index] ? { inside: before, outside: after } : { inside: after, outside: before };
-}
-
-function middleOf({ inside, outside }: Bracket): [number, number] {
-  return [(inside[0] + outside[0]) / 2, (inside[1] + outside[1]) / 2];
-}
-
-function halve(grid: Grid, brackets: readonly Bracket[], margin: BatchMargin): void {
-  for (let k = 0; k < HALVINGS; k++) {
-    const middles = brackets.map(middleOf);
-    const xs = Float64Array.from(middles, ([x]) => alongSide(grid.x, x));
-    const ys = Float64Array.from(middles, ([, y]) => alongSide(grid.y, y));
-    holdsAt(margin, xs, ys).forEach((holds, i) => {
-      if (holds) brackets[i].inside = middles[i];
-      else brackets[i].outside = middles[i];
-    });
+/**
+ * Where the condition changes on the grid edge through each point: `at` of the way from the edge's sample below or
+ * left of the point to the one above or right.
+ */
+function crossingsOf(
+  grid: Grid,
+  points: readonly (readonly [number, number])[],
+  holds: Uint8Array,
+  margin: BatchMargin,
+): readonly (readonly [number, number])[] {
+  const across = points.map(([x]) => Number.isInteger(x));
+  const at = new Float64Array(points.length).fill(0.5);
+  const rises = points.map(([x, y], i) => {
+    const column = across[i] ? x - 1 : Math.floor(x);
+    const row = across[i] ? Math.floor(y) : y - 1;
+    return holds[row * grid.x.n + column] === 0;
+  });
+  const placed = (i: number): readonly [number, number] => {
+    const [x, y] = points[i];
+    return across[i] ? [x - 0.5 + at[i], y] : [x, y - 0.5 + at[i]];
+  };
+  const [xs, ys] = [new Float64Array(points.length), new Float64Array(points.length)];
+  for (let step = 0.25, k = 0; k < HALVINGS; k++, step /= 2) {
+    for (let i = 0; i < points.length; i++) {
+      const [x, y] = placed(i);
+      xs[i] = alongSide(grid.x, x);
+      ys[i] = alongSide(grid.y, y);
+    }
+    const holding = holdsAt(margin, xs, ys);
+    for (let i = 0; i < at.length; i++) at[i] += (holding[i] === 1) === rises[i] ? -step : step;
   }
+  return points.map((_, i) => placed(i));
 }
 
 /** Brings a ring straight out to the frame where it meets it, and into the frame's corners. */

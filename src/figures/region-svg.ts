@@ -84,7 +84,11 @@ function boundaryLabels(panel: Panel, figure: RegionFigure): Svg[] {
       pixels(panel, line),
     ),
   }));
-  return placeLabels(labels, panel.plot, occupiedByPoint(panel, figure)).map((box, i) => {
+  const light = figure.boundaries
+    .filter(({ lines }) => lines.length > 0)
+    .flatMap(({ elsewhere }) => elsewhere.map((line) => pixels(panel, line)));
+  const occupied = occupiedByPoint(panel, figure);
+  return placeLabels(labels, panel.plot, light, occupied).map((box, i) => {
     if (box === null) return '';
     const quiet = figure.boundaries[i].lines.length === 0;
     const style = { size: LABEL_SIZE, fill: ink(quiet ? 'quiet' : 'ink'), class: 'boundary-label' };

@@ -40,39 +40,39 @@ const TOLERANCE_SAMPLES = 160;
  * @param request sides in the axes' units with the samples on each (400 for a figure), and at least one condition
  * @returns areas and lines in the axes' units
  *
- * Cost: one evaluation of every condition at each sample, and eight at each boundary point; over the tolerances at
+ * Cost: one evaluation of every condition at each sample, and six at each boundary point; over the tolerances at
  * most 160 × 160 samples, each corner only where all before it hold.
  */
 export function traceRegion(request: RegionRequest): RegionTrace {
   const grid: Grid = { x: request.x, y: request.y };
   const { conditions } = request;
   const fields = conditions.map(({ nominal }) => holdsOver(grid, nominal));
-  const all = intersection(fields);
-  const outline = outlinesOf(grid, all, together(conditions.map(({ nominal }) => nominal)));
+  const outlines = conditions.map(({ nominal }, i) => outlinesOf(grid, fields[i], nominal));
+  const nominal = together(conditions.map((condition) => condition.nominal));
+  const whole =
+    conditions.length === 1 ? outlines[0] : outlinesOf(grid, intersection(fields), nominal);
   return {
-    nominalArea: polygonsOf(grid, outline),
+    nominalArea: polygonsOf(grid, whole),
     toleranceArea: toleranceArea(request),
-    boundaries: conditions.map((condition, i) => boundaryOf(grid, condition, fields, i)),
+    boundaries: conditions.map(({ label, latex }, i) => ({
+      label,
+      latex,
+      ...boundaryLines(grid, outlines[i], boundsTheArea(grid, fields, i)),
+    })),
   };
 }
 
-function boundaryOf(
+/** Whether at a place in grid coordinates all conditions but one's own hold. */
+function boundsTheArea(
   grid: Grid,
-  condition: RegionCondition,
   fields: readonly Uint8Array[],
   own: number,
-): Boundary {
+): (x: number, y: number) => boolean {
   const others = fields.filter((_, i) => i !== own);
-  const bounds = (x: number, y: number): boolean => {
+  return (x, y) => {
     const column = Math.min(grid.x.n - 1, Math.floor(x));
     const index = Math.min(grid.y.n - 1, Math.floor(y)) * grid.x.n + column;
     return others.every((field) => field[index] === 1);
-  };
-  const outline = outlinesOf(grid, fields[own], condition.nominal);
-  return {
-    label: condition.label,
-    latex: condition.latex,
-    ...boundaryLines(grid, outline, bounds),
   };
 }
 
