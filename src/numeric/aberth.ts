@@ -1,28 +1,54 @@
 import type { Complex } from './complex.ts';
-import { DoubleDouble } from './double-double.ts';
+import { divideComplex, magnitude, subtractComplex } from './complex.ts';
+import { DoubledComplex } from './double-double.ts';
 
 /** Rounds of the iteration after which what is not settled is taken as it is; a few dozen are usual. */
 const MOST_ROUNDS = 300;
 
+/** How a polynomial is evaluated: value and slope, and the rounding of the value per term, relative to its terms. */
+interface Precision {
+  readonly evaluate: (coefficients: Float64Array, z: Complex) => readonly [Complex, Complex];
+  readonly rounding: number;
+}
+
+const SINGLE: Precision = { evaluate: hornerWithSlope, rounding: Number.EPSILON };
+const DOUBLED: Precision = { evaluate: doubledHornerWithSlope, rounding: 1e-30 };
+
 /**
- * All roots of a scaled polynomial (see `polynomial-scale.ts`) by Aberth's iteration. The polynomial is evaluated in
+ * All roots of a scaled polynomial (see `polynomial-scale.ts`) by Aberth's iteration: first in plain precision, then in
  * doubled precision, so that even close roots of the coefficients as given come out to about full precision.
  */
 export function aberthRoots(coefficients: Float64Array): Complex[] {
   const roots = startingPoints(coefficients);
-  const settled = roots.map(() => false);
   const reversed = coefficients.toReversed();
-  for (let round = 0; round < MOST_ROUNDS && settled.includes(false); round++) {
-    for (let i = 0; i < roots.length; i++) {
-      if (settled[i]) continue;
-      const root = roots[i]!;
-      const newton = newtonCorrection(coefficients, reversed, root);
-      const step = newton && aberthStep(newton, repulsion(roots, i));
-      if (step) roots[i] = { re: root.re - step.re, im: root.im - step.im };
-      settled[i] = !step || Math.hypot(step.re, step.im) <= 1e-17 * Math.hypot(root.re, root.im);
+  for (const precision of [SINGLE, DOUBLED]) {
+    const settled = roots.map(() => false);
+    for (let round = 0; round < MOST_ROUNDS && settled.includes(false); round++) {
+      for (let i = 0; i < roots.length; i++) {
+        if (settled[i]) continue;
+        const step = correction(coefficients, reversed, roots, i, precision);
+        settled[i] = !step || isNegligible(step, roots[i]!);
+        if (step) roots[i] = subtractComplex(roots[i]!, step);
+      }
     }
   }
   return roots;
+}
+
+/** Aberth's correction of one root; null where its value is all rounding. */
+function correction(
+  coefficients: Float64Array,
+  reversed: Float64Array,
+  roots: readonly Complex[],
+  i: number,
+  precision: Precision,
+): Complex | null {
+  const newton = newtonCorrection(coefficients, reversed, roots[i]!, precision);
+  return newton && aberthStep(newton, repulsion(roots, i));
+}
+
+function isNegligible(step: Complex, root: Complex): boolean {
+  return magnitude(step) <= (Number.EPSILON / 2) * magnitude(root);
 }
 
 /**
@@ -63,70 +89,61 @@ function newtonCorrection(
   coefficients: Float64Array,
   reversed: Float64Array,
   z: Complex,
+  precision: Precision,
 ): Complex | null {
   const square = z.re * z.re + z.im * z.im;
-  if (square <= 1) return logarithmicDerivative(coefficients, z);
+  if (square <= 1) return logarithmicDerivative(coefficients, z, precision);
   // Outside the unit circle p(z) = z^n q(1/z) with q reversed: p'/p = w (n − w q'(w)/q(w)) with w = 1/z.
   const w = { re: z.re / square, im: -z.im / square };
-  const inner = logarithmicDerivative(reversed, w);
+  const inner = logarithmicDerivative(reversed, w, precision);
   if (!inner) return null;
   const re = coefficients.length - 1 - (w.re * inner.re - w.im * inner.im);
   const im = -(w.re * inner.im + w.im * inner.re);
   return { re: w.re * re - w.im * im, im: w.re * im + w.im * re };
 }
 
-/** Evaluation in doubled precision is trusted to this part of the sum of the terms' magnitudes. */
-const DOUBLED_ROUNDING = 1e-30;
-
-function logarithmicDerivative(coefficients: Float64Array, z: Complex): Complex | null {
-  const [value, slope] = hornerWithSlope(coefficients, z);
-  const modulus = Math.hypot(z.re, z.im);
+/** p'(z)/p(z), or null where p(z) is rounding only. */
+function logarithmicDerivative(
+  coefficients: Float64Array,
+  z: Complex,
+  { evaluate, rounding }: Precision,
+): Complex | null {
+  const [value, slope] = evaluate(coefficients, z);
+  const modulus = magnitude(z);
   let bound = 0;
   for (const coefficient of coefficients) bound = bound * modulus + Math.abs(coefficient);
-  const square = value.re * value.re + value.im * value.im;
-  if (Math.sqrt(square) <= DOUBLED_ROUNDING * coefficients.length * bound) return null;
-  return {
-    re: (slope.re * value.re + slope.im * value.im) / square,
-    im: (slope.im * value.re - slope.re * value.im) / square,
-  };
+  const isRounding = magnitude(value) <= rounding * coefficients.length * bound;
+  return isRounding ? null : divideComplex(slope, value);
 }
 
-/** p(z) and p'(z) by Horner's rule in doubled precision, rounded at the end. */
+/** p(z) and p'(z) by Horner's rule. */
 function hornerWithSlope(coefficients: Float64Array, z: Complex): [Complex, Complex] {
-  const value = new ComplexAccumulator();
-  const slope = new ComplexAccumulator();
+  let [re, im, slopeRe, slopeIm] = [0, 0, 0, 0];
   for (const coefficient of coefficients) {
-    slope.timesPlus(z, value.re, value.im);
-    value.timesPlus(z, new DoubleDouble(coefficient), ZERO);
+    const nextSlope = slopeRe * z.re - slopeIm * z.im + re;
+    slopeIm = slopeRe * z.im + slopeIm * z.re + im;
+    slopeRe = nextSlope;
+    const next = re * z.re - im * z.im + coefficient;
+    im = re * z.im + im * z.re;
+    re = next;
+  }
+  return [
+    { re, im },
+    { re: slopeRe, im: slopeIm },
+  ];
+}
+
+/** The same in doubled precision, rounded at the end. */
+function doubledHornerWithSlope(coefficients: Float64Array, z: Complex): [Complex, Complex] {
+  const value = new DoubledComplex();
+  const slope = new DoubledComplex();
+  for (const coefficient of coefficients) {
+    slope.times(z);
+    slope.add(value);
+    value.times(z);
+    value.re.addNumber(coefficient);
   }
   return [value.rounded(), slope.rounded()];
-}
-
-const ZERO = new DoubleDouble();
-
-/** A complex number in doubled precision that Horner's rule updates in place. */
-class ComplexAccumulator {
-  re = new DoubleDouble();
-  im = new DoubleDouble();
-  private nextRe = new DoubleDouble();
-  private nextIm = new DoubleDouble();
-
-  /** Becomes itself times z, plus (re, im). */
-  timesPlus(z: Complex, re: DoubleDouble, im: DoubleDouble): void {
-    const { nextRe, nextIm } = this;
-    nextRe.copy(re);
-    nextRe.addProduct(this.re, z.re);
-    nextRe.addProduct(this.im, -z.im);
-    nextIm.copy(im);
-    nextIm.addProduct(this.re, z.im);
-    nextIm.addProduct(this.im, z.re);
-    [this.re, this.nextRe] = [nextRe, this.re];
-    [this.im, this.nextIm] = [nextIm, this.im];
-  }
-
-  rounded(): Complex {
-    return { re: this.re.high + this.re.low, im: this.im.high + this.im.low };
-  }
 }
 
 /** Σ 1/(z_i − z_j) over the other roots; roots that coincide do not repel. */
@@ -146,8 +163,6 @@ function repulsion(roots: readonly Complex[], i: number): Complex {
 
 /** 1/(p'/p − Σ 1/(z_i − z_j)), Aberth's correction; null where the two cancel. */
 function aberthStep(newton: Complex, repelled: Complex): Complex | null {
-  const re = newton.re - repelled.re;
-  const im = newton.im - repelled.im;
-  const square = re * re + im * im;
-  return square === 0 || !Number.isFinite(square) ? null : { re: re / square, im: -im / square };
+  const step = divideComplex({ re: 1, im: 0 }, subtractComplex(newton, repelled));
+  return Number.isFinite(step.re) && Number.isFinite(step.im) ? step : null;
 }

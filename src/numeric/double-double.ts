@@ -1,31 +1,15 @@
+import type { Complex } from './complex.ts';
+
 /**
- * Sums and products of doubles with about 32 digits: an unevaluated sum of two doubles, `high + low`, with
- * |low| ≤ half a unit in the last place of `high`. Kept in the static fields of this class instead of in
- * objects, because root finding calls it in its innermost loop.
+ * A number with about 32 digits, updated in place: an unevaluated sum of two doubles, `high + low`, with |low| at most
+ * half a unit in the last place of `high`. Mutable, because root finding works on it in its innermost loop.
  *
  * Source: T. J. Dekker, A floating-point technique for extending the available precision, Numerische Mathematik 18
  * (1971), 224–242; D. E. Knuth, The Art of Computer Programming, vol. 2, 3rd ed., 4.2.2, theorem B.
  */
 export class DoubleDouble {
-  high: number;
-  low: number;
-
-  constructor(high = 0, low = 0) {
-    this.high = high;
-    this.low = low;
-  }
-
-  /** Becomes `value`. */
-  set(value: number): void {
-    this.high = value;
-    this.low = 0;
-  }
-
-  /** Becomes `other`. */
-  copy(other: DoubleDouble): void {
-    this.high = other.high;
-    this.low = other.low;
-  }
+  high = 0;
+  low = 0;
 
   /** Adds a double. */
   addNumber(value: number): void {
@@ -37,10 +21,12 @@ export class DoubleDouble {
     this.addPair(other.high, other.low);
   }
 
-  /** Adds `other` times a double. */
-  addProduct(other: DoubleDouble, factor: number): void {
-    const product = other.high * factor;
-    this.addPair(product, productError(other.high, factor, product) + other.low * factor);
+  /** Becomes a x + b y, with doubles x and y. */
+  setCombination(a: DoubleDouble, x: number, b: DoubleDouble, y: number): void {
+    this.high = a.high * x;
+    this.low = productError(a.high, x, this.high) + a.low * x;
+    const product = b.high * y;
+    this.addPair(product, productError(b.high, y, product) + b.low * y);
   }
 
   private addPair(high: number, low: number): void {
@@ -49,6 +35,33 @@ export class DoubleDouble {
     const error = this.high - (sum - back) + (high - back) + (this.low + low);
     this.high = sum + error;
     this.low = error - (this.high - sum);
+  }
+}
+
+/** A complex number in doubled precision, updated in place. */
+export class DoubledComplex {
+  re = new DoubleDouble();
+  im = new DoubleDouble();
+  private nextRe = new DoubleDouble();
+  private nextIm = new DoubleDouble();
+
+  /** Multiplies by a complex double. */
+  times(z: Complex): void {
+    this.nextRe.setCombination(this.re, z.re, this.im, -z.im);
+    this.nextIm.setCombination(this.re, z.im, this.im, z.re);
+    [this.re, this.nextRe] = [this.nextRe, this.re];
+    [this.im, this.nextIm] = [this.nextIm, this.im];
+  }
+
+  /** Adds another number. */
+  add(other: DoubledComplex): void {
+    this.re.add(other.re);
+    this.im.add(other.im);
+  }
+
+  /** The nearest complex double. */
+  rounded(): Complex {
+    return { re: this.re.high + this.re.low, im: this.im.high + this.im.low };
   }
 }
 

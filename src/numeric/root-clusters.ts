@@ -1,4 +1,5 @@
 import type { Complex } from './complex.ts';
+import { addComplex, divideComplex, magnitude } from './complex.ts';
 
 /** Half the gap between 1 and the next double. */
 const ROUNDING = Number.EPSILON / 2;
@@ -16,7 +17,7 @@ export function settleRoots(coefficients: Float64Array, roots: readonly Complex[
 
 /**
  * Merges overlapping uncertainty discs (radius: what a relative change of the coefficients by their rounding moves a
- * simple root, times `reach`) into their mean, where the mean passes as a multiple root; else tries a shorter reach.
+ * simple root, times `reach`) into their centre, where that passes as a multiple root; else tries a shorter reach.
  */
 function mergeClusters(
   coefficients: Float64Array,
@@ -26,8 +27,8 @@ function mergeClusters(
   const radii = roots.map((root) => reach * uncertainty(coefficients, root));
   return overlapping(roots, radii).flatMap((group) => {
     if (group.length === 1) return group;
-    const mean = meanOf(group);
-    if (isMultipleRoot(coefficients, mean, group.length)) return group.map(() => mean);
+    const centre = centreOf(coefficients, group);
+    if (isMultipleRoot(coefficients, centre, group.length)) return group.map(() => centre);
     return reach < 1e-6 ? group : mergeClusters(coefficients, group, reach / 10);
   });
 }
@@ -35,8 +36,7 @@ function mergeClusters(
 /** How far the rounding of the coefficients may move a simple root: n ε Σ|a_k||z|^k / |p'(z)|. */
 function uncertainty(coefficients: Float64Array, z: Complex): number {
   const slope = taylorCoefficient(coefficients, z, 1);
-  const size = Math.hypot(slope.re, slope.im);
-  return (2 * coefficients.length * ROUNDING * termSizes(coefficients, z, 0)) / size;
+  return (2 * coefficients.length * ROUNDING * termSizes(coefficients, z, 0)) / magnitude(slope);
 }
 
 /** Groups of roots whose discs overlap, directly or through others. */
@@ -55,10 +55,21 @@ function overlapping(roots: readonly Complex[], radii: readonly number[]): Compl
   return [...new Set(groupOf)].map((group) => roots.filter((_, i) => groupOf[i] === group));
 }
 
-function meanOf(group: readonly Complex[]): Complex {
-  const re = group.reduce((sum, root) => sum + root.re, 0) / group.length;
-  const im = group.reduce((sum, root) => sum + root.im, 0) / group.length;
-  return { re, im };
+/** The root of p^(m − 1) by m close roots of p: it is simple, and so better known than they are. */
+function centreOf(coefficients: Float64Array, group: readonly Complex[]): Complex {
+  const multiplicity = group.length;
+  const sum = group.reduce(addComplex);
+  let centre = { re: sum.re / multiplicity, im: sum.im / multiplicity };
+  for (let round = 0; round < 3; round++) {
+    const value = taylorCoefficient(coefficients, centre, multiplicity - 1);
+    const slope = taylorCoefficient(coefficients, centre, multiplicity);
+    const step = divideComplex(value, slope);
+    centre = {
+      re: centre.re - step.re / multiplicity,
+      im: centre.im - step.im / multiplicity,
+    };
+  }
+  return centre;
 }
 
 /** Whether p, p', … to the order before `multiplicity` vanish at z to within the rounding of the coefficients. */
@@ -66,7 +77,7 @@ function isMultipleRoot(coefficients: Float64Array, z: Complex, multiplicity: nu
   for (let order = 0; order < multiplicity; order++) {
     const value = taylorCoefficient(coefficients, z, order);
     const allowed = 4 * coefficients.length * ROUNDING * termSizes(coefficients, z, order);
-    if (Math.hypot(value.re, value.im) > allowed) return false;
+    if (magnitude(value) > allowed) return false;
   }
   return true;
 }
@@ -85,7 +96,7 @@ function taylorCoefficient(coefficients: Float64Array, z: Complex, order: number
 
 /** The sum of the magnitudes of the terms of p^(order)(z)/order!. */
 function termSizes(coefficients: Float64Array, z: Complex, order: number): number {
-  const modulus = Math.hypot(z.re, z.im);
+  const modulus = magnitude(z);
   return binomialWeighted(coefficients, order).reduce((sum, a) => sum * modulus + Math.abs(a), 0);
 }
 
