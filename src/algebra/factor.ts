@@ -1,0 +1,99 @@
+import type { Budget } from '../base/index.ts';
+import { contentIn } from './gcd.ts';
+import {
+  coefficientsIn,
+  comparePolynomials,
+  contentOf,
+  degreeIn,
+  generatorPolynomial,
+  isConstantPolynomial,
+  isOnePolynomial,
+  isZeroPolynomial,
+  leadingCoefficientSign,
+  mulPolynomials,
+  normalPart,
+  scalePolynomial,
+  subPolynomials,
+} from './polynomial.ts';
+import { polynomialKey } from './key.ts';
+import { monomialContent, quotientOf } from './quotient.ts';
+import { squareFreeFactors, squareRootOfPolynomial, type PowerFactor } from './square-free.ts';
+import type { Generator, Polynomial } from './ring.ts';
+
+/** unit · Π factor^multiplicity; factors are primitive with positive leading coefficients, in a fixed order. */
+export interface Factorization {
+  readonly unit: bigint;
+  readonly factors: readonly PowerFactor[];
+}
+
+/**
+ * Factors a polynomial over ℤ. Monomials, contents in each generator, repeated factors and everything of degree at
+ * most two in some generator are always found; other factors may stay together, but the product is always p.
+ */
+export function factorPolynomial(p: Polynomial, budget?: Budget): Factorization {
+  if (isZeroPolynomial(p)) return { unit: 0n, factors: [] };
+  const unit = contentOf(p) * BigInt(leadingCoefficientSign(p));
+  const found = new Map<string, PowerFactor>();
+  const collect = ({ factor, multiplicity }: PowerFactor): void => {
+    const key = polynomialKey(factor);
+    const before = found.get(key)?.multiplicity ?? 0;
+    found.set(key, { factor, multiplicity: before + multiplicity });
+  };
+  for (const factor of factorsWithMonomial(normalPart(p), budget)) collect(factor);
+  const factors = [...found.values()].sort((a, b) => comparePolynomials(a.factor, b.factor));
+  return Object.freeze({ unit, factors: Object.freeze(factors) });
+}
+
+function factorsWithMonomial(p: Polynomial, budget?: Budget): PowerFactor[] {
+  const monomial = monomialContent(p);
+  const powers = monomial.generators.map((g, k) => ({
+    factor: generatorPolynomial(g),
+    multiplicity: monomial.degrees[k],
+  }));
+  return [...powers, ...factorsByContent(quotientOf(p, monomial), budget)];
+}
+
+/** Splits off the content in each generator until the polynomial is primitive in all of them. */
+function factorsByContent(p: Polynomial, budget?: Budget): PowerFactor[] {
+  if (isConstantPolynomial(p)) return [];
+  for (const g of generatorsByDegree(p)) {
+    const content = contentIn(p, g, budget);
+    if (isOnePolynomial(content)) continue;
+    const rest = quotientOf(p, content, budget);
+    return [...factorsByContent(content, budget), ...factorsByContent(rest, budget)];
+  }
+  return factorsOfPrimitive(p, budget);
+}
+
+function generatorsByDegree(p: Polynomial): Generator[] {
+  return [...p.generators].sort((a, b) => degreeIn(p, a) - degreeIn(p, b));
+}
+
+/** p is primitive in each of its generators: any one of them shows the repeated factors. */
+function factorsOfPrimitive(p: Polynomial, budget?: Budget): PowerFactor[] {
+  const [g] = generatorsByDegree(p);
+  if (degreeIn(p, g) === 1) return [{ factor: p, multiplicity: 1 }];
+  return squareFreeFactors(p, g, budget).flatMap(({ factor, multiplicity }) =>
+    splitSquareFree(factor, budget).map((part) => ({ factor: part, multiplicity })),
+  );
+}
+
+function splitSquareFree(p: Polynomial, budget?: Budget): Polynomial[] {
+  const [g] = generatorsByDegree(p);
+  const degree = degreeIn(p, g);
+  if (degree === 1) return [p];
+  return degree === 2 ? splitQuadratic(p, g, budget) : [p];
+}
+
+/** p = a x² + b x + c, primitive in x, splits exactly where b² − 4ac is a square r²: into 2 a x + b ± r. */
+function splitQuadratic(p: Polynomial, g: Generator, budget?: Budget): Polynomial[] {
+  const [c, b, a] = coefficientsIn(p, g);
+  const square = mulPolynomials(b, b, budget);
+  const discriminant = subPolynomials(square, scalePolynomial(mulPolynomials(a, c, budget), 4n));
+  const root = squareRootOfPolynomial(discriminant, budget);
+  if (!root) return [p];
+  const twice = mulPolynomials(scalePolynomial(a, 2n), generatorPolynomial(g));
+  const linear = subPolynomials(subPolynomials(twice, scalePolynomial(b, -1n)), root);
+  const factor = normalPart(quotientOf(linear, contentIn(linear, g, budget), budget));
+  return [factor, quotientOf(p, factor, budget)];
+}
