@@ -15,7 +15,7 @@ const MASS_SUBSTITUTES: readonly (readonly [string, readonly number[]])[] = [
   ['W', [1, 2, -3, 0]],
 ];
 
-/** Dimensions with a name that the general rule would not find, as exponents of kg, m, s, A. */
+/** Dimensions with a name that the general rule would not find, as exponents of kg, m, s, A, K. */
 const NAMED: readonly (readonly [string, readonly number[]])[] = [
   ['Pa', [1, -1, -2, 0]],
   ['Pa s', [1, -1, -1, 0]],
@@ -24,6 +24,7 @@ const NAMED: readonly (readonly [string, readonly number[]])[] = [
   ['Ω', [1, 2, -3, -2]],
   ['H', [1, 2, -2, -2]],
   ['T', [1, 0, -2, -1]],
+  ['J/K', [1, 2, -2, 0, -1]],
 ];
 
 /** What a value counts besides its dimension: exponents of the plane angle (rad) and of the hertz. */
@@ -57,9 +58,14 @@ export function dimensionText(dimension: Dimension, counted: Counted = {}): stri
   return productText(counting.filter((factor) => factor.exponent !== 0));
 }
 
-/** No volts without a current; per radian or per hertz torques and forces, N m/(rad s), rather than power, W/rad. */
+/**
+ * No volts without a current; heat per kelvin in watts, W/(m² K), rather than newtons; per radian or per hertz
+ * torques and forces, N m/(rad s), rather than power, W/rad.
+ */
 function suits(symbol: string, dimension: Dimension, isCounted: boolean): boolean {
-  return !(symbol === 'V' && dimension.exponents[3] === 0) && !(symbol === 'W' && isCounted);
+  const [, , , current, temperature] = dimension.exponents;
+  if (symbol === 'V') return current !== 0;
+  return symbol === 'N' ? temperature === 0 : symbol !== 'W' || !isCounted;
 }
 
 /** The dimension as powers of `symbol` (in place of kg) and the other base units. */
