@@ -133,40 +133,42 @@ function sourceFiles(folder: string): string[] {
     .map((name) => join(folder, name));
 }
 
-/** Where a file reads one of the global names, or `Math.random`. */
+/** Where a file uses one of the global names, or `Math.random`. */
 function usesOf(names: readonly string[], file: string): string[] {
-  const source = ts.createSourceFile(
-    file,
-    readFileSync(file, 'utf8'),
-    ts.ScriptTarget.Latest,
-    true,
-  );
-  const uses: string[] = [];
-  const visit = (node: ts.Node) => {
-    if (isUse(node, names)) {
+  const text = readFileSync(file, 'utf8');
+  const source = ts.createSourceFile(file, text, ts.ScriptTarget.Latest, true);
+  const nodes = descendants(source);
+  // A parameter or a local of that name is not the global.
+  const own = new Set(nodes.map(declaredName));
+  const foreign = names.filter((name) => !own.has(name));
+  return nodes
+    .filter((node) => isGlobalUse(node, foreign))
+    .map((node) => {
       const { line } = source.getLineAndCharacterOfPosition(node.getStart());
-      uses.push(`${file}:${line + 1}: ${node.getText()}`);
-    }
-    ts.forEachChild(node, visit);
-  };
-  visit(source);
-  return uses;
+      return `${file}:${line + 1}: ${node.getText()}`;
+    });
 }
 
-function isUse(node: ts.Node, names: readonly string[]): boolean {
+function descendants(node: ts.Node): ts.Node[] {
+  const found: ts.Node[] = [node];
+  ts.forEachChild(node, (child) => void found.push(...descendants(child)));
+  return found;
+}
+
+function declaredName(node: ts.Node): string | null {
+  const declares =
+    ts.isVariableDeclaration(node) ||
+    ts.isParameter(node) ||
+    ts.isBindingElement(node) ||
+    ts.isFunctionDeclaration(node) ||
+    ts.isImportSpecifier(node);
+  return declares && node.name !== undefined && ts.isIdentifier(node.name) ? node.name.text : null;
+}
+
+function isGlobalUse(node: ts.Node, names: readonly string[]): boolean {
   if (ts.isPropertyAccessExpression(node)) return node.getText() === 'Math.random';
   if (!ts.isIdentifier(node) || !names.includes(node.text)) return false;
-  // A property, a member or a local of that name is no use of the global.
   const { parent } = node;
-  const isMember = ts.isPropertyAccessExpression(parent) && parent.name === node;
-  return !isMember && !('name' in parent && parent.name === node) && isExpression(parent, node);
-}
-
-function isExpression(parent: ts.Node, node: ts.Node): boolean {
-  return (
-    ts.isExpression(parent) ||
-    ts.isTypeReferenceNode(parent) ||
-    ts.isStatement(parent) ||
-    ('initializer' in parent && parent.initializer === node)
-  );
+  const isMemberName = 'name' in parent && parent.name === node;
+  return ts.isShorthandPropertyAssignment(parent) || !isMemberName;
 }
