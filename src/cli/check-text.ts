@@ -11,12 +11,20 @@ const MARKS: Readonly<Record<Verdict, string>> = {
 };
 const VERDICTS = Object.keys(MARKS) as readonly Verdict[];
 
-/** What `check` prints for a reader: verdicts with values and margins, problems with their places, and a summary. */
-export function checkText(record: CheckRecord): string {
+/**
+ * What `check` prints for a reader: verdicts with values and margins, and under one that is not met what fails;
+ * problems with their places; a summary.
+ *
+ * @param notes sentences for each requirement, in the record's order
+ */
+export function checkText(record: CheckRecord, notes: readonly (readonly string[])[]): string {
   const rows = record.requirements.map((row) => [verdictWords(row), title(row), margin(row)]);
+  const unmetNotes = record.requirements.map(({ verdict }, row) =>
+    verdict === 'met' ? [] : notes[row].map((note) => `      ${note}`),
+  );
   return [
     record.file,
-    ...columns(rows).map((line) => `  ${line}`),
+    ...columns(rows).flatMap((line, row) => [`  ${line}`, ...unmetNotes[row]]),
     ...record.problems.flatMap((problem) => problemLines(record.file, problem)),
     `  ${summary(record)}`,
     '',

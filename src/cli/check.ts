@@ -23,18 +23,26 @@ export async function check(
 ): Promise<number> {
   let worst: number = EXIT.allMet;
   for (const file of files) {
-    const record = await checkFile(file);
-    print(options.json ? `${JSON.stringify(record)}\n` : checkText(record));
+    const { record, notes } = await checkFile(file);
+    print(options.json ? `${JSON.stringify(record)}\n` : checkText(record, notes));
     worst = Math.max(worst, exitCode(record));
   }
   return worst;
 }
 
+interface CheckedFile {
+  readonly record: CheckRecord;
+  /** For each requirement, what the record has no field for. */
+  readonly notes: readonly (readonly string[])[];
+}
+
 /** Evaluates one file in a session of its own; a file that cannot be read is a problem like any other. */
-export async function checkFile(file: string): Promise<CheckRecord> {
+async function checkFile(file: string): Promise<CheckedFile> {
   const text = await readWorksheet(file);
-  if (isRefusal(text)) return unreadableRecord(file, text.reason);
-  return checkRecord(file, text, createSession({}).update(text));
+  if (isRefusal(text)) return { record: unreadableRecord(file, text.reason), notes: [] };
+  const report = createSession({}).update(text);
+  const notes = report.requirements.map(({ content }) => content.notes);
+  return { record: checkRecord(file, text, report), notes };
 }
 
 /** The text without a byte order mark, which counts neither as a character of the first line nor as part of it. */

@@ -191,12 +191,15 @@ describe("check's text", () => {
         { title: 'kg', edits: [{ span: spanOf('kh'), insert: 'kg' }] },
       ]),
     ];
-    expect(checkText(record({ requirements, problems })).split('\n')).toEqual([
+    const notes = [['hidden'], ['At J = 518.4.'], [], ['The block theta, T is unstable.']];
+    expect(checkText(record({ requirements, problems }), notes).split('\n')).toEqual([
       'mast.md',
       '  ● met                      R-2 bias    0.12, worst 0.19, limit 0.2 mrad',
       '  ◐ met at nominal only      R-3         0.12, worst 0.31, limit 0.2 mrad',
+      '      At J = 518.4.',
       '  ● met (sampled, n = 2000)  R-4         0.3333, limit 0.2 mrad',
       '  ✕ not met                  stable(az)',
+      '      The block theta, T is unstable.',
       '  mast.md:4:8: error: There is no unit kh.',
       '      fix: kg',
       '  2 of 4 met · 1 at nominal only · 1 not met · 1 error',
@@ -205,6 +208,6 @@ describe("check's text", () => {
   });
 
   it('of a worksheet without requirements says so', () => {
-    expect(checkText(record({}))).toBe('mast.md\n  no requirements\n');
+    expect(checkText(record({}), [])).toBe('mast.md\n  no requirements\n');
   });
 });
