@@ -23,6 +23,7 @@ export default {
         'connect-src': ['self'],
         'object-src': ['none'],
         'base-uri': ['none'],
+        'frame-ancestors': ['none'],
       },
     },
   },
