@@ -1,0 +1,534 @@
+import { coverSpans, type Span } from '../base/index.ts';
+import type { Arrow, Expression, Name, RelationOperator, Replacement } from './ast.ts';
+import { bracketContent, bracketUse, type BracketUse } from './brackets.ts';
+import { insertion, replacement } from './fixes.ts';
+import { canonicalName } from './names.ts';
+import { readBracketedUnit, readQuantity, readSlotQuantity, readUnit } from './quantities.ts';
+import type { LineReader } from './reader.ts';
+import { solidusFixes, solidusMessage } from './solidus.ts';
+import type { Token } from './tokens.ts';
+
+const RELATIONS: ReadonlySet<string> = new Set(['<', '<=', '=', '>=', '>']);
+
+/** Chains of `.`, `with` or `in` longer than this are refused, since each link nests the one before. */
+const LONGEST_CHAIN = 20;
+
+/** Reads a whole formula, the loosest level: `in`. With `slot`, its first number may carry a unit. */
+export function readFormula(reader: LineReader, slot = false): Expression {
+  return reader.nested(() => readIn(reader, slot));
+}
+
+/** Reads a condition of `require` or `where`, in which the right of a relation is a quantity slot. */
+export function readCondition(reader: LineReader): Expression {
+  reader.limitsAreSlots = true;
+  const condition = readFormula(reader);
+  reader.limitsAreSlots = false;
+  return condition;
+}
+
+/** Reads what a quantity slot holds: a number with a unit, a number, or a formula. */
+export function readSlot(reader: LineReader): Expression {
+  return reader.nested(() => readSum(reader, true));
+}
+
+function limitChain(reader: LineReader, length: number): void {
+  if (length > LONGEST_CHAIN)
+    reader.fail(
+      reader.previous,
+      'too-deep',
+      `A chain of more than ${LONGEST_CHAIN} of these cannot be read.`,
+    );
+}
+
+function readIn(reader: LineReader, slot: boolean): Expression {
+  let of = readWith(reader, slot);
+  for (let length = 0; reader.accept('in'); length++) {
+    limitChain(reader, length);
+    const unit = readUnit(reader, '`in` needs a unit');
+    of = { kind: 'in-unit', span: reader.spanFrom(of.span.from), of, ...unit };
+  }
+  return of;
+}
+
+function readWith(reader: LineReader, slot: boolean): Expression {
+  let of = readOr(reader, slot);
+  for (let length = 0; reader.accept('with'); length++) {
+    limitChain(reader, length);
+    const replacements = readReplacements(reader);
+    of = { kind: 'with', span: reader.spanFrom(of.span.from), of, replacements };
+  }
+  return of;
+}
+
+function readReplacements(reader: LineReader): readonly Replacement[] {
+  const open = reader.accept('(');
+  if (!open) return [readReplacement(reader)];
+  const replacements = [readReplacement(reader)];
+  while (reader.accept(',')) replacements.push(readReplacement(reader));
+  closeBracket(reader, open);
+  return replacements;
+}
+
+function readReplacement(reader: LineReader): Replacement {
+  const name = readName(reader, '`with` needs the name that is replaced');
+  const by = reader.accept('is') ? 'is' : '=';
+  if (by === '=') reader.expect('=', 'A replacement, `Kp is 2` or `C = C2`,');
+  const value = by === 'is' ? readAssumedValue(reader) : readSum(reader, false);
+  return { span: reader.spanFrom(name.span.from), name: name.name, nameSpan: name.span, by, value };
+}
+
+/** What follows `is` where a formula stands: a number with a unit; a bare number is a number literal. */
+export function readAssumedValue(reader: LineReader): Expression {
+  const quantity = readQuantity(reader, '`is`');
+  if (quantity.unit !== '') return quantity;
+  const text = quantity.text.replace(/^-/, '');
+  const number: Expression = { kind: 'number', span: quantity.span, text };
+  if (text === quantity.text) return number;
+  return { kind: 'negation', span: quantity.span, of: number };
+}
+
+/** Reads a name that is being mentioned rather than used. */
+export function readName(reader: LineReader, purpose: string): Name {
+  const token = reader.peek();
+  if (token?.kind === 'name') {
+    reader.take();
+    return nameOf(token);
+  }
+  const { span } = reader.failUnexpected(purpose);
+  return { kind: 'name', span, name: '' };
+}
+
+function nameOf(token: Token): Name {
+  return {
+    kind: 'name',
+    span: { from: token.from, to: token.to },
+    name: canonicalName(token.text),
+  };
+}
+
+function readOr(reader: LineReader, slot: boolean): Expression {
+  return readLogical(reader, 'or', () => readLogical(reader, 'and', () => readNot(reader, slot)));
+}
+
+function readLogical(
+  reader: LineReader,
+  operator: 'and' | 'or',
+  readOperand: () => Expression,
+): Expression {
+  const operands = [readOperand()];
+  while (reader.accept(operator)) operands.push(readOperand());
+  if (operands.length === 1) return operands[0]!;
+  return { kind: 'logical', span: reader.spanFrom(operands[0]!.span.from), operator, operands };
+}
+
+function readNot(reader: LineReader, slot: boolean): Expression {
+  const not = reader.accept('not');
+  if (!not) return readRelation(reader, slot);
+  const of = reader.nested(() => readNot(reader, false));
+  return { kind: 'not', span: reader.spanFrom(not.from), of };
+}
+
+function readRelation(reader: LineReader, slot: boolean): Expression {
+  const sides = [readSum(reader, slot)];
+  const operators: RelationOperator[] = [];
+  while (isRelation(reader.peek())) {
+    operators.push(reader.take().text as RelationOperator);
+    sides.push(readSum(reader, reader.limitsAreSlots));
+  }
+  if (sides.length === 1) return sides[0]!;
+  return { kind: 'relation', span: reader.spanFrom(sides[0]!.span.from), sides, operators };
+}
+
+function isRelation(token: Token | undefined): boolean {
+  return token?.kind === 'symbol' && RELATIONS.has(token.text);
+}
+
+/** Reads a sum, the tightest level that holds no relation. */
+export function readSum(reader: LineReader, slot: boolean): Expression {
+  const terms = [readTerm(reader, slot)];
+  const signs: (1 | -1)[] = [1];
+  while (reader.isAt('+') || reader.isAt('-')) {
+    signs.push(reader.take().text === '-' ? -1 : 1);
+    terms.push(readTerm(reader, false));
+  }
+  refusePlusMinus(reader);
+  if (terms.length === 1) return terms[0]!;
+  return { kind: 'sum', span: reader.spanFrom(terms[0]!.span.from), terms, signs };
+}
+
+function refusePlusMinus(reader: LineReader): void {
+  const token = reader.peek();
+  if (token?.kind !== 'symbol' || token.text !== '±') return;
+  reader.fail(
+    token,
+    'unexpected',
+    'A tolerance, `±`, belongs to an assumption, as in `J is 480 kg m^2 ± 8 %`.',
+  );
+}
+
+/** A product and quotient that is being read: runs of juxtaposed factors, with the operators between them. */
+interface Chain {
+  readonly runs: Expression[][];
+  readonly operators: ('*' | '/')[];
+}
+
+/** Reads a term: factors, multiplied by a space or `*`, and at most one solidus. */
+export function readTerm(reader: LineReader, slot: boolean): Expression {
+  const quantity = slot ? readSlotQuantity(reader) : null;
+  const coefficient = quantity ? null : readCoefficient(reader);
+  const start = coefficient ?? (quantity ? [quantity] : null);
+  const chain: Chain = {
+    runs: [quantity ? [quantity] : readRun(reader, start ?? [])],
+    operators: [],
+  };
+  while (reader.isAt('*') || reader.isAt('·') || reader.isAt('/')) {
+    chain.operators.push(reader.take().text === '/' ? '/' : '*');
+    chain.runs.push(readRun(reader, []));
+  }
+  refuseUnclearSolidus(reader, chain);
+  return productOf(chain, coefficient !== null);
+}
+
+/**
+ * A number over a number at the start of a term, before a name, call or bracket, is a coefficient: `1/2 s`. Gives the
+ * two numbers, or null.
+ */
+function readCoefficient(reader: LineReader): Expression[] | null {
+  const hasSign = reader.isAt('-');
+  const at = hasSign ? 1 : 0;
+  const [numerator, divisor, next] = [reader.peek(at), reader.peek(at + 2), reader.peek(at + 3)];
+  if (numerator?.kind !== 'number' || !reader.isAt('/', at + 1) || divisor?.kind !== 'number')
+    return null;
+  const isFactor = next?.kind === 'name' ? canonicalName(next.text) !== 'pi' : next?.text === '(';
+  if (!isFactor) return null;
+  const sign = hasSign ? reader.take() : null;
+  reader.position += 3;
+  const over = numberOf(numerator);
+  const signed: Expression = sign
+    ? { kind: 'negation', span: coverSpans(sign, numerator), of: over }
+    : over;
+  return [signed, numberOf(divisor)];
+}
+
+function numberOf(token: Token): Expression {
+  return { kind: 'number', span: { from: token.from, to: token.to }, text: token.text };
+}
+
+/** Reads juxtaposed factors onto those that were read before. */
+function readRun(reader: LineReader, factors: Expression[]): Expression[] {
+  if (factors.length === 0) factors.push(readSigned(reader));
+  while (startsFactor(reader.peek())) {
+    refuseNumberAfterNumber(reader);
+    factors.push(readPower(reader));
+  }
+  return factors;
+}
+
+function startsFactor(token: Token | undefined): boolean {
+  if (!token) return false;
+  if (token.kind === 'name' || token.kind === 'number' || token.kind === 'text') return true;
+  return token.kind === 'symbol' && token.text === '(';
+}
+
+function refuseNumberAfterNumber(reader: LineReader): void {
+  const [before, next] = [reader.previous, reader.peek()!];
+  if (before.kind !== 'number' || next.kind !== 'number') return;
+  const span = { from: before.from, to: next.to };
+  reader.fail(
+    span,
+    'split-number',
+    `\`${reader.text(span)}\` is two numbers side by side: write one number without spaces, or \`*\` between them.`,
+    [replacement(span, before.text + next.text), replacement(span, `${before.text}*${next.text}`)],
+  );
+}
+
+/** ISO 80000-2 has no multiplication or division after a solidus without brackets. */
+function refuseUnclearSolidus(reader: LineReader, { runs, operators }: Chain): void {
+  const at = operators.findIndex(
+    (operator, k) => operator === '/' && (runs[k + 1]!.length > 1 || k + 1 < operators.length),
+  );
+  if (at < 0) return;
+  const [run, numeratorEnd] = [runs[at + 1]!, runs[at]!.at(-1)!.span];
+  const rest = run.length > 1 ? run : [...run, ...runs[at + 2]!];
+  const readings = {
+    numerator: coverSpans(runs[0]![0]!.span, numeratorEnd),
+    divisor: run[0]!.span,
+    rest: coverSpans(rest[0]!.span, rest.at(-1)!.span),
+  };
+  const span = coverSpans(readings.numerator, readings.rest);
+  const { source } = reader;
+  reader.refuse(span, 'solidus', solidusMessage(readings, source), solidusFixes(readings, source));
+}
+
+function productOf({ runs, operators }: Chain, hasCoefficient: boolean): Expression {
+  const factors = runs.flat();
+  if (factors.length === 1) return factors[0]!;
+  const inverted = runs.flatMap((run, k) => run.map(() => k > 0 && operators[k - 1] === '/'));
+  if (hasCoefficient) inverted[1] = true;
+  const span = coverSpans(factors[0]!.span, factors.at(-1)!.span);
+  return { kind: 'product', span, factors, inverted };
+}
+
+function readSigned(reader: LineReader): Expression {
+  if (reader.accept('+')) return reader.nested(() => readSigned(reader));
+  const sign = reader.accept('-');
+  if (!sign) return readPower(reader);
+  const of = reader.nested(() => readSigned(reader));
+  return { kind: 'negation', span: reader.spanFrom(sign.from), of };
+}
+
+function readPower(reader: LineReader): Expression {
+  const base = readPostfix(reader);
+  if (!reader.accept('^')) return base;
+  const exponent = reader.nested(() => readSigned(reader));
+  return { kind: 'power', span: reader.spanFrom(base.span.from), base, exponent };
+}
+
+function readPostfix(reader: LineReader): Expression {
+  const isBracket = reader.isAt('(');
+  const from = reader.peek()?.from ?? reader.previous.to;
+  let e = readAtom(reader);
+  for (let length = 0; isMemberDot(reader); length++) {
+    limitChain(reader, length);
+    e = readMember(reader, e, from);
+  }
+  refuseLooseBracket(reader);
+  return readDerivative(reader, e, isBracket && e.kind !== 'member', from);
+}
+
+function isMemberDot(reader: LineReader): boolean {
+  return reader.isAt('.') && reader.peek(1)?.kind === 'name';
+}
+
+function readMember(reader: LineReader, of: Expression, from: number): Expression {
+  reader.take();
+  const { name, span } = nameOf(reader.take());
+  const member: Expression = {
+    kind: 'member',
+    span: reader.spanFrom(from),
+    of,
+    name,
+    nameSpan: span,
+  };
+  const bracket = reader.peek();
+  if (bracket && reader.isAt('(') && !bracket.spaced)
+    reader.refuse(
+      coverSpans(member.span, bracket),
+      'member-before-bracket',
+      `\`${reader.text(member.span)}\` is not a function: to multiply write a space before the bracket, to evaluate write \`with s = …\` or \`with t = …\`.`,
+      [{ title: 'multiply', edits: [insertion(bracket.from, ' ')] }],
+    );
+  return member;
+}
+
+function refuseLooseBracket(reader: LineReader): void {
+  const open = reader.peek();
+  if (!open || !reader.isAt('[')) return;
+  reader.fail(
+    open,
+    'loose-unit',
+    'Square brackets hold the unit of the number before them, as in `3 [rad/s]`.',
+  );
+}
+
+function readDerivative(
+  reader: LineReader,
+  of: Expression,
+  isBracket: boolean,
+  from: number,
+): Expression {
+  const first = reader.peek();
+  let order = 0;
+  while (reader.accept("'")) order += 1;
+  if (order === 0) return of;
+  const span = reader.spanFrom(from);
+  const reason = whyNoDerivative(reader, of, isBracket);
+  if (reason) reader.refuse(coverSpans(of.span, first!), 'not-a-signal', reason);
+  return { kind: 'derivative', span, of, order };
+}
+
+/** Why a formula has no derivative written with `'`, or null. What a definition stands for, the engine knows. */
+function whyNoDerivative(reader: LineReader, of: Expression, isBracket: boolean): string | null {
+  const shown = reader.text(of.span);
+  if (isBracket)
+    return reader.scope.part === 'worksheet'
+      ? `A bracket has a derivative only in the equations of a loop; write \`'\` after the signal itself.`
+      : null;
+  if (of.kind === 'member' || of.kind === 'evaluation') return null;
+  if (of.kind !== 'name')
+    return `\`'\` is the time derivative of a signal, and \`${shown}\` is not one.`;
+  const kind = reader.kindOf(of.name);
+  const isConstant = ['s', 't', 'j', 'pi'].includes(of.name);
+  if (!isConstant && (kind === null || kind === 'signal' || kind === 'definition')) return null;
+  const what =
+    kind === null
+      ? 'a constant of the language'
+      : kind === 'assumption'
+        ? 'an assumption'
+        : `a ${kind}`;
+  return `\`'\` is the time derivative of a signal, and \`${shown}\` is ${what}.`;
+}
+
+function readAtom(reader: LineReader): Expression {
+  const token = reader.peek();
+  if (token?.kind === 'number') return readNumber(reader);
+  if (token?.kind === 'name') return readNamed(reader);
+  if (token?.kind === 'text') return readText(reader);
+  if (reader.isAt('(')) return reader.nested(() => readBracket(reader));
+  if (reader.isAt('.') && reader.peek(1)?.kind === 'number') return failBareFraction(reader);
+  return reader.failUnexpected(
+    reader.position === 0
+      ? 'A formula is needed here'
+      : `\`${reader.previous.text}\` needs a formula after it`,
+  );
+}
+
+function failBareFraction(reader: LineReader): Expression {
+  const [dot, number] = [reader.peek()!, reader.peek(1)!];
+  const span = coverSpans(dot, number);
+  const whole = `0.${number.text}`;
+  return reader.fail(span, 'bare-fraction', `A number starts with a digit: write \`${whole}\`.`, [
+    replacement(span, whole),
+  ]);
+}
+
+function readNumber(reader: LineReader): Expression {
+  const token = reader.take();
+  return reader.isAt('[') ? readBracketedUnit(reader, token) : numberOf(token);
+}
+
+function readText(reader: LineReader): Expression {
+  const token = reader.take();
+  return { kind: 'text', span: { from: token.from, to: token.to }, text: token.text.slice(1, -1) };
+}
+
+function readBracket(reader: LineReader): Expression {
+  const open = reader.take();
+  const e = readFormula(reader);
+  if (reader.isAt(','))
+    reader.fail(
+      reader.peek()!,
+      'unexpected',
+      'This bracket follows no function, so it holds one formula, not a list.',
+    );
+  closeBracket(reader, open);
+  return e;
+}
+
+function closeBracket(reader: LineReader, open: Token): void {
+  if (reader.accept(')')) return;
+  if (!reader.isAtEnd) {
+    reader.failUnexpected('This bracket needs `)` here');
+    return;
+  }
+  const end = reader.previous.to;
+  reader.fail(open, 'unclosed-bracket', 'This bracket is not closed.', [
+    { title: 'close the bracket', edits: [insertion(end, ')')] },
+  ]);
+}
+
+function readNamed(reader: LineReader): Expression {
+  const token = reader.take();
+  if (!reader.isAt('(')) return nameOf(token);
+  const use = bracketUse(reader, token);
+  if (use === 'multiply') return nameOf(token);
+  return reader.nested(() =>
+    use === 'call' ? readCall(reader, token) : readEvaluation(reader, token, use),
+  );
+}
+
+/** Reads `C(s)`, `L(0)` and `L(j w)`; a bracket that holds no such point is left to be a factor. */
+function readEvaluation(reader: LineReader, token: Token, use: BracketUse): Expression {
+  const name = nameOf(token);
+  const content = bracketContent(reader);
+  if (content === 'factor' || (content === 'unclear' && use === 'no-value')) return name;
+  const open = reader.peek()!;
+  const at = readBracket(reader);
+  const span = reader.spanFrom(token.from);
+  if (use === 'no-value' || content === 'unclear')
+    refuseEvaluation(reader, name, { span, open, at }, use);
+  return { kind: 'evaluation', span, name: name.name, nameSpan: name.span, at };
+}
+
+function refuseEvaluation(
+  reader: LineReader,
+  name: Name,
+  bracket: { span: Span; open: Token; at: Expression },
+  use: BracketUse,
+): void {
+  const [shown, point] = [reader.text(name.span), reader.text(bracket.at.span)];
+  const multiply = {
+    title: `multiply: \`${shown} (${point})\``,
+    edits: [insertion(bracket.open.from, ' ')],
+  };
+  const other =
+    use === 'no-value'
+      ? replacement(bracket.span, shown, `the assumption itself: \`${shown}\``)
+      : replacement(
+          bracket.span,
+          `(${shown} with s = ${point})`,
+          `evaluate: \`${shown} with s = ${point}\``,
+        );
+  const message =
+    use === 'no-value'
+      ? `\`${shown}\` is ${reader.kindOf(name.name) === 'assumption' ? 'an assumption' : 'a symbol'}, not a function of anything, so \`${reader.text(bracket.span)}\` has no meaning.`
+      : `\`${reader.text(bracket.span)}\` can be a product or the value of \`${shown}\` at a point.`;
+  reader.refuse(bracket.span, 'name-before-bracket', message, [multiply, other]);
+}
+
+function readCall(reader: LineReader, token: Token): Expression {
+  const open = reader.take();
+  const { limitsAreSlots } = reader;
+  reader.limitsAreSlots = false;
+  const kind = reader.kindOf(canonicalName(token.text));
+  const callee = kind === null ? token.text : canonicalName(token.text);
+  const args = reader.isAt(')') ? [] : readArguments(reader, callee);
+  reader.limitsAreSlots = limitsAreSlots;
+  closeBracket(reader, open);
+  const calleeSpan = { from: token.from, to: token.to };
+  return { kind: 'call', span: reader.spanFrom(token.from), callee, calleeSpan, args };
+}
+
+function readArguments(reader: LineReader, callee: string): readonly Expression[] {
+  if (callee === 'rows') return [readRows(reader)];
+  const args: Expression[] = [];
+  do args.push(readArgument(reader, callee, args.length));
+  while (reader.accept(','));
+  return args;
+}
+
+function readArgument(reader: LineReader, callee: string, index: number): Expression {
+  const e = readFormula(reader, reader.context.vocabulary.slotArguments(callee, index));
+  if (reader.accept('->')) return readArrow(reader, e);
+  return reader.accept('as') ? readLimit(reader, e) : e;
+}
+
+/** Reads what follows `->`: all signals up to the closing bracket. */
+function readArrow(reader: LineReader, from: Expression): Arrow {
+  const to: Expression[] = [];
+  do to.push(readFormula(reader));
+  while (reader.accept(','));
+  return { kind: 'arrow', span: reader.spanFrom(from.span.from), from, to };
+}
+
+function readLimit(reader: LineReader, of: Expression): Expression {
+  const variable = readName(reader, '`as` needs the name that goes to a limit');
+  reader.expect('to', 'A limit, `x as s to 0`,');
+  const to = readSlot(reader);
+  return { kind: 'limit', span: reader.spanFrom(of.span.from), of, variable: variable.name, to };
+}
+
+function readRows(reader: LineReader): Expression {
+  const from = reader.peek()!.from;
+  const rows: Expression[][] = [];
+  do rows.push(readRow(reader));
+  while (reader.accept('|'));
+  return { kind: 'rows', span: reader.spanFrom(from), rows };
+}
+
+function readRow(reader: LineReader): Expression[] {
+  const row: Expression[] = [];
+  do row.push(readFormula(reader));
+  while (reader.accept(','));
+  return row;
+}

@@ -1,0 +1,192 @@
+import type { Expression, Product, Replacement, Sum } from './ast.ts';
+
+/** How tightly each kind of formula binds; a part that binds less tightly than its place needs brackets. */
+const LEVELS = {
+  in: 0,
+  with: 1,
+  or: 2,
+  and: 3,
+  not: 4,
+  relation: 5,
+  sum: 6,
+  product: 7,
+  sign: 8,
+  power: 9,
+  postfix: 10,
+} as const;
+
+type Level = (typeof LEVELS)[keyof typeof LEVELS];
+
+function levelOf(e: Expression): Level {
+  switch (e.kind) {
+    case 'in-unit':
+      return LEVELS.in;
+    case 'with':
+      return LEVELS.with;
+    case 'logical':
+      return LEVELS[e.operator];
+    case 'not':
+      return LEVELS.not;
+    case 'relation':
+      return LEVELS.relation;
+    case 'sum':
+      return e.terms.length === 1 ? levelOf(e.terms[0]!) : LEVELS.sum;
+    case 'product':
+      return LEVELS.product;
+    case 'negation':
+      return LEVELS.sign;
+    case 'power':
+      return LEVELS.power;
+    case 'quantity':
+    case 'number':
+      return e.text.startsWith('-') ? LEVELS.sign : LEVELS.postfix;
+    default:
+      return LEVELS.postfix;
+  }
+}
+
+function at(level: Level, e: Expression): string {
+  const text = formatExpression(e);
+  return levelOf(e) >= level ? text : `(${text})`;
+}
+
+function list(items: readonly Expression[]): string {
+  return items.map(formatExpression).join(', ');
+}
+
+/** The text of a formula, which this language reads as the same formula again. */
+export function formatExpression(e: Expression): string {
+  switch (e.kind) {
+    case 'number':
+      return e.text;
+    case 'quantity':
+      return e.unit === '' ? e.text : `${e.text} [${e.unit}]`;
+    case 'name':
+      return e.name;
+    case 'text':
+      return `"${e.text}"`;
+    case 'member':
+      return `${at(LEVELS.postfix, e.of)}.${e.name}`;
+    case 'derivative':
+      return at(LEVELS.postfix, e.of) + "'".repeat(e.order);
+    case 'call':
+      return `${e.callee}(${list(e.args)})`;
+    case 'evaluation':
+      return `${e.name}(${formatExpression(e.at)})`;
+    case 'arrow':
+      return `${formatExpression(e.from)} -> ${list(e.to)}`;
+    case 'limit':
+      return `${formatExpression(e.of)} as ${e.variable} to ${at(LEVELS.sum, e.to)}`;
+    case 'rows':
+      return e.rows.map(list).join(' | ');
+    default:
+      return formatOperation(e);
+  }
+}
+
+type Operation = Extract<
+  Expression,
+  {
+    kind:
+      | 'sum'
+      | 'product'
+      | 'negation'
+      | 'power'
+      | 'relation'
+      | 'logical'
+      | 'not'
+      | 'with'
+      | 'in-unit';
+  }
+>;
+
+function formatOperation(e: Operation): string {
+  switch (e.kind) {
+    case 'sum':
+      return formatSum(e);
+    case 'product':
+      return formatProduct(e);
+    case 'negation':
+      return `-${negated(e.of)}`;
+    case 'power':
+      return `${at(LEVELS.postfix, e.base)}^${at(LEVELS.sign, e.exponent)}`;
+    case 'relation':
+      return e.sides
+        .map((side, k) => (k > 0 ? ` ${e.operators[k - 1]} ` : '') + at(LEVELS.sum, side))
+        .join('');
+    case 'logical':
+      return e.operands
+        .map((operand) => at(e.operator === 'or' ? LEVELS.and : LEVELS.not, operand))
+        .join(` ${e.operator} `);
+    case 'not':
+      return `not ${at(LEVELS.not, e.of)}`;
+    case 'with':
+      return `${at(LEVELS.with, e.of)} with ${formatReplacements(e.replacements)}`;
+    case 'in-unit':
+      return `${at(LEVELS.in, e.of)} in ${e.unit}`;
+  }
+}
+
+/** What a sign is put before. The sign of a product's first factor is the product's, so a product needs no brackets. */
+function negated(e: Expression): string {
+  return e.kind === 'product' && !e.inverted[0] ? formatProduct(e, true) : at(LEVELS.power, e);
+}
+
+function formatReplacements(replacements: readonly Replacement[]): string {
+  const texts = replacements.map(
+    ({ name, by, value }) => `${name} ${by} ${formatReplaced(by, value)}`,
+  );
+  return texts.length === 1 ? texts[0]! : `(${texts.join(', ')})`;
+}
+
+function formatReplaced(by: Replacement['by'], value: Expression): string {
+  const isPlain = by === 'is' && value.kind === 'quantity' && value.unit !== '';
+  return isPlain ? `${value.text} ${value.unit}` : at(LEVELS.sum, value);
+}
+
+function formatSum({ terms, signs }: Sum): string {
+  return terms
+    .map((term, k) => {
+      const text = k === 0 ? at(LEVELS.product, term) : at(LEVELS.product, term);
+      if (k === 0) return signs[0] === -1 ? `-${negated(term)}` : text;
+      return ` ${signs[k] === -1 ? '-' : '+'} ${levelOf(term) === LEVELS.sign ? `(${text})` : text}`;
+    })
+    .join('');
+}
+
+/** A product as `a b/(c d)`; one whose divisors come before further factors is grouped from the left. */
+function formatProduct({ factors, inverted }: Product, isSigned = false): string {
+  const firstDivisor = inverted.indexOf(true);
+  const above = firstDivisor < 0 ? factors : factors.slice(0, firstDivisor);
+  const numerator = above.length === 0 ? '1' : juxtaposed(above, isSigned);
+  if (firstDivisor < 0) return numerator;
+  const later = inverted.indexOf(false, firstDivisor);
+  const below = factors.slice(firstDivisor, later < 0 ? undefined : later);
+  const quotient = `${numerator}/${divisor(below)}`;
+  if (later < 0) return quotient;
+  const rest = formatProduct({
+    kind: 'product',
+    span: { from: 0, to: 0 },
+    factors: factors.slice(later),
+    inverted: inverted.slice(later),
+  });
+  return `(${quotient})${/^[\d]/.test(rest) ? '*' : ' '}${rest}`;
+}
+
+function divisor(factors: readonly Expression[]): string {
+  const [only, ...others] = factors;
+  if (only && others.length === 0) return at(LEVELS.sign, only);
+  return `(${juxtaposed(factors, false)})`;
+}
+
+/** Factors side by side; `*` where a number follows a number, which would otherwise read as one. */
+function juxtaposed(factors: readonly Expression[], isSigned: boolean): string {
+  let text = '';
+  for (const [k, factor] of factors.entries()) {
+    const isFirst = k === 0 && !isSigned;
+    const part = at(isFirst ? LEVELS.sign : LEVELS.power, factor);
+    const isAfterNumber = /(^|[^\p{L}\d_])[\d.]+(e-?\d+)?$/iu.test(text) && /^\d/.test(part);
+    text += k === 0 ? part : (isAfterNumber ? '*' : ' ') + part;
+  }
+  return text;
+}
