@@ -81,25 +81,33 @@ function crossingsOf(
   return points.map((_, i) => placed(i));
 }
 
-/** Brings a ring straight out to the frame where it meets it, and into the frame's corners. */
+/** Brings a ring out to the frame where it meets it, and into the frame's corners. */
 function fitted(grid: Grid, ring: GridRing): GridRing {
+  const at = (i: number): readonly [number, number] => ring[(i + ring.length) % ring.length];
   return ring.flatMap((point, i) => {
     if (!isOnFrame(grid, point)) return [point];
-    const before = ring[(i + ring.length - 1) % ring.length];
-    const after = ring[(i + 1) % ring.length];
-    const inner = [before, after].find((neighbour) => !isOnFrame(grid, neighbour));
-    const own = inner === undefined ? point : beside(point, inner);
-    const corner = isOnFrame(grid, after) && turnsCorner(point, after);
-    return corner ? [own, cornerBetween(grid, point, after)] : [own];
+    const side = [-1, 1].find((step) => !isOnFrame(grid, at(i + step)));
+    const own = side === undefined ? point : extended(grid, point, at(i + side), at(i + 2 * side));
+    const corner = isOnFrame(grid, at(i + 1)) && turnsCorner(point, at(i + 1));
+    return corner ? [own, cornerBetween(grid, point, at(i + 1))] : [own];
   });
 }
 
-/** A point on the frame, moved along it to face an inner point. */
-function beside(
+/** A point on the frame, moved along it to where the line through the two points before it comes out. */
+function extended(
+  grid: Grid,
   [x, y]: readonly [number, number],
-  [innerX, innerY]: readonly [number, number],
+  [nearX, nearY]: readonly [number, number],
+  [farX, farY]: readonly [number, number],
 ): readonly [number, number] {
-  return Number.isInteger(x) ? [x, innerY] : [innerX, y];
+  const reach = (run: number, rise: number, from: number, limit: number): number => {
+    const change = run === 0 ? 0 : Math.max(-1, Math.min(1, rise / run));
+    return Math.max(0, Math.min(limit, from + change));
+  };
+  if (x === 0 || x === grid.x.n) {
+    return [x, reach(nearX - farX, (nearY - farY) * (x - nearX), nearY, grid.y.n)];
+  }
+  return [reach(nearY - farY, (nearX - farX) * (y - nearY), nearX, grid.x.n), y];
 }
 
 function turnsCorner([x]: readonly [number, number], [nextX]: readonly [number, number]): boolean {
