@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { isRefusal } from '../../src/base/index.ts';
 import { customUnit, dimensionText, isUnitSymbol, parseUnit } from '../../src/units/index.ts';
+import { PREFIXES, SYMBOLS } from '../../src/units/unit-symbols.ts';
 import { unit } from './unit.ts';
 
 function reasonOf(text: string): string {
@@ -101,14 +102,35 @@ describe('a refused unit', () => {
   ])('%s says: %s', (text, reason) => {
     expect(reasonOf(text)).toBe(reason);
   });
+});
 
-  it('never takes a power of a thousand of the second into the wrong symbol: every accepted symbol has one reading', () => {
-    expect(unit('min').number).toBe(60);
-    expect(unit('cd').factor.rational).toBe('1');
-    expect(unit('Pa').factor.rational).toBe('1');
-    expect(dimensionText(unit('ft').dimension)).toBe('m');
-    expect(dimensionText(unit('kat').dimension)).toBe('mol/s');
-    expect(dimensionText(unit('mT').dimension)).toBe('T');
+describe('a unit symbol', () => {
+  it('has one reading with a prefix, except that the foot is not a femtotonne', () => {
+    const readings = new Map<string, string[]>();
+    for (const { symbol, prefixed } of SYMBOLS.values()) {
+      for (const prefix of prefixed ? ['', ...PREFIXES.keys()] : ['']) {
+        const text = prefix + symbol;
+        readings.set(text, [...(readings.get(text) ?? []), `${prefix}|${symbol}`]);
+      }
+    }
+    const ambiguous = [...readings.values()].filter((found) => found.length > 1);
+    expect(ambiguous).toEqual([['f|t', '|ft']]);
+  });
+
+  it.each([
+    ['min', true],
+    ['mrad', true],
+    ['µm', true],
+    ['dB', true],
+    ['°C', true],
+    ['°', true],
+    ['kmin', false],
+    ['rad/s', false],
+    ['mmm', false],
+    ['', false],
+    ['u', false],
+  ])('%s is one: %s', (text, isOne) => {
+    expect(isUnitSymbol(text)).toBe(isOne);
   });
 });
 
