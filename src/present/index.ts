@@ -1,0 +1,10 @@
+export type { Shape, Writing } from './writing.ts';
+export * from './formula.ts';
+export * from './condition.ts';
+export * from './table.ts';
+export * from './roots.ts';
+export * from './value.ts';
+export * from './json.ts';
+export * from './expression.ts';
+export * from './words.ts';
+export * from './response.ts';

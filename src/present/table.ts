@@ -1,0 +1,57 @@
+import type { Ratio } from '../algebra/index.ts';
+import type { RouthArray } from '../control/index.ts';
+import { formulaLatex, formulaText } from './formula.ts';
+import type { Writing } from './writing.ts';
+
+/** The entries of a Routh array as re-readable formulas, row by row from the highest power of s. */
+export function routhRows(array: RouthArray, writing: Writing): string[][] {
+  return array.rows.map((row) => row.entries.map((entry) => formulaText(entry, writing)));
+}
+
+/** A Routh array as one re-readable matrix, its short rows filled up with zeros. */
+export function routhText(array: RouthArray, writing: Writing): string {
+  const rows = routhRows(array, writing);
+  const columns = Math.max(...rows.map((row) => row.length));
+  const filled = rows.map((row) => [...row, ...Array<string>(columns - row.length).fill('0')]);
+  return `rows(${filled.map((row) => row.join(', ')).join(' | ')})`;
+}
+
+/** A Routh array as LaTeX: the powers of s at the left, rows with a special case marked at the right. */
+export function routhLatex(array: RouthArray, writing: Writing): string {
+  const columns = Math.max(1, ...array.rows.map(({ entries }) => entries.length));
+  const rows = array.rows.map(({ power, entries, special }) => {
+    const cells = entries.map((entry) => formulaLatex(entry, writing));
+    const padding = Array<string>(columns - cells.length).fill('');
+    const mark = special === null ? '' : `\\;\\leftarrow\\text{ ${special}}`;
+    return [powerLatex(power), ...cells, ...padding].join(' & ') + mark;
+  });
+  const body = rows.join(' \\\\[2pt] ');
+  return `\\begin{array}{c|${'c'.repeat(columns)}} ${body} \\end{array}`;
+}
+
+function powerLatex(power: number): string {
+  return `s^{${power}}`;
+}
+
+/** A matrix as re-readable text, `rows(a, b | c, d)`; a 1 × 1 matrix is its entry. */
+export function matrixText(rows: readonly (readonly Ratio[])[], writing: Writing): string {
+  if (isSingle(rows)) return formulaText(rows[0][0], writing);
+  const lines = rows.map((row) => row.map((entry) => formulaText(entry, writing)).join(', '));
+  return `rows(${lines.join(' | ')})`;
+}
+
+/** The same matrix as {@link matrixText}, as LaTeX. */
+export function matrixLatex(rows: readonly (readonly Ratio[])[], writing: Writing): string {
+  if (isSingle(rows)) return formulaLatex(rows[0][0], writing);
+  const lines = rows.map((row) => row.map((entry) => formulaLatex(entry, writing)).join(' & '));
+  return `\\begin{bmatrix} ${lines.join(' \\\\ ')} \\end{bmatrix}`;
+}
+
+/** The entries of a matrix as re-readable formulas. */
+export function matrixRows(rows: readonly (readonly Ratio[])[], writing: Writing): string[][] {
+  return rows.map((row) => row.map((entry) => formulaText(entry, writing)));
+}
+
+function isSingle(rows: readonly (readonly Ratio[])[]): boolean {
+  return rows.length === 1 && rows[0].length === 1;
+}
