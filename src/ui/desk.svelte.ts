@@ -1,0 +1,222 @@
+import {
+  createClient,
+  startEvaluator,
+  type EvaluatorClient,
+  type EvaluatorState,
+} from '../worker/index.ts';
+import type { Heading } from './outline.ts';
+import { freshSheet, nextSheet, withBaseline } from './sheet-keeper.ts';
+import type { Sheet } from './editor/sheet-field.ts';
+import { WorksheetEditor } from './editor/worksheet-editor.ts';
+import { FileKeeper, type FileState } from './files/file-keeper.ts';
+import { createFileService, isFailure, type FileService, type Folder } from './files/service.ts';
+
+/** Milliseconds after which results that are still being recomputed are greyed. */
+const GREY_AFTER = 200;
+const LAST_OPENED = 'loopwright last opened';
+
+/** Everything that the page shows, and what can be done to it. Made once, when the column is on the page. */
+export class Desk {
+  folder = $state.raw<Folder | null>(null);
+  folderFailure = $state.raw<string | null>(null);
+  connected = $state(true);
+  file = $state.raw<FileState | null>(null);
+  sheet = $state.raw<Sheet>(freshSheet());
+  headings = $state.raw<readonly Heading[]>([]);
+  evaluator = $state.raw<EvaluatorState>({ kind: 'current' });
+  /** Whether the results shown are older than a moment: they are greyed. */
+  late = $state(false);
+
+  private readonly service: FileService = createFileService();
+  private readonly editor: WorksheetEditor;
+  private readonly keeper: FileKeeper;
+  private readonly client: EvaluatorClient;
+  private readonly stopListening: () => void;
+  private greying: ReturnType<typeof setTimeout> | null = null;
+
+  constructor(column: HTMLElement) {
+    this.editor = new WorksheetEditor(column, {
+      onChange: (text) => this.textChanged(text),
+      onSave: () => void this.save(),
+    });
+    this.client = createClient({
+      startWorker: startEvaluator,
+      onReport: (report) => this.take(nextSheet(this.sheet, report, this.editor.text)),
+      onState: (state) => this.evaluatorIs(state),
+      onVocabulary: (functions) => this.editor.setVocabulary(functions),
+    });
+    this.keeper = new FileKeeper({
+      service: this.service,
+      storage: localStorage,
+      holder: this.holder(),
+      onState: (state) => this.fileIs(state),
+    });
+    this.stopListening = this.listen();
+  }
+
+  /** Lists the folder and opens the worksheet that the address names, the one opened last, or the first. */
+  async begin(): Promise<void> {
+    await this.list();
+    const names = this.folder?.worksheets.map(({ name }) => name) ?? [];
+    const asked = new URL(location.href).searchParams.get('worksheet');
+    const wanted = [asked, localStorage.getItem(LAST_OPENED)].find(
+      (name) => name && names.includes(name),
+    );
+    const name = wanted ?? asked ?? names[0];
+    if (name) await this.open(name);
+  }
+
+  async list(): Promise<void> {
+    const answer = await this.service.list();
+    if (isFailure(answer)) this.folderFailure = answer.message;
+    else {
+      this.folder = answer;
+      this.folderFailure = null;
+    }
+  }
+
+  async open(name: string): Promise<void> {
+    localStorage.setItem(LAST_OPENED, name);
+    const address = new URL(location.href);
+    address.searchParams.set('worksheet', name);
+    history.replaceState(history.state, '', address);
+    await this.keeper.open(name);
+  }
+
+  /** Makes a worksheet with a title and opens it; returns why not if it cannot. */
+  async create(title: string): Promise<string | null> {
+    const words = title.trim().replace(/\.md$/u, '');
+    const name = `${words
+      .toLowerCase()
+      .replace(/[^\p{L}\p{N}/]+/gu, '-')
+      .replace(/^-+|-+$/gu, '')}.md`;
+    if (name === '.md') return 'Give the worksheet a name.';
+    const outcome = await this.service.save(name, `# ${words}\n\n\`\`\`loop\n\n\`\`\`\n`, null);
+    if (outcome.kind === 'conflict') return `There is a worksheet ${name} already.`;
+    if (outcome.kind === 'failed') return outcome.message;
+    await this.list();
+    await this.open(name);
+    return null;
+  }
+
+  async save(): Promise<void> {
+    await this.keeper.save();
+  }
+
+  /** The unsaved text, for the view of a conflict. */
+  get fileText(): string {
+    return this.editor.fileText;
+  }
+
+  resolveConflict(text: string): Promise<void> {
+    return this.keeper.resolve(text);
+  }
+
+  takeDisk(): void {
+    this.keeper.takeDisk();
+  }
+
+  settleDraft(restore: boolean): void {
+    this.keeper.settleDraft(restore);
+  }
+
+  pin(pinned: boolean): void {
+    this.take(withBaseline(this.sheet, this.editor.text, pinned));
+  }
+
+  goTo(place: number, edit = false): void {
+    this.editor.goTo(place, edit);
+  }
+
+  writeNumber(name: string, text: string): void {
+    this.editor.writeNumbers(new Map([[name, text]]));
+  }
+
+  dragNumber(name: string) {
+    return this.editor.dragNumbers([name]);
+  }
+
+  close(): void {
+    this.stopListening();
+    this.client.close();
+    this.editor.close();
+  }
+
+  private holder() {
+    const { editor } = this;
+    const opened = (text: string, keepPlace: boolean) => {
+      editor.open(text, keepPlace);
+      if (!keepPlace) this.sheet = freshSheet();
+      this.headings = editor.headings;
+      this.client.update(editor.text, true);
+    };
+    return {
+      get fileText() {
+        return editor.fileText;
+      },
+      get edited() {
+        return editor.edited;
+      },
+      open: opened,
+      replace: (text: string) => editor.replace(text),
+      markSaved: (text: string) => editor.markSaved(text),
+    };
+  }
+
+  private textChanged(text: string): void {
+    this.client.update(text);
+    this.headings = this.editor.headings;
+    this.keeper.textChanged();
+  }
+
+  private take(sheet: Sheet): void {
+    this.sheet = sheet;
+    this.editor.show(sheet);
+  }
+
+  private evaluatorIs(state: EvaluatorState): void {
+    this.evaluator = state;
+    if (state.kind === 'computing') {
+      this.greying ??= setTimeout(() => this.grey(true), GREY_AFTER);
+      return;
+    }
+    if (this.greying !== null) clearTimeout(this.greying);
+    this.greying = null;
+    this.grey(state.kind !== 'current');
+  }
+
+  private grey(late: boolean): void {
+    this.late = late;
+    this.editor.setComputing(late);
+  }
+
+  private fileIs(state: FileState | null): void {
+    this.file = state;
+    this.editor.setReadOnly(state?.phase !== 'open' || state.conflict !== null);
+  }
+
+  private listen(): () => void {
+    return this.service.listen({
+      onChanged: (name, hash) => {
+        void this.keeper.diskChanged(name, hash);
+        void this.list();
+      },
+      onRemoved: (name) => {
+        this.keeper.diskRemoved(name);
+        void this.list();
+      },
+      onAdded: () => void this.list(),
+      onConnection: (connected) => {
+        if (connected && !this.connected) void this.reconnected();
+        this.connected = connected;
+      },
+    });
+  }
+
+  /** After a time without the service: whatever changed meanwhile is noticed now. */
+  private async reconnected(): Promise<void> {
+    await this.list();
+    const entry = this.folder?.worksheets.find(({ name }) => name === this.file?.name);
+    if (entry) await this.keeper.diskChanged(entry.name, entry.hash);
+  }
+}

@@ -1,0 +1,70 @@
+import type { ResultContent } from '../../engine/index.ts';
+import type { Movement } from '../baseline.ts';
+import { element } from './element.ts';
+import { typeset } from './mathematics.ts';
+import { resultTable } from './value-table.ts';
+
+/** Whether a result has anything to show under its statement. */
+export function isShown(content: ResultContent, movement: Movement | null): boolean {
+  return (
+    movement !== null ||
+    (content.state === 'error' && content.waitsFor !== null) ||
+    (content.state === 'ready' && content.kind !== 'figure') ||
+    content.notes.length > 0
+  );
+}
+
+/** A result under its statement: the formula, typeset, and at the column's right edge the value and the span. */
+export function resultRow(content: ResultContent, movement: Movement | null): HTMLElement {
+  const row = element('div', `result result-${content.kind}`);
+  row.setAttribute('role', 'group');
+  row.setAttribute('aria-label', `Result ${content.name ?? ''}`.trim());
+  if (content.waitsFor && content.state === 'error') row.append(waitingLine(content.waitsFor));
+  else row.append(mainLine(content, movement));
+  const table = resultTable(content);
+  if (table) row.append(table);
+  row.append(...content.notes.map((note) => element('p', 'note', note)));
+  return row;
+}
+
+/** "waits for K_p (line 12)": the line that shows where a dependent's fault lies. */
+export function waitingLine(waitsFor: { readonly name: string; readonly line: number }) {
+  return element('p', 'waiting', `waits for ${waitsFor.name}, line ${waitsFor.line}`);
+}
+
+function mainLine(content: ResultContent, movement: Movement | null): HTMLElement {
+  const line = element('div', 'result-line');
+  const formula = element('div', 'formula');
+  if (content.state === 'ready' && content.latex) formula.append(formulaElement(content));
+  line.append(formula, figures(content, movement));
+  return line;
+}
+
+function formulaElement(content: ResultContent): HTMLElement {
+  const left = content.nameLatex === null ? '' : `${content.nameLatex} = `;
+  return typeset(`${left}${content.latex}`, 'result');
+}
+
+function figures(content: ResultContent, movement: Movement | null): HTMLElement {
+  const made = element('div', 'figures');
+  if (content.shown !== null && content.state === 'ready') {
+    made.append(element('span', 'value', withMinus(content.shown)));
+  }
+  if (content.span) {
+    const { shown, how, n } = content.span;
+    const found = how === 'sampled' ? `sampled, n = ${n ?? '?'}` : how;
+    made.append(element('span', 'span', withMinus(shown), element('span', 'how', found)));
+  }
+  if (movement) made.append(movementElement(movement));
+  return made;
+}
+
+/** "was 0.31 mrad, × 1.07". */
+export function movementElement({ was, by }: Movement): HTMLElement {
+  return element('span', 'was', withMinus(was), by === null ? null : element('span', 'by', by));
+}
+
+/** Sets a hyphen before a digit as a minus sign, as print does. */
+export function withMinus(text: string): string {
+  return text.replace(/(^|[\s(,])-(?=[\d.])/gu, '$1−');
+}
