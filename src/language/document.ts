@@ -1,6 +1,7 @@
 import { NodeProp, TreeFragment, type SyntaxNode, type Tree } from '@lezer/common';
 import type { Problem, Span } from '../base/index.ts';
 import type { PlacedStatement } from './ast.ts';
+import { offsetSpan } from './placing.ts';
 import { worksheetParts, type Cell, type ProseBlock, type Reference } from './prose.ts';
 import { introductionsOf, type Introduction, type StatementSource } from './statement-source.ts';
 import { readStatement } from './statements.ts';
@@ -88,11 +89,17 @@ function unchangedFragments(previous: WorksheetDocument, text: string): readonly
   return TreeFragment.applyChanges(fragments, [change]);
 }
 
-/** The cell's own tree, which hangs on its fence, and where it starts in the text. */
-function cellTree(fence: SyntaxNode): { tree: Tree; start: number } | null {
+/** The cell's own tree, which hangs on its fence, and the stretches of text that it was made from. */
+interface CellTree {
+  readonly tree: Tree;
+  readonly stretches: readonly Span[];
+}
+
+function cellTree(fence: SyntaxNode): CellTree | null {
   const mounted = fence.tree?.prop(NodeProp.mounted);
   if (!mounted?.overlay?.length) return null;
-  return { tree: mounted.tree, start: fence.from + mounted.overlay[0]!.from };
+  const stretches = mounted.overlay.map((stretch) => offsetSpan(stretch, fence.from));
+  return { tree: mounted.tree, stretches };
 }
 
 function statementPlaces(fence: SyntaxNode, text: string): readonly StatementPlace[] {
@@ -102,23 +109,34 @@ function statementPlaces(fence: SyntaxNode, text: string): readonly StatementPla
   const top = cell.tree.topNode;
   for (let node = top.firstChild; node; node = node.nextSibling) {
     if (node.name !== 'Statement' && node.name !== 'BlockStatement') continue;
-    places.push(statementPlace(node, cell.start, text));
+    places.push(statementPlace(node, cell, text));
   }
   return places;
 }
 
-function statementPlace(node: SyntaxNode, treeStart: number, text: string): StatementPlace {
-  const from = skipSpace(text, node.from + treeStart);
+function statementPlace(node: SyntaxNode, cell: CellTree, text: string): StatementPlace {
+  const treeStart = cell.stretches[0]!.from;
+  const from = firstToken(node).from + treeStart;
   const comment = trailingComment(node, treeStart, text);
   const to = comment?.to ?? node.to + treeStart;
-  return { node, treeStart, from, to, comment, key: text.slice(from, to) };
+  const key = text.slice(from, to) + gapsBetween(cell.stretches, from, to);
+  return { node, treeStart, from, to, comment, key };
 }
 
 /** A statement's node begins with its line's indent. */
-function skipSpace(text: string, from: number): number {
-  let position = from;
-  while (/\s/.test(text[position] ?? 'x')) position += 1;
-  return position;
+function firstToken(node: SyntaxNode): SyntaxNode {
+  let first = node;
+  while (first.firstChild) first = first.firstChild;
+  return first;
+}
+
+/** The marks of a quote or list that interrupt a statement's text: equal text reads equally only with equal gaps. */
+function gapsBetween(stretches: readonly Span[], from: number, to: number): string {
+  if (stretches.length === 1) return '';
+  return stretches
+    .filter((stretch) => stretch.from > from && stretch.from < to)
+    .map((stretch) => `\0${stretch.from - from}`)
+    .join('');
 }
 
 /** The comment that follows a statement on its last line. */
@@ -155,20 +173,10 @@ function readPlaces(
 }
 
 function see(place: StatementPlace, text: string, before: Remembered | null): Seen {
-  if (before && sameShape(place, before))
-    return { place, source: before.source, introductions: before.introductions, before };
+  if (before) return { place, source: before.source, introductions: before.introductions, before };
   const lines = tokenLines(place.node, place.comment, text, place.treeStart, place.from);
-  const source = { text: place.key, lines };
+  const source = { text: text.slice(place.from, place.to), lines };
   return { place, source, introductions: introductionsOf(source), before: null };
-}
-
-/** Equal text has equal tokens, unless one of the two is broken into lines by the marks of a quote or list. */
-function sameShape(place: StatementPlace, { source }: Remembered): boolean {
-  return !place.key.includes('\n') || blockLineCount(place.node) === source.lines.length - 1;
-}
-
-function blockLineCount(node: SyntaxNode): number {
-  return node.getChild('Block')?.getChildren('Line').length ?? 0;
 }
 
 function read({ place, source, introductions, before }: Seen, context: NameContext): Remembered {

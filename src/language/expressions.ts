@@ -31,19 +31,17 @@ export function readSlot(reader: LineReader): Expression {
   return reader.nested(() => readSum(reader, true));
 }
 
-function limitChain(reader: LineReader, length: number): void {
-  if (length > LONGEST_CHAIN)
-    reader.fail(
-      reader.previous,
-      'too-deep',
-      `A chain of more than ${LONGEST_CHAIN} of these cannot be read.`,
-    );
+/** Whether a chain may go on; it fails where the chain has become too long. */
+function isShortChain(reader: LineReader, length: number): boolean {
+  if (length < LONGEST_CHAIN) return true;
+  const what = `This chain has more than ${LONGEST_CHAIN} links`;
+  reader.fail(reader.previous, 'too-deep', `${what}; give its parts names of their own.`);
+  return false;
 }
 
 function readIn(reader: LineReader, slot: boolean): Expression {
   let of = readWith(reader, slot);
-  for (let length = 0; reader.accept('in'); length++) {
-    limitChain(reader, length);
+  for (let length = 0; reader.accept('in') && isShortChain(reader, length); length++) {
     const unit = readUnit(reader, '`in` needs a unit');
     of = { kind: 'in-unit', span: reader.spanFrom(of.span.from), of, ...unit };
   }
@@ -52,8 +50,7 @@ function readIn(reader: LineReader, slot: boolean): Expression {
 
 function readWith(reader: LineReader, slot: boolean): Expression {
   let of = readOr(reader, slot);
-  for (let length = 0; reader.accept('with'); length++) {
-    limitChain(reader, length);
+  for (let length = 0; reader.accept('with') && isShortChain(reader, length); length++) {
     const replacements = readReplacements(reader);
     of = { kind: 'with', span: reader.spanFrom(of.span.from), of, replacements };
   }
@@ -288,10 +285,8 @@ function readPostfix(reader: LineReader): Expression {
   const isBracket = reader.isAt('(');
   const from = reader.peek()?.from ?? reader.previous.to;
   let e = readAtom(reader);
-  for (let length = 0; isMemberDot(reader); length++) {
-    limitChain(reader, length);
+  for (let length = 0; isMemberDot(reader) && isShortChain(reader, length); length++)
     e = readMember(reader, e, from);
-  }
   refuseLooseBracket(reader);
   return readDerivative(reader, e, isBracket && e.kind !== 'member', from);
 }

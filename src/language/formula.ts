@@ -1,4 +1,4 @@
-import type { Problem } from '../base/index.ts';
+import { errorAt, type Problem } from '../base/index.ts';
 import type { Expression } from './ast.ts';
 import { readWholeFormula } from './loop-statements.ts';
 import { LineReader, WORKSHEET_SCOPE } from './reader.ts';
@@ -26,6 +26,13 @@ export function parseFormula(
   const tokens = tokenLines(loopParser.parse(text).topNode, null, text, 0, 0).flatMap(
     (line) => line.tokens,
   );
+  if (tokens.length === 0) {
+    const span = { from: 0, to: text.length };
+    return {
+      expression: null,
+      problems: [errorAt(span, 'incomplete', 'There is no formula here.')],
+    };
+  }
   const context = new NameContext(vocabulary, nameKinds);
   const reader = new LineReader(tokens, text, context, WORKSHEET_SCOPE, problems);
   const expression = readWholeFormula(reader);

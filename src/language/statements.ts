@@ -99,8 +99,10 @@ const CONSTANT_MEANINGS: Readonly<Record<string, string>> = {
 /** Reads a statement that begins with no word of the language. */
 function readUnnamed(reader: LineReader, base: Base): Statement {
   const first = reader.peek()!;
-  if (first.kind === 'keyword')
+  if (first.kind === 'keyword') {
     reader.fail(first, 'unexpected', `A statement cannot start with \`${first.text}\`.`);
+    return broken(base);
+  }
   const names = listedNames(reader.tokens);
   const verb = reader.tokens[2 * names.length - 1];
   const isIntroduction = verb?.kind === 'keyword' && ['is', 'are', 'has'].includes(verb.text);
