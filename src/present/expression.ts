@@ -120,8 +120,11 @@ function quotientLatex(factors: readonly Expression[], inverted: readonly boolea
   return `\\frac{${above.length === 0 ? '1' : sideLatex(above)}}{${sideLatex(below)}}`;
 }
 
+/** A sign on the first factor may stand in front of the whole side. */
 function sideLatex(factors: readonly Expression[]): string {
-  return factors.length === 1 ? expressionLatex(factors[0]) : joinFactors(factors.map(tightLatex));
+  const [first, ...rest] = factors;
+  const head = first.kind === 'negation' || rest.length === 0 ? expressionLatex : tightLatex;
+  return joinFactors([head(first), ...rest.map(tightLatex)]);
 }
 
 const RELATIONS = { '<': '<', '<=': '\\le ', '=': '=', '>=': '\\ge ', '>': '>' } as const;

@@ -114,19 +114,12 @@ it('Curves of different units have panels of their own under one time axis.', ()
 });
 
 it('A response that is 0 throughout is still drawn over a range.', () => {
-  const flat = {
-    ...response(),
-    curves: [
-      {
-        ...response().curves[1],
-        points: [
-          [0, 0],
-          [3, 0],
-        ],
-      },
-    ],
-  };
-  expect(figureLayout(flat as ResponseFigure, size).panels[0].y.domain).toEqual([-1, 1]);
+  const points = [
+    [0, 0],
+    [3, 0],
+  ] as const;
+  const flat = { ...response(), curves: [{ ...response().curves[1], points }] };
+  expect(figureLayout(flat, size).panels[0].y.domain).toEqual([-1, 1]);
 });
 
 it('A response table lists time, value and range; long data are thinned.', () => {
