@@ -1,0 +1,173 @@
+import {
+  coefficientsIn,
+  constantValue,
+  divRatios,
+  generatorsOf,
+  isConstantPolynomial,
+  isZeroPolynomial,
+  isZeroRatio,
+  laplace,
+  lcmPolynomials,
+  mulPolynomials,
+  mulRatios,
+  onePolynomial,
+  polynomialFromCoefficients,
+  ratioFromPolynomial,
+  ratioFromRational,
+  ratioOf,
+  rational,
+  signOfPolynomial,
+  subRatios,
+  symbol,
+  zeroPolynomial,
+  zeroRatio,
+} from '../algebra/index.ts';
+import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
+import { refuse } from '../base/index.ts';
+import type { Budget, Refusal } from '../base/index.ts';
+import { FALSE } from './conditions.ts';
+import type { SignOf } from '../algebra/index.ts';
+import { countRoots } from './root-count.ts';
+import { degreeInS, descendingInS, exactQuotient, functionsOfS } from './s-polynomial.ts';
+import { stabilityConditions } from './stability.ts';
+import type { RouthArray, RouthRow } from './values.ts';
+
+/** The array while it is being built. */
+interface Building {
+  readonly rows: RouthRow[];
+  readonly auxiliaries: Polynomial[];
+  readonly notes: string[];
+  readonly epsilon: Generator;
+}
+
+function everySecond(descending: readonly Polynomial[], from: number): Ratio[] {
+  return descending.filter((_, i) => i % 2 === from).map((c) => ratioFromPolynomial(c));
+}
+
+/** b₁ = a₂ − a₀ a₃/a₁ and so on: the row under two rows, without scaling. */
+function rowBelow(above: readonly Ratio[], row: readonly Ratio[], length: number): Ratio[] {
+  const quotient = divRatios(above[0], row[0]);
+  return Array.from({ length }, (_, i) =>
+    subRatios(above[i + 1] ?? zeroRatio, mulRatios(quotient, row[i + 1] ?? zeroRatio)),
+  );
+}
+
+/** The polynomial c₀ sᵐ + c₁ sᵐ⁻² + … of a row's entries, times the (positive) common denominator. */
+function auxiliaryPolynomial(row: RouthRow): Polynomial {
+  const denominator = row.entries.reduce((d, c) => lcmPolynomials(d, c.den), onePolynomial);
+  const coefficients = row.entries.map((c) =>
+    mulPolynomials(c.num, exactQuotient(denominator, c.den)),
+  );
+  const ascending = Array.from({ length: row.power + 1 }, () => zeroPolynomial);
+  coefficients.forEach((c, i) => (ascending[row.power - 2 * i] = c));
+  return polynomialFromCoefficients(ascending, laplace);
+}
+
+function replaceZeroRow(building: Building, power: number): RouthRow {
+  const above = building.rows[building.rows.length - 1];
+  const entries = above.entries
+    .map((c, i) => mulRatios(c, ratioFromRational(rational(above.power - 2 * i))))
+    .slice(0, Math.floor(power / 2) + 1);
+  building.auxiliaries.push(auxiliaryPolynomial(above));
+  building.notes.push(
+    `zero row at s^${power}: replaced by the derivative of the auxiliary polynomial of the row at s^${above.power}; ` +
+      'its roots lie symmetric to the origin, so the polynomial is not stable',
+  );
+  return { power, entries, special: 'zero row' };
+}
+
+function replaceFirst(building: Building, power: number, entries: readonly Ratio[]): RouthRow {
+  building.notes.push(
+    `zero first element at s^${power}: replaced by a small positive ${building.epsilon.name}; the polynomial is not stable`,
+  );
+  return {
+    power,
+    entries: [ratioOf(building.epsilon), ...entries.slice(1)],
+    special: 'zero first element',
+  };
+}
+
+/** A zero in the last row is left as it is: it only says that there is a root at the origin. */
+function settledRow(building: Building, power: number, entries: readonly Ratio[]): RouthRow {
+  if (power > 0 && entries.every(isZeroRatio)) return replaceZeroRow(building, power);
+  if (power > 0 && isZeroRatio(entries[0])) return replaceFirst(building, power, entries);
+  return { power, entries, special: null };
+}
+
+/** A symbol for ε that the polynomial does not use itself. */
+function freshEpsilon(p: Polynomial): Generator {
+  const used = new Set(generatorsOf(p).map((g) => g.name));
+  let name = 'ε';
+  while (used.has(name)) name += '_0';
+  return symbol(name);
+}
+
+function buildRows(p: Polynomial, budget?: Budget): Building {
+  const descending = descendingInS(p);
+  const degree = descending.length - 1;
+  const building: Building = { rows: [], auxiliaries: [], notes: [], epsilon: freshEpsilon(p) };
+  const { rows } = building;
+  rows.push({ power: degree, entries: everySecond(descending, 0), special: null });
+  if (degree > 0) rows.push(settledRow(building, degree - 1, everySecond(descending, 1)));
+  for (let power = degree - 2; power >= 0; power--) {
+    const [above, row] = rows.slice(-2);
+    const length = Math.floor(power / 2) + 1;
+    budget?.spend(length, 'the Routh array', `the row of s^${power}`);
+    rows.push(settledRow(building, power, rowBelow(above.entries, row.entries, length)));
+  }
+  return building;
+}
+
+function countsOf(p: Polynomial): RouthArray['counts'] {
+  const ascending = coefficientsIn(p, laplace);
+  return ascending.every(isConstantPolynomial) ? countRoots(ascending.map(constantValue)) : null;
+}
+
+function leadNotes(p: Polynomial, signOf: SignOf): string[] {
+  const [lead] = descendingInS(p);
+  const sign = signOfPolynomial(lead, signOf);
+  if (sign === 'negative') {
+    return ['the leading coefficient is negative: all of the first column must be negative'];
+  }
+  if (sign === 'positive') return [];
+  const power = degreeInS(p);
+  return [
+    `the sign of the coefficient of s^${power} is not known: the conditions ask for one sign throughout the first ` +
+      'column; where that coefficient vanishes the degree falls and they do not apply',
+  ];
+}
+
+function originNotes(p: Polynomial): string[] {
+  return isZeroPolynomial(coefficientsIn(p, laplace)[0])
+    ? ['the constant term is zero: a root at the origin']
+    : [];
+}
+
+/**
+ * The Routh array of a polynomial in s of any degree, with numbers or symbols, rows not scaled.
+ *
+ * A zero first element of a row that is not zero becomes ε, small and positive; a zero row becomes the derivative
+ * of the auxiliary polynomial above it. Conditions are those of `stabilityConditions`; `[false]` in either special
+ * case. Root counts do not rest on ε: they are exact, see `countRoots`.
+ * Refuses the zero polynomial and functions of s (dead time).
+ * Source: F. R. Gantmacher, The Theory of Matrices, vol. 2, Chelsea, 1959, ch. XV, §§ 3–4.
+ */
+export function routhArray(p: Polynomial, signOf: SignOf, budget?: Budget): RouthArray | Refusal {
+  if (isZeroPolynomial(p))
+    return refuse('zero-polynomial', 'the polynomial is zero: every s is a root');
+  if (functionsOfS(p).length > 0) {
+    return refuse(
+      'dead-time',
+      'a Routh array needs a polynomial in s; replace delay(Td) by rational_delay(Td, n)',
+    );
+  }
+  const { rows, auxiliaries, notes } = buildRows(p, budget);
+  const special = rows.some((row) => row.special !== null);
+  return Object.freeze({
+    rows: Object.freeze(rows),
+    auxiliaries: Object.freeze(auxiliaries),
+    conditions: special ? [FALSE] : stabilityConditions(p, signOf, budget),
+    counts: countsOf(p),
+    notes: [...leadNotes(p, signOf), ...notes, ...originNotes(p)],
+  });
+}
