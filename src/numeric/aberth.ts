@@ -1,6 +1,6 @@
 import type { Complex } from './complex.ts';
 import { divideComplex, magnitude, subtractComplex } from './complex.ts';
-import { DoubledComplex } from './double-double.ts';
+import { doubledHornerWithSlope, hornerWithSlope } from './horner.ts';
 
 /** Rounds of the iteration after which what is not settled is taken as it is; a few dozen are usual. */
 const MOST_ROUNDS = 300;
@@ -114,36 +114,6 @@ function logarithmicDerivative(
   for (const coefficient of coefficients) bound = bound * modulus + Math.abs(coefficient);
   const isRounding = magnitude(value) <= rounding * coefficients.length * bound;
   return isRounding ? null : divideComplex(slope, value);
-}
-
-/** p(z) and p'(z) by Horner's rule. */
-function hornerWithSlope(coefficients: Float64Array, z: Complex): [Complex, Complex] {
-  let [re, im, slopeRe, slopeIm] = [0, 0, 0, 0];
-  for (const coefficient of coefficients) {
-    const nextSlope = slopeRe * z.re - slopeIm * z.im + re;
-    slopeIm = slopeRe * z.im + slopeIm * z.re + im;
-    slopeRe = nextSlope;
-    const next = re * z.re - im * z.im + coefficient;
-    im = re * z.im + im * z.re;
-    re = next;
-  }
-  return [
-    { re, im },
-    { re: slopeRe, im: slopeIm },
-  ];
-}
-
-/** The same in doubled precision, rounded at the end. */
-function doubledHornerWithSlope(coefficients: Float64Array, z: Complex): [Complex, Complex] {
-  const value = new DoubledComplex();
-  const slope = new DoubledComplex();
-  for (const coefficient of coefficients) {
-    slope.times(z);
-    slope.add(value);
-    value.times(z);
-    value.re.addNumber(coefficient);
-  }
-  return [value.rounded(), slope.rounded()];
 }
 
 /** Σ 1/(z_i − z_j) over the other roots; roots that coincide do not repel. */

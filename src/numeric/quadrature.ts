@@ -54,10 +54,12 @@ export function integrate(
   tolerance: IntegralTolerance = {},
 ): Integral | Refusal {
   const { relative = 1e-10, absolute = 0, intervals = 2000 } = tolerance;
+  const isReached = ({ value, error }: Integral): boolean =>
+    Number.isFinite(value) && error <= Math.max(absolute, relative * Math.abs(value));
   const [mapped, low, high] = finiteForm(integrand, from, to);
   let pieces = [kronrodPiece(mapped, low, high)];
   let total = totalOf(pieces);
-  while (total.error > Math.max(absolute, relative * Math.abs(total.value))) {
+  while (!isReached(total)) {
     const worst = pieces.reduce((most, piece) => (piece.error > most.error ? piece : most));
     const middle = (worst.from + worst.to) / 2;
     if (pieces.length >= intervals || middle <= worst.from || middle >= worst.to) break;
@@ -68,7 +70,7 @@ export function integrate(
     pieces = [...pieces.filter((piece) => piece !== worst), ...halves];
     total = totalOf(pieces);
   }
-  return total.error <= Math.max(absolute, relative * Math.abs(total.value))
+  return isReached(total)
     ? total
     : refuse(
         'integral-unsettled',

@@ -1,5 +1,6 @@
 import type { Complex } from './complex.ts';
-import { addComplex, divideComplex, magnitude } from './complex.ts';
+import { addComplex, divideComplex, magnitude, subtractComplex } from './complex.ts';
+import { doubledHornerWithSlope, hornerWithSlope } from './horner.ts';
 
 /** Half the gap between 1 and the next double. */
 const ROUNDING = Number.EPSILON / 2;
@@ -11,31 +12,38 @@ const NEGLIGIBLE = 4 * Number.EPSILON;
  * value, repeated, and complex roots exact conjugate pairs.
  */
 export function settleRoots(coefficients: Float64Array, roots: readonly Complex[]): Complex[] {
-  const merged = mergeClusters(coefficients, roots, 1);
+  const merged = mergeClusters(coefficients, roots, WIDEST_REACH);
   return conjugatePairs(merged.map(snapToAxes));
 }
 
+/** Clusters are looked for from this part of a root's magnitude down to the other. */
+const WIDEST_REACH = 0.1;
+const NARROWEST_REACH = 1e-8;
+
 /**
- * Merges overlapping uncertainty discs (radius: what a relative change of the coefficients by their rounding moves a
- * simple root, times `reach`) into their centre, where that passes as a multiple root; else tries a shorter reach.
+ * Merges roots whose uncertainty discs overlap into their centre, where that passes as a multiple root; else it looks
+ * again within a shorter reach. A disc's radius is how far the rounding of the coefficients may move a simple root, which
+ * inside a cluster is far too much, and so at most `reach` times the root's magnitude.
  */
 function mergeClusters(
   coefficients: Float64Array,
   roots: readonly Complex[],
   reach: number,
 ): Complex[] {
-  const radii = roots.map((root) => reach * uncertainty(coefficients, root));
+  const radii = roots.map((root) =>
+    Math.min(reach * magnitude(root), uncertainty(coefficients, root)),
+  );
   return overlapping(roots, radii).flatMap((group) => {
     if (group.length === 1) return group;
     const centre = centreOf(coefficients, group);
     if (isMultipleRoot(coefficients, centre, group.length)) return group.map(() => centre);
-    return reach < 1e-6 ? group : mergeClusters(coefficients, group, reach / 10);
+    return reach < NARROWEST_REACH ? group : mergeClusters(coefficients, group, reach / 10);
   });
 }
 
 /** How far the rounding of the coefficients may move a simple root: n ε Σ|a_k||z|^k / |p'(z)|. */
 function uncertainty(coefficients: Float64Array, z: Complex): number {
-  const slope = taylorCoefficient(coefficients, z, 1);
+  const [, slope] = hornerWithSlope(coefficients, z);
   return (2 * coefficients.length * ROUNDING * termSizes(coefficients, z, 0)) / magnitude(slope);
 }
 
@@ -57,17 +65,12 @@ function overlapping(roots: readonly Complex[], radii: readonly number[]): Compl
 
 /** The root of p^(m − 1) by m close roots of p: it is simple, and so better known than they are. */
 function centreOf(coefficients: Float64Array, group: readonly Complex[]): Complex {
-  const multiplicity = group.length;
+  const derivative = binomialWeighted(coefficients, group.length - 1);
   const sum = group.reduce(addComplex);
-  let centre = { re: sum.re / multiplicity, im: sum.im / multiplicity };
+  let centre = { re: sum.re / group.length, im: sum.im / group.length };
   for (let round = 0; round < 3; round++) {
-    const value = taylorCoefficient(coefficients, centre, multiplicity - 1);
-    const slope = taylorCoefficient(coefficients, centre, multiplicity);
-    const step = divideComplex(value, slope);
-    centre = {
-      re: centre.re - step.re / multiplicity,
-      im: centre.im - step.im / multiplicity,
-    };
+    const [value, slope] = doubledHornerWithSlope(derivative, centre);
+    centre = subtractComplex(centre, divideComplex(value, slope));
   }
   return centre;
 }
@@ -75,23 +78,11 @@ function centreOf(coefficients: Float64Array, group: readonly Complex[]): Comple
 /** Whether p, p', … to the order before `multiplicity` vanish at z to within the rounding of the coefficients. */
 function isMultipleRoot(coefficients: Float64Array, z: Complex, multiplicity: number): boolean {
   for (let order = 0; order < multiplicity; order++) {
-    const value = taylorCoefficient(coefficients, z, order);
+    const [value] = hornerWithSlope(binomialWeighted(coefficients, order), z);
     const allowed = 4 * coefficients.length * ROUNDING * termSizes(coefficients, z, order);
     if (magnitude(value) > allowed) return false;
   }
   return true;
-}
-
-/** p^(order)(z)/order!, by Horner's rule with binomial weights. */
-function taylorCoefficient(coefficients: Float64Array, z: Complex, order: number): Complex {
-  let re = 0;
-  let im = 0;
-  for (const weighted of binomialWeighted(coefficients, order)) {
-    const next = re * z.re - im * z.im + weighted;
-    im = re * z.im + im * z.re;
-    re = next;
-  }
-  return { re, im };
 }
 
 /** The sum of the magnitudes of the terms of p^(order)(z)/order!. */
@@ -100,7 +91,7 @@ function termSizes(coefficients: Float64Array, z: Complex, order: number): numbe
   return binomialWeighted(coefficients, order).reduce((sum, a) => sum * modulus + Math.abs(a), 0);
 }
 
-/** Coefficients of p^(order)/order!, highest power first. */
+/** Coefficients of p^(order)/order!, highest power first: its value at z is the Taylor coefficient there. */
 function binomialWeighted(coefficients: Float64Array, order: number): Float64Array {
   const degree = coefficients.length - 1;
   return coefficients.slice(0, degree - order + 1).map((a, i) => a * binomial(degree - i, order));

@@ -18,5 +18,6 @@ export type { QuantityMeaning, SiQuantity } from './quantity.ts';
 export { customUnit, quantityToSI } from './quantity.ts';
 export type { ValueStyle } from './value-text.ts';
 export { formatNumber, formatValue, valueIn } from './value-text.ts';
+export { cycleFactor } from './frequency.ts';
 export { chooseUnit, coherentUnit } from './display-unit.ts';
 export { unitText, unitToLatex } from './unit-text.ts';

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import {
   chooseUnit,
   coherentUnit,
+  cycleFactor,
   dimensionless,
   dimensionOf,
   dimensionText,
@@ -136,6 +137,17 @@ describe('the coherent unit of a dimension', () => {
     expect(coherentUnit(dimensionless, { angle: 1 }).text).toBe('rad');
     expect(dimensionText(powDimension(dimensionOf([0, 1]), 3, 2))).toBe('m √m');
   });
+});
+
+it.each([
+  ['an angular frequency in Hz', 0, 'Hz', 1 / (2 * Math.PI)],
+  ['a frequency in rpm', 1, 'rpm', 2 * Math.PI],
+  ['a frequency in kHz', 1, 'kHz', 1],
+  ['a frequency in 1/s', 1, '1/s', 1],
+  ['an angular frequency in °/s', 0, '°/s', 1],
+  ['a density per Hz', 0, 'rad^2/Hz', 1],
+])('%s needs the right factor of 2π', (_, cycles, text, factor) => {
+  expect(cycleFactor(cycles, unit(text))).toBe(factor);
 });
 
 describe('a unit in LaTeX', () => {
