@@ -1,6 +1,7 @@
+import { invariant } from '../base/index.ts';
 import type { Complex } from './complex.ts';
 import { divideComplex, magnitude, subtractComplex } from './complex.ts';
-import { doubledHornerWithSlope, hornerWithSlope } from './horner.ts';
+import { doubledHornerWithSlope, hornerWithSlope, termSizes } from './horner.ts';
 
 /** Rounds of the iteration after which what is not settled is taken as it is; a few dozen are usual. */
 const MOST_ROUNDS = 300;
@@ -32,7 +33,19 @@ export function aberthRoots(coefficients: Float64Array): Complex[] {
       }
     }
   }
+  invariant(
+    roots.every((root) => isNearRoot(coefficients, reversed, root)),
+    `the roots of a polynomial of degree ${roots.length} did not settle`,
+  );
   return roots;
+}
+
+/** Whether p(z) is small against its terms: the last guard against an iteration that wandered off. */
+function isNearRoot(coefficients: Float64Array, reversed: Float64Array, z: Complex): boolean {
+  const [inside, at] =
+    magnitude(z) <= 1 ? [coefficients, z] : [reversed, divideComplex({ re: 1, im: 0 }, z)];
+  const [value] = hornerWithSlope(inside, at);
+  return magnitude(value) <= 1e-9 * termSizes(inside, magnitude(at));
 }
 
 /** Aberth's correction of one root; null where its value is all rounding. */
@@ -109,10 +122,8 @@ function logarithmicDerivative(
   { evaluate, rounding }: Precision,
 ): Complex | null {
   const [value, slope] = evaluate(coefficients, z);
-  const modulus = magnitude(z);
-  let bound = 0;
-  for (const coefficient of coefficients) bound = bound * modulus + Math.abs(coefficient);
-  const isRounding = magnitude(value) <= rounding * coefficients.length * bound;
+  const bound = rounding * coefficients.length * termSizes(coefficients, magnitude(z));
+  const isRounding = magnitude(value) <= bound;
   return isRounding ? null : divideComplex(slope, value);
 }
 

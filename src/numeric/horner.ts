@@ -30,3 +30,10 @@ export function doubledHornerWithSlope(coefficients: Float64Array, z: Complex): 
   }
   return [value.rounded(), slope.rounded()];
 }
+
+/** The sum of the magnitudes of a polynomial's terms where |z| = modulus. */
+export function termSizes(coefficients: Float64Array, modulus: number): number {
+  let sum = 0;
+  for (const coefficient of coefficients) sum = sum * modulus + Math.abs(coefficient);
+  return sum;
+}

@@ -1,5 +1,8 @@
-/** Room for the largest degree that region figures reach. */
-const scratch = new Float64Array(128);
+import { invariant } from '../base/index.ts';
+
+/** Far beyond the degree of any loop; one element more than the coefficients is needed. */
+const LARGEST_DEGREE = 200;
+const scratch = new Float64Array(LARGEST_DEGREE + 2);
 
 /** A first element within this many roundings of the terms it is the difference of counts as zero: on the boundary. */
 const NEAR_ZERO = 16 * Number.EPSILON;
@@ -14,6 +17,7 @@ const NEAR_ZERO = 16 * Number.EPSILON;
  * Source: F. R. Gantmacher, The Theory of Matrices, vol. 2, 1959, chapter XV, section 3 (Routh's scheme).
  */
 export function isHurwitz(coefficients: Float64Array, offset: number, degree: number): boolean {
+  invariant(degree <= LARGEST_DEGREE, `a Routh test of degree ${degree}`);
   for (let k = 0; k <= degree; k++) scratch[k] = coefficients[offset + k]!;
   return isScratchHurwitz(degree);
 }
@@ -29,6 +33,7 @@ export function hurwitzVerdicts(
   count: number,
 ): Uint8Array {
   const degree = coefficients.length - 1;
+  invariant(degree <= LARGEST_DEGREE, `a Routh test of degree ${degree}`);
   const columns = coefficients.map((column) =>
     typeof column === 'number' ? new Float64Array(count).fill(column) : column,
   );

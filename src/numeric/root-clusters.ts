@@ -1,6 +1,6 @@
 import type { Complex } from './complex.ts';
 import { addComplex, divideComplex, magnitude, subtractComplex } from './complex.ts';
-import { doubledHornerWithSlope, hornerWithSlope } from './horner.ts';
+import { doubledHornerWithSlope, hornerWithSlope, termSizes } from './horner.ts';
 
 /** Half the gap between 1 and the next double. */
 const ROUNDING = Number.EPSILON / 2;
@@ -44,7 +44,9 @@ function mergeClusters(
 /** How far the rounding of the coefficients may move a simple root: n ε Σ|a_k||z|^k / |p'(z)|. */
 function uncertainty(coefficients: Float64Array, z: Complex): number {
   const [, slope] = hornerWithSlope(coefficients, z);
-  return (2 * coefficients.length * ROUNDING * termSizes(coefficients, z, 0)) / magnitude(slope);
+  return (
+    (2 * coefficients.length * ROUNDING * termSizes(coefficients, magnitude(z))) / magnitude(slope)
+  );
 }
 
 /** Groups of roots whose discs overlap, directly or through others. */
@@ -78,17 +80,12 @@ function centreOf(coefficients: Float64Array, group: readonly Complex[]): Comple
 /** Whether p, p', … to the order before `multiplicity` vanish at z to within the rounding of the coefficients. */
 function isMultipleRoot(coefficients: Float64Array, z: Complex, multiplicity: number): boolean {
   for (let order = 0; order < multiplicity; order++) {
-    const [value] = hornerWithSlope(binomialWeighted(coefficients, order), z);
-    const allowed = 4 * coefficients.length * ROUNDING * termSizes(coefficients, z, order);
+    const derivative = binomialWeighted(coefficients, order);
+    const [value] = hornerWithSlope(derivative, z);
+    const allowed = 4 * coefficients.length * ROUNDING * termSizes(derivative, magnitude(z));
     if (magnitude(value) > allowed) return false;
   }
   return true;
-}
-
-/** The sum of the magnitudes of the terms of p^(order)(z)/order!. */
-function termSizes(coefficients: Float64Array, z: Complex, order: number): number {
-  const modulus = magnitude(z);
-  return binomialWeighted(coefficients, order).reduce((sum, a) => sum * modulus + Math.abs(a), 0);
 }
 
 /** Coefficients of p^(order)/order!, highest power first: its value at z is the Taylor coefficient there. */
