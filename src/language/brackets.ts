@@ -1,4 +1,4 @@
-import { canonicalName } from './names.ts';
+import { canonicalName, CONSTANT_MEANINGS } from './names.ts';
 import type { LineReader } from './reader.ts';
 import type { Token } from './tokens.ts';
 
@@ -17,14 +17,13 @@ export function bracketUse(reader: LineReader, name: Token): BracketUse {
   const kind = reader.kindOf(canonical);
   if (kind === 'loop') return 'call';
   if (kind === null && isFunction(reader, name)) return 'call';
+  if (kind === null && contentOf(reader).some((token) => token.text === '->')) return 'call';
   if (isSpaced || kind === 'case') return 'multiply';
   if (kind === 'definition' || kind === 'signal') return 'evaluate';
   if (kind !== null) return 'no-value';
-  return isConstant(canonical) || NOT_A_FUNCTION_NAME.test(name.text) ? 'multiply' : 'call';
-}
-
-function isConstant(name: string): boolean {
-  return name === 's' || name === 't' || name === 'j' || name === 'pi';
+  return CONSTANT_MEANINGS.has(canonical) || NOT_A_FUNCTION_NAME.test(name.text)
+    ? 'multiply'
+    : 'call';
 }
 
 /** Whether a name is a worksheet function, in the spelling typed or in the canonical one. */

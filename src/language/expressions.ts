@@ -2,13 +2,22 @@ import { coverSpans, type Span } from '../base/index.ts';
 import type { Arrow, Expression, Name, RelationOperator, Replacement } from './ast.ts';
 import { bracketContent, bracketUse, type BracketUse } from './brackets.ts';
 import { insertion, replacement } from './fixes.ts';
-import { canonicalName } from './names.ts';
-import { readBracketedUnit, readQuantity, readSlotQuantity, readUnit } from './quantities.ts';
+import { canonicalName, CONSTANT_MEANINGS } from './names.ts';
+import {
+  readBracketedUnit,
+  readQuantity,
+  readSlotQuantity,
+  readUnit,
+  refuseUnitInFormula,
+} from './quantities.ts';
 import type { LineReader } from './reader.ts';
 import { solidusFixes, solidusMessage } from './solidus.ts';
 import type { Token } from './tokens.ts';
 
 const RELATIONS: ReadonlySet<string> = new Set(['<', '<=', '=', '>=', '>']);
+
+/** The functions that list names which nothing else needs to introduce. */
+const LISTS_UNKNOWNS: ReadonlySet<string> = new Set(['solve', 'match']);
 
 /** Chains of `.`, `with` or `in` longer than this are refused, since each link nests the one before. */
 const LONGEST_CHAIN = 20;
@@ -93,6 +102,15 @@ export function readName(reader: LineReader, purpose: string): Name {
   }
   const { span } = reader.failUnexpected(purpose);
   return { kind: 'name', span, name: '' };
+}
+
+/** Reads a name that a statement introduces, which must not be one of the language's own. */
+export function readNewName(reader: LineReader, purpose: string): Name {
+  const token = reader.peek();
+  const meaning = token?.kind === 'name' ? CONSTANT_MEANINGS.get(canonicalName(token.text)) : null;
+  if (token && meaning)
+    reader.fail(token, 'reserved-name', `\`${token.text}\` is ${meaning}; choose another name.`);
+  return readName(reader, purpose);
 }
 
 function nameOf(token: Token): Name {
@@ -214,16 +232,24 @@ function numberOf(token: Token): Expression {
 /** Reads juxtaposed factors onto those that were read before. */
 function readRun(reader: LineReader, factors: Expression[]): Expression[] {
   if (factors.length === 0) factors.push(readSigned(reader));
-  while (startsFactor(reader.peek())) {
+  for (;;) {
+    if (isOwnNumber(reader, factors)) refuseUnitInFormula(reader);
+    if (!startsFactor(reader.peek())) return factors;
     refuseNumberAfterNumber(reader);
     factors.push(readPower(reader));
   }
-  return factors;
+}
+
+/** Whether a number was read last that is a factor by itself, not an exponent and not a divisor. */
+function isOwnNumber(reader: LineReader, factors: readonly Expression[]): boolean {
+  const last = factors.at(-1);
+  const number = last?.kind === 'negation' ? last.of : last;
+  return number?.kind === 'number' && reader.tokens[reader.position - 2]?.text !== '/';
 }
 
 function startsFactor(token: Token | undefined): boolean {
   if (!token) return false;
-  if (token.kind === 'name' || token.kind === 'number' || token.kind === 'text') return true;
+  if (token.kind === 'name' || token.kind === 'number') return true;
   return token.kind === 'symbol' && token.text === '(';
 }
 
@@ -353,8 +379,11 @@ function whyNoDerivative(reader: LineReader, of: Expression, isBracket: boolean)
   if (of.kind !== 'name')
     return `\`'\` is the time derivative of a signal, and \`${shown}\` is not one.`;
   const kind = reader.kindOf(of.name);
-  const isConstant = ['s', 't', 'j', 'pi'].includes(of.name);
-  if (!isConstant && (kind === null || kind === 'signal' || kind === 'definition')) return null;
+  if (
+    !CONSTANT_MEANINGS.has(of.name) &&
+    (kind === null || kind === 'signal' || kind === 'definition')
+  )
+    return null;
   const what =
     kind === null
       ? 'a constant of the language'
@@ -407,7 +436,7 @@ function readBracket(reader: LineReader): Expression {
       'This bracket follows no function, so it holds one formula, not a list.',
     );
   closeBracket(reader, open);
-  return e;
+  return { ...e, span: reader.spanFrom(open.from) };
 }
 
 function closeBracket(reader: LineReader, open: Token): void {
@@ -473,12 +502,13 @@ function refuseEvaluation(
 
 function readCall(reader: LineReader, token: Token): Expression {
   const open = reader.take();
-  const { limitsAreSlots } = reader;
+  const { limitsAreSlots, namesMayBeUnknown } = reader;
   reader.limitsAreSlots = false;
+  reader.namesMayBeUnknown ||= LISTS_UNKNOWNS.has(token.text);
   const kind = reader.kindOf(canonicalName(token.text));
   const callee = kind === null ? token.text : canonicalName(token.text);
   const args = reader.isAt(')') ? [] : readArguments(reader, callee);
-  reader.limitsAreSlots = limitsAreSlots;
+  Object.assign(reader, { limitsAreSlots, namesMayBeUnknown });
   closeBracket(reader, open);
   const calleeSpan = { from: token.from, to: token.to };
   return { kind: 'call', span: reader.spanFrom(token.from), callee, calleeSpan, args };

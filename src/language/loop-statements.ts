@@ -8,13 +8,14 @@ import type {
   SourceTerm,
 } from './ast.ts';
 import { readTolerance } from './assumptions.ts';
-import { readFormula, readName, readSlot, readSum, readTerm } from './expressions.ts';
+import { readFormula, readName, readNewName, readSlot, readSum, readTerm } from './expressions.ts';
 import { replacement } from './fixes.ts';
-import { canonicalName } from './names.ts';
+import { canonicalName, CONSTANT_NAMES } from './names.ts';
 import { readQuantity } from './quantities.ts';
 import { LineReader, type Scope } from './reader.ts';
 import type { StatementSource } from './statement-source.ts';
-import type { TokenLine } from './tokens.ts';
+import { isExplainedStray } from './strays.ts';
+import type { Token, TokenLine } from './tokens.ts';
 import type { NameContext } from './vocabulary.ts';
 
 type Equation = LoopStatement['equations'][number];
@@ -56,12 +57,36 @@ function readLines<Item>(
 export function expectLineEnd(reader: LineReader): void {
   const token = reader.peek();
   if (!token) return;
-  const { text } = token;
-  if (text === ')' || text === ']')
-    reader.fail(token, 'unopened-bracket', `\`${text}\` closes a bracket that was not opened.`, [
-      replacement(token, '', `remove \`${text}\``),
-    ]);
-  else reader.failUnexpected('The line could end here');
+  if (isExplainedStray(token)) reader.failUnexpected('The line ends here');
+  else if (token.text === ')' || token.text === ']')
+    reader.fail(
+      token,
+      'unopened-bracket',
+      `\`${token.text}\` closes a bracket that was not opened.`,
+      [replacement(token, '', `remove \`${token.text}\``)],
+    );
+  else refuseLeftover(reader, token);
+}
+
+/** Says why a line does not go on with a token, and that an indented line continues the one above. */
+export function refuseLeftover(reader: LineReader, token: Token): void {
+  reader.fail(token, 'unexpected', `${leftoverReason(token)}${continuationHint(reader, token)}.`);
+}
+
+function leftoverReason({ text, kind }: Token): string {
+  if (text === ',') return 'A comma stands only between arguments or in a list';
+  if (text === '->')
+    return '`->` stands only in the bracket after the name of a loop, as in `az(w -> e)`';
+  if (text === '=') return 'An equation or definition has one `=`; a condition goes in brackets';
+  if (kind === 'keyword') return `The word \`${text}\` is not expected here`;
+  return `\`${text}\` is not expected here`;
+}
+
+/** A line that was meant as a statement, but is indented, is read on with the line above. */
+function continuationHint(reader: LineReader, token: Token): string {
+  const first = reader.tokens[0]!;
+  const isBelow = reader.text({ from: first.from, to: token.from }).includes('\n');
+  return isBelow ? ' (a line that is indented deeper continues the line above it)' : '';
 }
 
 function lineSpan(line: TokenLine): Span {
@@ -69,9 +94,13 @@ function lineSpan(line: TokenLine): Span {
 }
 
 /** Reads names separated by commas. */
-export function readNames(reader: LineReader, purpose: string): readonly Name[] {
-  const names = [readName(reader, purpose)];
-  while (reader.accept(',')) names.push(readName(reader, purpose));
+export function readNames(
+  reader: LineReader,
+  purpose: string,
+  readOne: typeof readName = readName,
+): readonly Name[] {
+  const names = [readOne(reader, purpose)];
+  while (reader.accept(',')) names.push(readOne(reader, purpose));
   return names;
 }
 
@@ -81,14 +110,14 @@ export type LoopHeader = Pick<LoopStatement, 'name' | 'nameSpan' | 'inputs'>;
 /** Reads `loop az driven by r, w`. */
 export function readLoopHeader(reader: LineReader): LoopHeader {
   reader.take();
-  const { name, span } = readName(reader, '`loop` needs a name');
+  const { name, span } = readNewName(reader, '`loop` needs a name');
   const inputs = reader.accept('driven') ? readInputs(reader) : [];
   return { name, nameSpan: span, inputs: inputs.filter((input) => input.name !== '') };
 }
 
 function readInputs(reader: LineReader): readonly Name[] {
   reader.expect('by', '`driven`');
-  return readNames(reader, '`driven by` needs the names of the inputs');
+  return readNames(reader, '`driven by` needs the names of the inputs', readNewName);
 }
 
 /** Reads the equations and `uses` lines of a loop. */
@@ -107,26 +136,36 @@ export function readLoopBlock(
   return { uses, equations };
 }
 
-/** Inputs, and the names that stand in an equation otherwise than directly before a bracket. */
+/** Inputs, and the names that stand in an equation otherwise than directly before a bracket or about a `.`. */
 function signalsOf(block: BlockReading, header: LoopHeader): ReadonlySet<string> {
   const signals = new Set(header.inputs.map((input) => input.name));
-  for (const { tokens } of block.source.lines.slice(1))
-    for (const [k, token] of tokens.entries()) {
-      const next = tokens[k + 1];
-      const mayBeFunction = next?.text === '(' && isFunctionOrTight(block, token.text, next.spaced);
-      if (token.kind === 'name' && !mayBeFunction) signals.add(canonicalName(token.text));
-    }
+  for (const { tokens } of block.source.lines.slice(1)) {
+    if (tokens[0]!.text === 'uses') continue;
+    for (const [k, token] of tokens.entries())
+      if (isSignalMention(block, token, tokens[k - 1], tokens[k + 1]))
+        signals.add(canonicalName(token.text));
+  }
+  for (const constant of CONSTANT_NAMES) signals.delete(constant);
   return signals;
 }
 
-function isFunctionOrTight(block: BlockReading, name: string, isSpaced: boolean): boolean {
-  return !isSpaced || block.context.vocabulary.functions.has(name);
+function isSignalMention(
+  { context }: BlockReading,
+  token: Token,
+  before: Token | undefined,
+  next: Token | undefined,
+): boolean {
+  if (token.kind !== 'name' || before?.text === '.' || next?.text === '.') return false;
+  if (next?.text !== '(') return true;
+  return next.spaced && !context.vocabulary.functions.has(token.text);
 }
 
 function readUse(reader: LineReader, line: TokenLine): Use {
   reader.take();
   const loop = readName(reader, '`uses` needs the name of a loop');
-  const prefix = reader.accept('as') ? readName(reader, '`as` needs a name for its signals') : null;
+  const prefix = reader.accept('as')
+    ? readNewName(reader, '`as` needs a name for its signals')
+    : null;
   return { span: lineSpan(line), loop, prefix };
 }
 
@@ -153,7 +192,7 @@ export type CaseHeader = Pick<CaseStatement, 'name' | 'nameSpan' | 'loop'>;
 /** Reads `case storm of az`. */
 export function readCaseHeader(reader: LineReader): CaseHeader {
   reader.take();
-  const { name, span } = readName(reader, '`case` needs a name');
+  const { name, span } = readNewName(reader, '`case` needs a name');
   reader.expect('of', 'A case, `case storm of az`,');
   const loop = readName(reader, '`of` needs the name of a loop');
   return { name, nameSpan: span, loop };
@@ -240,7 +279,9 @@ function readStart(reader: LineReader, line: TokenLine, { signal, order }: Signa
 /** Reads `points empty, half, full`. */
 export function readPointsHeader(reader: LineReader): Pick<PointsStatement, 'points'> {
   reader.take();
-  return { points: readNames(reader, '`points` needs the names of the operating points') };
+  return {
+    points: readNames(reader, '`points` needs the names of the operating points', readNewName),
+  };
 }
 
 /** Reads the assumptions of operating points, which have one value for each. */
@@ -255,7 +296,10 @@ export function readPointsBlock(
 }
 
 function readPoint(reader: LineReader, line: TokenLine, points: number): PointAssumption {
-  const { name, span } = readName(reader, 'A line of `points`, `m is 12, 30, 48 kg`, needs a name');
+  const { name, span } = readNewName(
+    reader,
+    'A line of `points`, `m is 12, 30, 48 kg`, needs a name',
+  );
   reader.expect('is', 'A line of `points`, `m is 12, 30, 48 kg`,');
   const values = [readQuantity(reader, `\`${name} is\``)];
   while (reader.accept(',')) values.push(readQuantity(reader, 'A value after `,`'));

@@ -58,8 +58,16 @@ export const KEYWORDS: readonly string[] = (
   'where draw titled explain tabulate and or not unit'
 ).split(' ');
 
-/** The symbols with a fixed meaning: Laplace variable, time, imaginary unit, and the ratio of circumference to diameter. */
-export const CONSTANT_NAMES: readonly string[] = ['s', 't', 'j', 'pi'];
+/** What the symbols with a fixed meaning are. */
+export const CONSTANT_MEANINGS: ReadonlyMap<string, string> = new Map([
+  ['s', 'the Laplace variable'],
+  ['t', 'time'],
+  ['j', 'the imaginary unit'],
+  ['pi', 'the number π'],
+]);
+
+/** The symbols with a fixed meaning. */
+export const CONSTANT_NAMES: readonly string[] = [...CONSTANT_MEANINGS.keys()];
 
 /** Every reserved name, in its canonical form. */
 export const RESERVED: ReadonlySet<string> = new Set([...CONSTANT_NAMES, ...KEYWORDS]);

@@ -1,7 +1,7 @@
 import type { Span } from '../base/index.ts';
 import type { Expression, Quantity } from './ast.ts';
 import { bracketing, insertion, replacement } from './fixes.ts';
-import { canonicalName } from './names.ts';
+import { canonicalName, CONSTANT_MEANINGS } from './names.ts';
 import type { LineReader } from './reader.ts';
 import { solidusFixes, solidusMessage } from './solidus.ts';
 import type { Token } from './tokens.ts';
@@ -67,6 +67,7 @@ export function readQuantity(reader: LineReader, purpose: string): Quantity {
   const scan = scanUnit(reader.tokens, reader.position);
   const unit = scan ? takeUnit(reader, scan) : { unit: '', unitSpan: { from: end, to: end } };
   refuseSplitNumber(reader);
+  refuseUnitSlip(reader);
   return { kind: 'quantity', span: reader.spanFrom(from), text: number.text, ...unit };
 }
 
@@ -83,6 +84,53 @@ function refuseSplitNumber(reader: LineReader): void {
   reader.fail(span, 'split-number', `\`${reader.text(span)}\` is not one number: ${reason}.`, [
     replacement(span, whole),
   ]);
+}
+
+/** `5 kg*m` and `5 /s` look like units, but are not written so. */
+function refuseUnitSlip(reader: LineReader): void {
+  const [sign, symbol] = [reader.peek(), reader.peek(1)];
+  const isUnit = symbol?.kind === 'name' && reader.context.isUnit(symbol.text);
+  if (!sign || !isUnit) return;
+  if (reader.isAt('*'))
+    reader.fail(sign, 'unit-form', 'In a unit a space or `·` multiplies, not `*`.', [
+      replacement(sign, ' ', 'write a space'),
+    ]);
+  if (reader.isAt('/') && reader.previous.kind === 'number')
+    reader.fail(sign, 'unit-form', 'A unit that only divides has 1 before its solidus.', [
+      { title: `write \`1/${symbol.text}\``, edits: [insertion(sign.from, '1')] },
+    ]);
+}
+
+/**
+ * After a number in a formula: a unit without its square brackets. Symbols that are names here are not taken for units,
+ * nor is anything in a loop, where every name is a signal.
+ */
+export function refuseUnitInFormula(reader: LineReader): void {
+  if (reader.previous.kind !== 'number' || reader.scope.part === 'loop') return;
+  const scan = scanUnit(reader.tokens, reader.position);
+  if (!scan?.symbols.length || !scan.symbols.every((token) => isOnlyUnit(reader, token))) return;
+  const number = reader.previous;
+  const unit = { from: reader.peek()!.from, to: reader.tokens[scan.end - 1]!.to };
+  const [shown, bracketed] = [reader.text(number), `[${reader.text(unit)}]`];
+  reader.position = scan.end;
+  reader.refuse(
+    unit,
+    'unit-in-formula',
+    `In a formula a unit stands in square brackets after its number: \`${shown} ${bracketed}\`.`,
+    [
+      {
+        title: `write \`${shown} ${bracketed}\``,
+        edits: [insertion(unit.from, '['), insertion(unit.to, ']')],
+      },
+    ],
+  );
+}
+
+function isOnlyUnit(reader: LineReader, token: Token): boolean {
+  if (!reader.context.isUnit(token.text)) return false;
+  if (token.kind === 'unit-sign') return true;
+  const name = canonicalName(token.text);
+  return !CONSTANT_MEANINGS.has(name) && !reader.namesMayBeUnknown && !reader.kindOf(name);
 }
 
 /** Whether a quantity slot ends at a token: at an operator, a comma, a keyword, a closing bracket, the line's end. */

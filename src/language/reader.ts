@@ -23,6 +23,8 @@ export class LineReader {
   position = 0;
   /** Whether what stands on the right of a relation is a quantity slot, as in `require` and `where`. */
   limitsAreSlots = false;
+  /** Whether names that nothing introduces may stand here: the unknowns of `solve` and `match`. */
+  namesMayBeUnknown = false;
   private depth = 0;
   private hasFailed = false;
   private hasErrors = false;

@@ -1,11 +1,12 @@
 import { warningAt, type Problem, type Span } from '../base/index.ts';
-import type { Sign, Statement } from './ast.ts';
+import type { Expression, Sign, Statement } from './ast.ts';
 import { readBounds, readNominal, readTolerance } from './assumptions.ts';
-import { readFormula, readName } from './expressions.ts';
+import { readFormula, readName, readNewName } from './expressions.ts';
 import { readFigure, readRequirement, readTable } from './figures.ts';
 import { replacement } from './fixes.ts';
 import {
   expectLineEnd,
+  refuseLeftover,
   readCaseBlock,
   readCaseHeader,
   readLoopBlock,
@@ -16,7 +17,7 @@ import {
   readWholeFormula,
   type BlockReading,
 } from './loop-statements.ts';
-import { canonicalName, CONSTANT_NAMES, isReserved } from './names.ts';
+import { canonicalName, CONSTANT_MEANINGS, isReserved } from './names.ts';
 import { quantityInFormula, readQuantity, readUnit } from './quantities.ts';
 import { LineReader, WORKSHEET_SCOPE } from './reader.ts';
 import {
@@ -56,9 +57,18 @@ export function readStatement(source: StatementSource, context: NameContext): Re
   const base: Base = { span: { from: 0, to: last.to }, comment: head.comment };
   const reader = new LineReader(head.tokens, source.text, context, WORKSHEET_SCOPE, problems);
   const node = readByFirstWord(reader, base, block);
-  if (reader.isSound || keepsItsBlock(node)) return { node, problems };
+  if (reader.isSound || keepsItsBlock(node)) return frozen({ node, problems });
   const name = introductionsOf(source)[0]?.name ?? null;
-  return { node: { kind: 'broken', ...base, name }, problems };
+  return frozen({ node: { kind: 'broken', ...base, name }, problems });
+}
+
+/** Freezes a value of plain objects and arrays, all the way down. */
+function frozen<Value>(value: Value): Value {
+  if (typeof value === 'object' && value !== null && !Object.isFrozen(value)) {
+    Object.freeze(value);
+    for (const part of Object.values(value)) frozen(part);
+  }
+  return value;
 }
 
 /** A block whose own line is broken still gives its name and its readable lines. */
@@ -82,25 +92,24 @@ function broken(base: Base): Statement {
 
 function failReserved(reader: LineReader, base: Base): Statement {
   const token = reader.peek()!;
-  const what = CONSTANT_NAMES.includes(canonicalName(token.text))
-    ? CONSTANT_MEANINGS[canonicalName(token.text)]!
-    : 'a word of the language';
+  const what = CONSTANT_MEANINGS.get(canonicalName(token.text)) ?? 'a word of the language';
   reader.fail(token, 'reserved-name', `\`${token.text}\` is ${what}; choose another name.`);
   return broken(base);
 }
-
-const CONSTANT_MEANINGS: Readonly<Record<string, string>> = {
-  s: 'the Laplace variable',
-  t: 'time',
-  j: 'the imaginary unit',
-  pi: 'the number π',
-};
 
 /** Reads a statement that begins with no word of the language. */
 function readUnnamed(reader: LineReader, base: Base): Statement {
   const first = reader.peek()!;
   if (first.kind === 'keyword') {
     reader.fail(first, 'unexpected', `A statement cannot start with \`${first.text}\`.`);
+    return broken(base);
+  }
+  if (first.text === ')' || first.text === ']') {
+    reader.fail(
+      first,
+      'unopened-bracket',
+      `\`${first.text}\` closes no bracket of this statement: lines that continue a statement are indented deeper.`,
+    );
     return broken(base);
   }
   const names = listedNames(reader.tokens);
@@ -122,7 +131,16 @@ function readDefinition(reader: LineReader, base: Base): Statement {
   const equals = reader.take();
   warnOfUnit(reader, equals);
   const formula = readWholeFormula(reader);
+  refuseSecondEquals(reader, formula);
   return { kind: 'definition', ...base, name, nameSpan: span, formula };
+}
+
+/** `x = a = b` is a slip, or two statements of which the second is indented; `x = (a = b)` is a condition. */
+function refuseSecondEquals(reader: LineReader, formula: Expression): void {
+  if (formula.kind !== 'relation' || !formula.operators.includes('=')) return;
+  const isBracketed = formula.span.from < formula.sides[0]!.span.from;
+  const second = reader.tokens.filter((token) => token.text === '=')[1];
+  if (!isBracketed && second) refuseLeftover(reader, second);
 }
 
 /** `Td = 2 s` is twice the Laplace variable, which is hardly ever meant. */
@@ -136,7 +154,9 @@ function warnOfUnit(reader: LineReader, equals: Span): void {
   const span = { from: reader.peek()!.from, to: reader.tokens.at(-1)!.to };
   const fixes = [replacement(equals, 'is', `write \`${given}\``)];
   const message = unitInFormulaMessage(text, stray.text, given);
-  const isFormula = symbols.every((token) => token.kind === 'name');
+  const isFormula = symbols.every(
+    (token) => CONSTANT_MEANINGS.has(token.text) || reader.kindOf(canonicalName(token.text)),
+  );
   if (isFormula) reader.problems.push(warningAt(span, 'unit-in-formula', message, fixes));
   else reader.fail(span, 'unit-in-formula', message, fixes);
 }
@@ -146,6 +166,8 @@ function unitInFormulaMessage(text: string, unit: string, given: string): string
     const multiple = text === '2 s' ? 'twice' : `${parseFloat(text)} times`;
     return `\`${text}\` is ${multiple} the Laplace variable; for seconds write \`${given}\`.`;
   }
+  if (!/\p{L}/u.test(unit))
+    return `A formula takes no bare unit; for the quantity write \`${given}\`.`;
   return `In a formula \`${unit}\` is a name, not a unit; for the quantity write \`${given}\`.`;
 }
 
@@ -195,14 +217,14 @@ const STATEMENTS: Readers = {
   unit: (reader, base) => {
     reader.take();
     const token = reader.peek();
-    const { span } = readName(reader, '`unit` needs a name');
+    const { span } = readNewName(reader, '`unit` needs a name');
     reader.expect('is', 'A unit, `unit count is 1.2 µrad`,');
     const value = readQuantity(reader, 'A unit');
     return { kind: 'unit', ...base, name: token?.text ?? '', nameSpan: span, value };
   },
   tune: (reader, base) => {
     reader.take();
-    const { name, span } = readName(reader, '`tune` needs the name of a gain');
+    const { name, span } = readNewName(reader, '`tune` needs the name of a gain');
     reader.expect('from', 'A gain to be tuned, `tune Kp from 1 to 20`,');
     return { kind: 'tune', ...base, name, nameSpan: span, ...readBounds(reader) };
   },

@@ -59,6 +59,6 @@ tabulate e_ss for Kp from 1 to 2, 12 steps
 explain e_ss with (Kp is 2 m^2/s, Ki is 0)
 limit(s C as s to 0)
 broken = (1 +
-fine = 2 [m] theta_0^-2 "text"
+fine = 2 [m] theta_0^-2
 \`\`\`
 `;
