@@ -1,27 +1,21 @@
 import {
   coefficientsIn,
-  constantPolynomial,
-  contentOf,
-  degreeIn,
   dependsOnLaplace,
-  divideExactly,
-  factorPolynomial,
-  generatorPolynomial,
   generatorsOf,
+  isOnePolynomial,
   isZeroPolynomial,
   laplace,
-  mulPolynomials,
-  negPolynomial,
-  powPolynomial,
+  mulRatios,
+  ratioFromRational,
+  rational,
   termsOf,
   type Generator,
   type Polynomial,
   type Ratio,
 } from '../algebra/index.ts';
-import { Budget, BudgetExceeded, invariant } from '../base/index.ts';
-import { writeNumber } from './exact-number.ts';
+import { decimalOver, isDecimalOver, writeNumber } from './exact-number.ts';
+import { inFactors, mainOf, withoutContent, type Factored } from './factored.ts';
 import {
-  ONE,
   ZERO,
   fractionOf,
   productOf,
@@ -35,28 +29,33 @@ import {
 import { textOf } from './written-text.ts';
 import { compareFactors, type Layout } from './writing.ts';
 
-/**
- * A polynomial as sign · number · monomial · sums, the parts in which it is written. No sum has a common factor that
- * is a number or a monomial, and none begins with a minus where turning its sign avoids that.
- */
-interface Factored {
-  readonly negative: boolean;
-  readonly number: bigint;
-  readonly monomial: ReadonlyMap<Generator, number>;
-  readonly sums: readonly { readonly polynomial: Polynomial; readonly multiplicity: number }[];
-}
-
-/** Larger polynomials, and searches dearer than this, are written without looking for factors. */
-const MOST_TERMS_TO_FACTOR = 60;
-const FACTOR_BUDGET = 300_000;
+/** Over smaller numbers fractions are read more easily than decimals: `3 b/(4 J)`. */
+const SMALLEST_DIVISOR = 10n;
 
 /**
  * The written form of a rational function: sign, then one fraction, each side in factors where that is shorter and
- * otherwise collected by descending powers of the main variable.
+ * otherwise collected by descending powers of the main variable. Of the ways to write its numbers (whole, or in
+ * decimals over a common divisor) the shortest is taken.
  */
 export function arrangeRatio(r: Ratio, layout: Layout): Written {
   if (isZeroPolynomial(r.num)) return ZERO;
-  if (isUnit(r.den)) return arrangePolynomial(r.num, layout);
+  const whole = isOnePolynomial(r.den) ? polynomialForm(r.num, 1n, layout) : wholeForm(r, layout);
+  const decimal = decimalForm(r, layout);
+  return decimal === null ? whole : shorter(whole, decimal);
+}
+
+/** The written form of a polynomial: a sum, unless a product is shorter. */
+export function arrangePolynomial(p: Polynomial, layout: Layout): Written {
+  return isZeroPolynomial(p) ? ZERO : polynomialForm(p, 1n, layout);
+}
+
+/** The first form, unless the second is at most as long. */
+function shorter(first: Written, second: Written): Written {
+  return textOf(first).length < textOf(second).length ? first : second;
+}
+
+/** One fraction with whole numbers. */
+function wholeForm(r: Ratio, layout: Layout): Written {
   const top = factorsOf(r.num, layout);
   const bottom = factorsOf(r.den, layout);
   const number = writeNumber(top.number, bottom.number);
@@ -65,22 +64,50 @@ export function arrangeRatio(r: Ratio, layout: Layout): Written {
   return signed(top.negative !== bottom.negative, fractionOf(num, den));
 }
 
-/** The written form of a polynomial: a sum, unless a product is shorter. */
-export function arrangePolynomial(p: Polynomial, layout: Layout): Written {
-  const sum = sumOf(termsIn(p, layout));
+/**
+ * Numerator and denominator over the leading number of the denominator, as `1/(s^2 + 1.2 s + 0.5)`; null if that is
+ * small, or a number over it is no decimal.
+ */
+function decimalForm(r: Ratio, layout: Layout): Written | null {
+  const divisor = leadingNumber(r.den, layout);
+  if (divisor === null || divisor < SMALLEST_DIVISOR) return null;
+  const all = [...termsOf(r.num), ...termsOf(r.den)];
+  if (!all.every(({ coefficient }) => isDecimalOver(coefficient, divisor))) return null;
+  const num = polynomialForm(r.num, divisor, layout);
+  return fractionWith(num, polynomialForm(r.den, divisor, layout));
+}
+
+/** A fraction with the sign of its numerator in front. */
+function fractionWith(num: Written, den: Written): Written {
+  if (den.kind === 'negative') return fractionWith(signed(true, num), den.of);
+  if (num.kind !== 'negative') return fractionOf(num, den);
+  return num.of.kind === 'negative'
+    ? fractionWith(num.of.of, den)
+    : signed(true, fractionOf(num.of, den));
+}
+
+function leadingNumber(p: Polynomial, layout: Layout): bigint | null {
+  const main = mainOf(p, layout);
+  const lead = main === null ? p : coefficientsIn(p, main).at(-1);
+  const terms = lead === undefined ? [] : termsOf(lead);
+  return terms.length === 1 ? terms[0].coefficient : null;
+}
+
+/** A polynomial over a divisor: a sum, unless a product is shorter. */
+function polynomialForm(p: Polynomial, divisor: bigint, layout: Layout): Written {
+  const sum = sumOf(termsIn(p, divisor, layout));
   if (layout.shape === 'expanded') return sum;
   const parts = factorsOf(p, layout);
-  const product = signed(parts.negative, productForm(parts, layout));
-  if (layout.shape === 'factored') return product;
-  return textOf(product).length < textOf(sum).length ? product : sum;
+  const product = signed(parts.negative, productForm(parts, divisor, layout));
+  return layout.shape === 'factored' ? product : shorter(product, sum);
 }
 
-function isUnit(p: Polynomial): boolean {
-  return generatorsOf(p).length === 0 && termsOf(p)[0].coefficient === 1n;
+function productForm(parts: Factored, divisor: bigint, layout: Layout): Written {
+  return productOf([numberForm(parts.number, divisor), ...factorForms(parts, layout)]);
 }
 
-function productForm(parts: Factored, layout: Layout): Written {
-  return productOf([writeNumber(parts.number, 1n).num, ...factorForms(parts, layout)]);
+function numberForm(number: bigint, divisor: bigint): Written {
+  return divisor === 1n ? writeNumber(number, 1n).num : decimalOver(number, divisor);
 }
 
 /** The factors without the number: parameters, sums of parameters, s, sums in s, functions of s. */
@@ -90,11 +117,11 @@ function factorForms(parts: Factored, layout: Layout): Written[] {
   );
   const powers = generators.map((g) => ({
     rank: g === laplace ? 2 : dependsOnLaplace(g) ? 4 : 0,
-    form: raised(generatorForm(g, layout), parts.monomial.get(g) ?? 0),
+    form: powerForm(g, parts.monomial.get(g) ?? 0, layout),
   }));
   const sums = parts.sums.map(({ polynomial, multiplicity }) => ({
     rank: generatorsOf(polynomial).some(dependsOnLaplace) ? 3 : 1,
-    form: raised(sumOf(termsIn(polynomial, layout)), multiplicity),
+    form: raised(sumOf(termsIn(polynomial, 1n, layout)), multiplicity),
   }));
   const bySize = sums.sort((a, b) => compareTexts(textOf(a.form), textOf(b.form)));
   return [...powers, ...bySize].sort((a, b) => a.rank - b.rank).map(({ form }) => form);
@@ -104,136 +131,80 @@ function compareTexts(a: string, b: string): number {
   return a.length - b.length || (a < b ? -1 : 1);
 }
 
-function generatorForm(g: Generator, layout: Layout): Written {
-  if (!g.args) return { kind: 'name', name: g.name };
-  return { kind: 'call', name: g.name, args: g.args.map((arg) => arrangeRatio(arg, layout)) };
-}
-
-function factorsOf(p: Polynomial, layout: Layout): Factored {
-  const { negative, number, monomial, rest } = pullContent(p, layout);
-  if (rest === null) return { negative, number, monomial, sums: [] };
-  const plain: Factored = {
-    negative,
-    number,
-    monomial,
-    sums: [{ polynomial: rest, multiplicity: 1 }],
-  };
-  const split = layout.shape === 'expanded' ? null : splitFactors(rest, layout);
-  if (split === null) return plain;
-  const whole = { ...plain, negative: negative !== split.negative, sums: split.sums };
-  if (layout.shape === 'factored') return whole;
-  return textOf(productForm(whole, layout)).length < textOf(productForm(plain, layout)).length
-    ? whole
-    : plain;
-}
-
-/** Takes the sign, the integer content and the common monomial out of a polynomial; the rest is null if it is 1. */
-function pullContent(
-  p: Polynomial,
-  layout: Layout,
-): Omit<Factored, 'sums'> & { readonly rest: Polynomial | null } {
-  const terms = termsOf(p);
-  const monomial = new Map<Generator, number>();
-  for (const g of generatorsOf(p)) {
-    const power = Math.min(...terms.map((term) => term.exponents.get(g) ?? 0));
-    if (power > 0) monomial.set(g, power);
-  }
-  const number = contentOf(p);
-  const rest = divideExactly(p, monomialPolynomial(number, monomial));
-  invariant(rest, 'the content of a polynomial does not divide it');
-  const negative = looksNegative(rest, layout);
-  if (terms.length === 1) return { negative, number, monomial, rest: null };
-  return { negative, number, monomial, rest: negative ? negPolynomial(rest) : rest };
-}
-
-function monomialPolynomial(number: bigint, monomial: ReadonlyMap<Generator, number>): Polynomial {
-  return [...monomial].reduce(
-    (product, [g, power]) => mulPolynomials(product, powPolynomial(generatorPolynomial(g), power)),
-    constantPolynomial(number),
+/** A generator to a power; a power of an exponential is that of the multiplied exponent. */
+function powerForm(g: Generator, power: number, layout: Layout): Written {
+  if (!g.args) return raised({ kind: 'name', name: g.name }, power);
+  if (g.name !== 'exp') return raised(callForm(g.name, g.args, layout), power);
+  const times = ratioFromRational(rational(power));
+  return callForm(
+    g.name,
+    g.args.map((arg) => mulRatios(arg, times)),
+    layout,
   );
 }
 
-/** Whether the coefficient that would stand first is negative in all its terms. */
-function looksNegative(p: Polynomial, layout: Layout): boolean {
-  const main = mainOf(p, layout);
-  if (main === null) return termsOf(p).every(({ coefficient }) => coefficient < 0n);
-  const coefficients = coefficientsIn(p, main);
-  const first = main === layout.main ? coefficients.at(-1) : coefficients.find(isNotZero);
-  return first !== undefined && looksNegative(first, layout);
+function callForm(name: string, args: readonly Ratio[], layout: Layout): Written {
+  return { kind: 'call', name, args: args.map((arg) => arrangeRatio(arg, layout)) };
 }
 
-function isNotZero(p: Polynomial): boolean {
-  return !isZeroPolynomial(p);
-}
-
-/** The factors of a primitive polynomial, or null if it has only one or looking for them costs too much. */
-function splitFactors(p: Polynomial, layout: Layout): Pick<Factored, 'negative' | 'sums'> | null {
-  const found = findFactors(p);
-  if (found === null || (found.factors.length === 1 && found.factors[0].multiplicity === 1)) {
-    return null;
-  }
-  let negative = found.unit < 0n;
-  const sums = found.factors.map(({ factor, multiplicity }) => {
-    const turned = looksNegative(factor, layout);
-    if (turned && multiplicity % 2 === 1) negative = !negative;
-    return { polynomial: turned ? negPolynomial(factor) : factor, multiplicity };
-  });
-  return { negative, sums };
-}
-
-function findFactors(p: Polynomial): ReturnType<typeof factorPolynomial> | null {
-  if (termsOf(p).length > MOST_TERMS_TO_FACTOR) return null;
-  try {
-    return factorPolynomial(p, new Budget(FACTOR_BUDGET));
-  } catch (error) {
-    if (error instanceof BudgetExceeded) return null;
-    throw error;
-  }
-}
-
-/** What a sum is collected by: a function of s if there is one (dead time), else the main variable, else nothing. */
-function mainOf(p: Polynomial, layout: Layout): Generator | null {
-  if (layout.shape === 'expanded') return degreeIn(p, layout.main) > 0 ? layout.main : null;
-  const generators = generatorsOf(p);
-  const dead = generators.find((g) => g.kind === 'function' && dependsOnLaplace(g));
-  return dead ?? (generators.includes(layout.main) ? layout.main : null);
+/** The factors of a polynomial, split where that is shorter (or asked for). */
+function factorsOf(p: Polynomial, layout: Layout): Factored {
+  const plain = withoutContent(p, layout);
+  const split = layout.shape === 'expanded' ? null : inFactors(plain, layout);
+  if (split === null) return plain;
+  if (layout.shape === 'factored') return split;
+  const length = (parts: Factored): number => textOf(productForm(parts, 1n, layout)).length;
+  return length(split) < length(plain) ? split : plain;
 }
 
 /** The terms of a sum: collected by descending powers of the main variable; what has no dead time comes first. */
-function termsIn(p: Polynomial, layout: Layout): SignedTerm[] {
+function termsIn(p: Polynomial, divisor: bigint, layout: Layout): SignedTerm[] {
   const main = mainOf(p, layout);
-  if (main === null) return monomialTerms(p, layout);
+  if (main === null) return monomialTerms(p, divisor, layout);
   const powers = coefficientsIn(p, main).map((coefficient, power) => ({ coefficient, power }));
   const ordered = main === layout.main ? powers.reverse() : powers;
   return ordered
-    .filter(({ coefficient }) => isNotZero(coefficient))
-    .flatMap(({ coefficient, power }) => coefficientTerms(coefficient, main, power, layout));
+    .filter(({ coefficient }) => !isZeroPolynomial(coefficient))
+    .flatMap(({ coefficient, power }) =>
+      layout.shape === 'expanded'
+        ? expandedTerms(coefficient, main, power, divisor, layout)
+        : collectedTerms(coefficient, main, power, divisor, layout),
+    );
 }
 
-function coefficientTerms(
+function expandedTerms(
   coefficient: Polynomial,
   main: Generator,
   power: number,
+  divisor: bigint,
   layout: Layout,
 ): SignedTerm[] {
-  const flat = termsIn(coefficient, layout);
-  if (layout.shape === 'expanded') return flat.map((term) => timesPower(term, main, power, layout));
-  const parts = factorsOf(coefficient, layout);
-  const folded = { negative: parts.negative, of: productForm(parts, layout) };
-  if (power === 0) {
-    return textOf(sumOf([folded])).length < textOf(sumOf(flat)).length ? [folded] : flat;
-  }
-  const monomial = new Map([...parts.monomial, [main, power] as const]);
-  return [{ negative: parts.negative, of: productForm({ ...parts, monomial }, layout) }];
+  const flat = termsIn(coefficient, divisor, layout);
+  if (power === 0) return flat;
+  const factor = powerForm(main, power, layout);
+  return flat.map((term) => ({ ...term, of: timesForms(term.of, [factor]) }));
 }
 
-function timesPower(term: SignedTerm, g: Generator, power: number, layout: Layout): SignedTerm {
-  if (power === 0) return term;
-  return { ...term, of: timesForms(term.of, [raised(generatorForm(g, layout), power)]) };
+function collectedTerms(
+  coefficient: Polynomial,
+  main: Generator,
+  power: number,
+  divisor: bigint,
+  layout: Layout,
+): SignedTerm[] {
+  const parts = factorsOf(coefficient, layout);
+  const { negative } = parts;
+  if (power > 0) {
+    const monomial = new Map([...parts.monomial, [main, power] as const]);
+    return [{ negative, of: productForm({ ...parts, monomial }, divisor, layout) }];
+  }
+  const flat = termsIn(coefficient, divisor, layout);
+  const folded = [{ negative, of: productForm(parts, divisor, layout) }];
+  return textOf(sumOf(folded)).length < textOf(sumOf(flat)).length ? folded : flat;
 }
 
 /** Monomials in the worksheet's order of symbols, a positive one first if there is one. */
-function monomialTerms(p: Polynomial, layout: Layout): SignedTerm[] {
+function monomialTerms(p: Polynomial, divisor: bigint, layout: Layout): SignedTerm[] {
   const generators = [...generatorsOf(p)].sort((a, b) => compareFactors(a, b, layout.writing));
   const terms = termsOf(p).map(({ coefficient, exponents }) => ({
     coefficient,
@@ -242,17 +213,16 @@ function monomialTerms(p: Polynomial, layout: Layout): SignedTerm[] {
   terms.sort((a, b) => compareExponents(a.exponents, b.exponents));
   const leader = terms.findIndex(({ coefficient }) => coefficient > 0n);
   if (leader > 0) terms.unshift(...terms.splice(leader, 1));
-  return terms.map(({ coefficient, exponents }) => ({
-    negative: coefficient < 0n,
-    of: productOf([
-      coefficient === 1n || coefficient === -1n
-        ? ONE
-        : writeNumber(coefficient < 0n ? -coefficient : coefficient, 1n).num,
-      ...generators.flatMap((g, i) =>
-        exponents[i] === 0 ? [] : [raised(generatorForm(g, layout), exponents[i])],
-      ),
-    ]),
-  }));
+  return terms.map(({ coefficient, exponents }) => {
+    const negative = coefficient < 0n;
+    const powers = generators.flatMap((g, i) =>
+      exponents[i] === 0 ? [] : [powerForm(g, exponents[i], layout)],
+    );
+    return {
+      negative,
+      of: productOf([numberForm(negative ? -coefficient : coefficient, divisor), ...powers]),
+    };
+  });
 }
 
 function compareExponents(a: readonly number[], b: readonly number[]): number {

@@ -1,4 +1,6 @@
-import { ONE, fractionOf, type Written } from './written.ts';
+import { rational } from '../algebra/index.ts';
+import { invariant } from '../base/index.ts';
+import { ONE, type Written } from './written.ts';
 
 /** Integers below this are always written in full. */
 const LONG_INTEGER = 1_000_000n;
@@ -17,10 +19,16 @@ export function writeNumber(n: bigint, d: bigint): { num: Written; den: Written 
   return { num: numberForm(decimal), den: ONE };
 }
 
-/** A positive exact number n/d as one form. */
-export function numberOf(n: bigint, d: bigint): Written {
-  const { num, den } = writeNumber(n, d);
-  return fractionOf(num, den);
+/** Whether an exact number n/d is a terminating decimal. */
+export function isDecimalOver(n: bigint, d: bigint): boolean {
+  return decimalText(n < 0n ? -n : n, d) !== null;
+}
+
+/** A positive exact number n/d that is a terminating decimal, as one. */
+export function decimalOver(n: bigint, d: bigint): Written {
+  const text = decimalText(n, d);
+  invariant(text !== null, `${n}/${d} is no terminating decimal`);
+  return numberForm(text);
 }
 
 function numberForm(text: string): Written {
@@ -36,7 +44,8 @@ function integerText(n: bigint): string {
 
 /** The terminating decimal of n/d, fixed or with an exponent, whichever is shorter; null if it does not terminate. */
 function decimalText(n: bigint, d: bigint): string | null {
-  const places = decimalPlaces(d);
+  if (n % d === 0n) return integerText(n / d);
+  const places = decimalPlaces(rational(n, d).d);
   if (places === null) return null;
   const digits = ((n * 10n ** BigInt(places)) / d).toString();
   const padded = digits.padStart(places + 1, '0');

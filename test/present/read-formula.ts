@@ -19,7 +19,13 @@ import {
   type Ratio,
 } from '../../src/algebra/index.ts';
 import { isRefusal } from '../../src/base/index.ts';
-import { parseFormula, type Expression } from '../../src/language/index.ts';
+import {
+  canonicalName,
+  isReserved,
+  parseFormula,
+  type Expression,
+  type NameKind,
+} from '../../src/language/index.ts';
 import type { Writing } from '../../src/present/writing.ts';
 import { isUnitSymbol } from '../../src/units/index.ts';
 
@@ -31,19 +37,21 @@ const vocabulary = {
   slotArguments: () => false,
 };
 
+/** Every name of a formula as a symbol of its worksheet, so that none is taken for a unit. */
+function symbolsIn(text: string): ReadonlyMap<string, NameKind> {
+  const names = text.match(/\p{L}[\p{L}\p{N}_]*/gu) ?? [];
+  const own = names.filter((name) => !FUNCTIONS.has(name) && !isReserved(name));
+  return new Map(own.map((name) => [canonicalName(name), 'symbol']));
+}
+
 /** The exact value of a formula of the worksheet language, read by its own grammar. */
 export function readFormula(text: string): Ratio {
-  const { expression, problems } = parseFormula(text, vocabulary);
-  const errors = problems.filter(({ severity }) => severity === 'error');
-  if (errors.length > 0 || expression === null) {
-    throw new Error(`${text}: ${errors.map(({ message }) => message).join('; ')}`);
-  }
-  return valueOf(expression);
+  return valueOf(readExpression(text));
 }
 
 /** The tree of a formula, which must be free of errors. */
 export function readExpression(text: string): Expression {
-  const { expression, problems } = parseFormula(text, vocabulary);
+  const { expression, problems } = parseFormula(text, vocabulary, symbolsIn(text));
   if (problems.some(({ severity }) => severity === 'error') || expression === null) {
     throw new Error(`${text}: ${problems.map(({ message }) => message).join('; ')}`);
   }

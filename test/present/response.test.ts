@@ -20,6 +20,7 @@ function responseTo(...terms: readonly (readonly [transform: string, after: stri
       name: 'x',
       terms: signal,
       blocks: [],
+      inputs: [],
       hasDelay: false,
       when: ALWAYS,
       notes: [],

@@ -120,6 +120,7 @@ describe('values of every kind', () => {
         kind: 'signal',
         name: 'x',
         blocks: [],
+        inputs: [],
         hasDelay: false,
         terms: [
           {
