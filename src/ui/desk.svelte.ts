@@ -34,7 +34,10 @@ export class Desk {
   private readonly stopListening: () => void;
   private greying: ReturnType<typeof setTimeout> | null = null;
 
-  constructor(column: HTMLElement) {
+  constructor(
+    column: HTMLElement,
+    private readonly onOpened: (name: string) => void,
+  ) {
     this.editor = new WorksheetEditor(column, {
       onChange: (text) => this.textChanged(text),
       onSave: () => void this.save(),
@@ -54,11 +57,10 @@ export class Desk {
     this.stopListening = this.listen();
   }
 
-  /** Lists the folder and opens the worksheet that the address names, the one opened last, or the first. */
-  async begin(): Promise<void> {
+  /** Lists the folder and opens the worksheet that is asked for, the one opened last, or the first. */
+  async begin(asked: string | null): Promise<void> {
     await this.list();
     const names = this.folder?.worksheets.map(({ name }) => name) ?? [];
-    const asked = new URL(location.href).searchParams.get('worksheet');
     const wanted = [asked, localStorage.getItem(LAST_OPENED)].find(
       (name) => name && names.includes(name),
     );
@@ -77,9 +79,7 @@ export class Desk {
 
   async open(name: string): Promise<void> {
     localStorage.setItem(LAST_OPENED, name);
-    const address = new URL(location.href);
-    address.searchParams.set('worksheet', name);
-    history.replaceState(history.state, '', address);
+    this.onOpened(name);
     await this.keeper.open(name);
   }
 
@@ -129,7 +129,7 @@ export class Desk {
   }
 
   writeNumber(name: string, text: string): void {
-    this.editor.writeNumbers(new Map([[name, text]]));
+    this.editor.writeNumber(name, text);
   }
 
   dragNumber(name: string) {

@@ -1,13 +1,14 @@
-import { defaultKeymap, history, historyKeymap } from '@codemirror/commands';
+import { defaultKeymap, historyKeymap } from '@codemirror/commands';
 import { search, searchKeymap } from '@codemirror/search';
 import { EditorSelection, type Extension } from '@codemirror/state';
 import { EditorView, keymap, type Command } from '@codemirror/view';
 import { sheetOf } from './sheet-field.ts';
+import { undoSteps } from './undo-steps.ts';
 
 /** The keys of the worksheet text. Tab is left to move between parts of the page. */
 export function editorKeys(save: () => void): Extension {
   return [
-    history(),
+    undoSteps,
     search({ top: true }),
     keymap.of([
       { key: 'Mod-s', run: () => (save(), true), preventDefault: true },

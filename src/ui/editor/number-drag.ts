@@ -1,7 +1,8 @@
-import { isolateHistory } from '@codemirror/commands';
-import { Transaction, type ChangeSpec, type EditorState } from '@codemirror/state';
+import { isolateHistory, undo } from '@codemirror/commands';
+import type { ChangeSpec, EditorState, Transaction } from '@codemirror/state';
 import type { EditorView } from '@codemirror/view';
 import { isCurrent, numberPlace } from './sheet-field.ts';
+import { dragStep } from './undo-steps.ts';
 
 /** Numbers of assumptions by name, as the text is to have them. */
 export type NumberTexts = ReadonlyMap<string, string>;
@@ -14,6 +15,7 @@ export class NumberDrag {
   private readonly original: NumberTexts;
   private wanted: NumberTexts | null = null;
   private frame: number | null = null;
+  private moved = false;
 
   constructor(
     private readonly view: EditorView,
@@ -30,41 +32,44 @@ export class NumberDrag {
 
   /** Ends the drag at the numbers asked for last. */
   finish(): void {
-    const reached = this.wanted ?? currentTexts(this.view.state, [...this.original.keys()]);
-    this.restore(reached);
+    if (this.wanted) this.write(this.wanted);
+    this.close();
+    if (numberChanges(this.view.state, this.original).length === 0) this.takeBack();
   }
 
   /** Ends the drag where it began. */
   cancel(): void {
-    this.restore(null);
+    this.close();
+    this.takeBack();
   }
 
   private follow(): void {
     this.frame = null;
     if (!this.wanted) return;
-    if (!isCurrent(this.view.state)) {
-      this.frame = requestAnimationFrame(() => this.follow());
-      return;
-    }
-    const changes = numberChanges(this.view.state, this.wanted);
-    if (changes.length === 0) return;
-    this.view.dispatch({ changes, annotations: Transaction.addToHistory.of(false) });
+    if (isCurrent(this.view.state)) this.write(this.wanted);
+    else this.frame = requestAnimationFrame(() => this.follow());
   }
 
-  /** Takes the drag back without a trace and, where it led to other numbers, does it again as one step. */
-  private restore(reached: NumberTexts | null): void {
+  private write(numbers: NumberTexts): void {
+    const changes = numberChanges(this.view.state, numbers);
+    if (changes.length === 0) return;
+    const annotations = this.moved ? dragStep.of(true) : isolateHistory.of('before');
+    this.moved = true;
+    this.view.dispatch({ changes, annotations });
+  }
+
+  /** Closes the undo step. */
+  private close(): void {
     if (this.frame !== null) cancelAnimationFrame(this.frame);
     this.frame = null;
     this.wanted = null;
-    const { state } = this.view;
-    const back = state.update({
-      changes: numberChanges(state, this.original),
-      annotations: Transaction.addToHistory.of(false),
-    });
-    const again = reached ? numberChanges(back.state, reached) : [];
-    const steps = [back];
-    if (again.length > 0) steps.push(numberStep(back.state, again));
-    this.view.dispatch(steps);
+    this.view.dispatch({ annotations: isolateHistory.of('after') });
+  }
+
+  /** A drag that led nowhere leaves no step behind. */
+  private takeBack(): void {
+    if (this.moved) undo(this.view);
+    this.moved = false;
   }
 }
 

@@ -1,4 +1,10 @@
-import { StateEffect, StateField, type EditorState, type Extension } from '@codemirror/state';
+import {
+  StateEffect,
+  StateField,
+  type EditorState,
+  type Extension,
+  type Transaction,
+} from '@codemirror/state';
 import { EditorView, ViewPlugin } from '@codemirror/view';
 
 /**
@@ -8,6 +14,11 @@ import { EditorView, ViewPlugin } from '@codemirror/view';
 export interface Revealed {
   readonly focused: boolean;
   readonly held: boolean;
+  /**
+   * Whether the lines of a paragraph that is shown as typed stand apart: since a line was broken here, until the pointer goes
+   * elsewhere. Otherwise they stay joined, so that nothing jumps where the cursor goes.
+   */
+  readonly linesApart: boolean;
   readonly ranges: readonly { readonly from: number; readonly to: number }[];
 }
 
@@ -15,7 +26,7 @@ const setFocused = StateEffect.define<boolean>();
 const setHeld = StateEffect.define<boolean>();
 
 export const revealedField = StateField.define<Revealed>({
-  create: () => ({ focused: false, held: false, ranges: [] }),
+  create: () => ({ focused: false, held: false, linesApart: false, ranges: [] }),
   update(revealed, transaction) {
     let { focused, held } = revealed;
     for (const effect of transaction.effects) {
@@ -24,11 +35,22 @@ export const revealedField = StateField.define<Revealed>({
     }
     const moved = transaction.docChanged || transaction.selection !== undefined;
     if (!moved && focused === revealed.focused && held === revealed.held) return revealed;
-    if (!focused) return { focused, held, ranges: [] };
+    if (!focused) return { focused, held, linesApart: false, ranges: [] };
     if (held && !transaction.docChanged) return { ...revealed, focused, held };
-    return { focused, held, ranges: transaction.newSelection.ranges };
+    const linesApart =
+      breaksLine(transaction) ||
+      (revealed.linesApart && !transaction.isUserEvent('select.pointer'));
+    return { focused, held, linesApart, ranges: transaction.newSelection.ranges };
   },
 });
+
+function breaksLine(transaction: Transaction): boolean {
+  let breaks = false;
+  transaction.changes.iterChanges((_fromA, _toA, _fromB, _toB, inserted) => {
+    breaks ||= inserted.lines > 1;
+  });
+  return breaks && transaction.isUserEvent('input');
+}
 
 const pointerWatch = ViewPlugin.define((view) => {
   const release = () => {

@@ -38,6 +38,7 @@ function typesetDocument(state: EditorState): DecorationSet {
 
 const hidden = Decoration.replace({});
 const joined = Decoration.replace({ widget: new StandInWidget('', ' ') });
+const markedJoin = Decoration.replace({ widget: new StandInWidget('line-end', '↵ ') });
 const broken = Decoration.replace({ widget: new StandInWidget('', '\n') });
 const bullet = Decoration.replace({ widget: new StandInWidget('bullet', '•') });
 const lineClass = (name: string) => Decoration.line({ class: name });
@@ -128,19 +129,26 @@ class Typesetter {
   }
 
   private paragraph(node: SyntaxNode): void {
-    if (isRevealed(this.state, node.from, node.to)) return;
-    const { doc } = this.state;
-    const first = doc.lineAt(node.from);
+    const shown = isRevealed(this.state, node.from, node.to);
+    if (shown && this.state.field(revealedField).linesApart) return;
+    this.joinLines(node, shown ? markedJoin : joined);
+    if (shown) return;
+    const first = this.state.doc.lineAt(node.from);
     const indent = this.state.sliceDoc(first.from, node.from);
     if (/^[ \t>]+$/u.test(indent)) this.hide(first.from, node.from);
     this.inline(node);
+  }
+
+  /** Joins the lines of a paragraph, but for forced breaks and inside formulas. */
+  private joinLines(node: SyntaxNode, join: Decoration): void {
+    const { doc } = this.state;
     const barred = stretches(node, ['Formula', 'HardBreak']);
-    for (let line = first; line.to < node.to; line = doc.line(line.number + 1)) {
+    for (let line = doc.lineAt(node.from); line.to < node.to; line = doc.line(line.number + 1)) {
       const next = doc.line(line.number + 1);
       const margin = /^[ \t>]*/u.exec(next.text)?.[0].length ?? 0;
       const to = Math.min(next.from + margin, node.to);
       if (!barred.some((range) => range.from < to && line.to < range.to)) {
-        this.made.push(joined.range(line.to, to));
+        this.made.push(join.range(line.to, to));
       }
     }
   }
@@ -150,6 +158,7 @@ class Typesetter {
     if (isRevealed(this.state, node.from, node.to)) {
       this.eachLine(node, lineClass('unset'));
     } else {
+      this.made.push(lineClass('displayed').range(this.state.doc.lineAt(node.from).from));
       this.formula(node);
     }
   }
@@ -191,7 +200,7 @@ class Typesetter {
   }
 
   private fence(node: SyntaxNode): void {
-    if (!isCellFence(this.state, node)) return this.eachLine(node, lineClass('plain-code'));
+    if (!isCellFence(this.state, node)) return this.plainFence(node);
     const { doc } = this.state;
     const first = doc.lineAt(node.from).number;
     const last = doc.lineAt(node.to).number;
@@ -200,7 +209,16 @@ class Typesetter {
     for (let number = first; number <= last; number += 1) {
       const isFence = number === first || (closed && number === last);
       const name = isFence ? (number === first ? 'fence fence-open' : 'fence fence-close') : 'cell';
-      this.made.push(lineClass(name).range(doc.line(number).from));
+      const line = doc.line(number);
+      this.made.push(lineClass(name).range(line.from));
+      if (line.text.trim() === '') this.made.push(lineClass('cell-blank').range(line.from));
+    }
+  }
+
+  private plainFence(node: SyntaxNode): void {
+    this.eachLine(node, lineClass('plain-code'));
+    for (const mark of node.getChildren('CodeMark')) {
+      this.made.push(lineClass('plain-fence').range(this.state.doc.lineAt(mark.from).from));
     }
   }
 

@@ -8,7 +8,7 @@ import { functionHelp } from './function-help.ts';
 import { headingsOf } from './headings.ts';
 import { highlighting } from './highlighting.ts';
 import { splitText } from './line-endings.ts';
-import { NumberDrag, writeNumbers, type NumberTexts } from './number-drag.ts';
+import { NumberDrag, writeNumbers } from './number-drag.ts';
 import { resultsField } from './results-field.ts';
 import { revealing } from './revealed.ts';
 import { isCurrent, sheetKeeping, showSheet, type Sheet } from './sheet-field.ts';
@@ -112,9 +112,9 @@ export class WorksheetEditor {
     else this.view.scrollDOM.focus({ preventScroll: true });
   }
 
-  /** Writes numbers of assumptions into the text, as one undo step. */
-  writeNumbers(numbers: NumberTexts): void {
-    writeNumbers(this.view, numbers);
+  /** Writes the number of an assumption into the text, as one undo step. */
+  writeNumber(name: string, text: string): void {
+    writeNumbers(this.view, new Map([[name, text]]));
   }
 
   /** Begins to drag numbers of assumptions: all until its end is one undo step. */

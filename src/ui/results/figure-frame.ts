@@ -10,6 +10,7 @@ const LEAST_WIDTH = 320;
 export class FigureFrame {
   readonly element: HTMLElement;
   private readonly drawing = element('div', 'figure-drawing');
+  private readonly caption = element('p', 'caption');
   private readonly notes = element('div', 'figure-notes');
   private readonly data = element('details', 'figure-data', element('summary', '', 'Data'));
   private readonly handle: DragHandle;
@@ -21,8 +22,16 @@ export class FigureFrame {
     drag: PointDrag,
   ) {
     this.handle = new DragHandle(drag);
-    const plane = element('div', 'figure-plane', this.drawing, this.handle.element);
-    this.element = element('div', `figure figure-${figure.kind}`, plane, this.notes, this.data);
+    const handle = figure.kind === 'region' ? this.handle.element : null;
+    const plane = element('div', 'figure-plane', this.drawing, handle);
+    this.element = element(
+      'div',
+      `figure-frame figure-frame-${figure.kind}`,
+      plane,
+      this.caption,
+      this.notes,
+      this.data,
+    );
     this.element.setAttribute('role', 'group');
     this.data.addEventListener('toggle', () => this.showData());
     this.sizes = new ResizeObserver(([entry]) => this.resize(entry?.contentRect.width ?? 0));
@@ -38,6 +47,7 @@ export class FigureFrame {
   show(figure: FigureData): void {
     this.figure = figure;
     this.element.setAttribute('aria-label', figureName(figure));
+    this.caption.textContent = figure.title ?? '';
     this.notes.replaceChildren(...figure.notes.map((note) => element('p', 'note', note)));
     this.draw();
     if (this.data.open) this.showData();
