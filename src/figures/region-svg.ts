@@ -14,6 +14,10 @@ import { element, short, type Svg } from './svg.ts';
 
 const MARGIN = { left: 62, right: 18, top: 58, bottom: 48 };
 
+/** Height of a row of the key, and the room for the mark before its text. */
+const KEY_ROW = 20;
+const KEY_MARK = 20;
+
 /** Radius of the point of the present gains. */
 const POINT_RADIUS = 6;
 
@@ -22,7 +26,7 @@ export function regionLayout(figure: RegionFigure, size: FigureSize): FigureLayo
   const plot: Box = {
     left: MARGIN.left,
     right: size.width - MARGIN.right,
-    top: MARGIN.top,
+    top: MARGIN.top + (keyRows(figure, size).length - 1) * KEY_ROW,
     bottom: size.height - MARGIN.bottom,
   };
   const panel = panelOver(plot, [figure.x.from, figure.x.to], [figure.y.from, figure.y.to]);
@@ -31,8 +35,7 @@ export function regionLayout(figure: RegionFigure, size: FigureSize): FigureLayo
 
 /** A gain plane as SVG: areas as tints, boundaries labelled with their condition, the present gains as a point. */
 export function regionSvg(figure: RegionFigure, size: FigureSize): Svg {
-  const layout = regionLayout(figure, size);
-  const [panel] = layout.panels;
+  const [panel] = regionLayout(figure, size).panels;
   return element(
     'svg',
     {
@@ -49,7 +52,7 @@ export function regionSvg(figure: RegionFigure, size: FigureSize): Svg {
     ...boundariesSvg(panel, figure),
     axesSvg(panel, figure.x, figure.y.label),
     ...boundaryLabels(panel, figure),
-    keySvg(figure, layout),
+    keySvg(figure, size),
     pointSvg(panel, figure),
   );
 }
@@ -131,9 +134,57 @@ function pointMark(cx: number, cy: number, figure: RegionFigure): Svg {
   });
 }
 
-/** What the tints and the point mean, in one row above the plot. */
-function keySvg(figure: RegionFigure, layout: FigureLayout): Svg {
-  const swatch = (tint: 'area' | 'deep-area') => (x: number, y: number) =>
+interface KeyEntry {
+  readonly mark: (x: number, y: number) => Svg;
+  readonly text: string;
+}
+
+/** What the tints and the point mean, in rows above the plot. */
+function keySvg(figure: RegionFigure, size: FigureSize): Svg {
+  const rows = keyRows(figure, size).map((row, i) => {
+    const y = 18 + i * KEY_ROW;
+    return row.map(({ x, mark, text }) => {
+      return mark(x, y) + lettering(x + KEY_MARK, y, text, { size: LABEL_SIZE });
+    });
+  });
+  return element('g', { class: 'key' }, ...rows.flat());
+}
+
+/** The entries of the key with their places, broken into rows where the figure is narrow. */
+function keyRows(
+  figure: RegionFigure,
+  size: FigureSize,
+): readonly (readonly (KeyEntry & { readonly x: number })[])[] {
+  const left = MARGIN.left - 46;
+  const rows: (KeyEntry & { readonly x: number })[][] = [[]];
+  let x = left;
+  for (const entry of keyEntries(figure)) {
+    const width = KEY_MARK + textWidth(entry.text, LABEL_SIZE);
+    if (x > left && x + width > size.width) {
+      rows.push([]);
+      x = left;
+    }
+    rows.at(-1)?.push({ ...entry, x });
+    x += width + 22;
+  }
+  return rows;
+}
+
+function keyEntries(figure: RegionFigure): readonly KeyEntry[] {
+  const nominal = figure.nominalArea.length > 0 ? 'holds at nominal values' : 'holds nowhere here';
+  const entries: KeyEntry[] = [{ mark: swatch('area'), text: nominal }];
+  if (figure.toleranceArea !== null) {
+    const robust = figure.toleranceArea.length > 0 ? 'holds' : 'holds nowhere here';
+    entries.push({ mark: swatch('deep-area'), text: `${robust} over the tolerances` });
+  }
+  if (figure.point !== null) {
+    entries.push({ mark: (x, y) => pointMark(x + 7, y - 4.5, figure), text: 'present gains' });
+  }
+  return entries;
+}
+
+function swatch(tint: 'area' | 'deep-area'): KeyEntry['mark'] {
+  return (x, y) =>
     element('rect', {
       x,
       y: y - 10,
@@ -143,30 +194,6 @@ function keySvg(figure: RegionFigure, layout: FigureLayout): Svg {
       stroke: ink('quiet'),
       'stroke-width': 0.7,
     });
-  const nominal = figure.nominalArea.length > 0 ? 'holds at nominal values' : 'holds nowhere here';
-  const entries = [{ mark: swatch('area'), text: nominal }];
-  if (figure.toleranceArea !== null) {
-    const robust = figure.toleranceArea.length > 0 ? 'holds' : 'holds nowhere here';
-    entries.push({ mark: swatch('deep-area'), text: `${robust} over the tolerances` });
-  }
-  if (figure.point !== null) {
-    entries.push({ mark: (x, y) => pointMark(x + 7, y - 4.5, figure), text: 'present gains' });
-  }
-  return element('g', { class: 'key' }, ...keyRow(entries, layout.panels[0].plot.left - 46));
-}
-
-interface KeyEntry {
-  readonly mark: (x: number, y: number) => Svg;
-  readonly text: string;
-}
-
-function keyRow(entries: readonly KeyEntry[], left: number): Svg[] {
-  let x = left;
-  return entries.flatMap(({ mark, text }) => {
-    const row = [mark(x, 18), lettering(x + 20, 18, text, { size: LABEL_SIZE })];
-    x += 20 + textWidth(text, LABEL_SIZE) + 22;
-    return row;
-  });
 }
 
 function pixels(panel: Panel, line: Line): Line {

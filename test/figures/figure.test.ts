@@ -106,6 +106,12 @@ it('A region that holds nowhere says so.', () => {
   expect(figureSvg(nowhere, size)).toContain('holds nowhere here');
 });
 
+it('A narrow region breaks its key into rows and starts its plot lower.', () => {
+  const narrow = { width: 360, height: 420 };
+  const [wide] = figureLayout(region(), size).panels;
+  expect(figureLayout(region(), narrow).panels[0].plot.top).toBeGreaterThan(wide.plot.top);
+});
+
 it('Curves of different units have panels of their own under one time axis.', () => {
   const { panels } = figureLayout(response(), size);
   expect(panels).toHaveLength(2);
