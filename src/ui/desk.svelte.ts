@@ -91,11 +91,13 @@ export class Desk {
       .replace(/[^\p{L}\p{N}/]+/gu, '-')
       .replace(/^-+|-+$/gu, '')}.md`;
     if (name === '.md') return 'Give the worksheet a name.';
-    const outcome = await this.service.save(name, `# ${words}\n\n\`\`\`loop\n\n\`\`\`\n`, null);
+    const head = `# ${words}\n\n\`\`\`loop\n`;
+    const outcome = await this.service.save(name, `${head}\n\`\`\`\n`, null);
     if (outcome.kind === 'conflict') return `There is a worksheet ${name} already.`;
     if (outcome.kind === 'failed') return outcome.message;
     await this.list();
     await this.open(name);
+    this.goTo(head.length, true);
     return null;
   }
 
