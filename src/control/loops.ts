@@ -82,6 +82,9 @@ const listed = (items: readonly string[]): string =>
 const equationList = (fault: Fault): string =>
   `${fault.equations.length === 1 ? 'equation' : 'equations'} ${listed(fault.equations.map((e) => String(e + 1)))}`;
 
+const verb = (equations: readonly number[]): string =>
+  equations.length === 1 ? 'holds' : 'hold';
+
 function structuralFault(
   incidence: Incidence,
   matching: Matching,
@@ -95,13 +98,13 @@ function structuralFault(
     reasons.push(
       few.equations.length === 0
         ? `no equation determines ${named(few)}`
-        : `${named(few)} need ${few.unknowns.length} equations, but only ${equationList(few)} hold them`,
+        : `${named(few)} need ${few.unknowns.length} equations, but only ${equationList(few)} ${verb(few.equations)} them`,
     );
   }
   if (many.equations.length > 0) {
     reasons.push(
       many.unknowns.length === 0
-        ? `${equationList(many)} hold no unknown`
+        ? `${equationList(many)} ${verb(many.equations)} no unknown`
         : `${equationList(many)} are too many for ${named(many)} alone`,
     );
   }

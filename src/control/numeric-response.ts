@@ -11,7 +11,7 @@ import {
 } from '../numeric/index.ts';
 import type { Complex } from '../numeric/index.ts';
 import { numberOf } from './compile.ts';
-import { degreeInS, descendingInS, isFreeOfS } from './s-polynomial.ts';
+import { degreeInS, descendingInS } from './s-polynomial.ts';
 import type { ResponseTerm } from './time-function.ts';
 
 /** Coefficients of a polynomial in s divided by one of them, as numbers, highest power first. */
@@ -38,20 +38,55 @@ function shifted(descending: readonly number[], r: Complex): Complex[] {
 
 const zero = complex(0);
 
-/** Coefficients of 1/(s − r)^m, …, 1/(s − r) in num/den at a root r of multiplicity m of den; index 0 for the first. */
+/** A monic factor of the denominator, highest power first, with its multiplicity. */
+interface MonicFactor {
+  readonly coefficients: readonly number[];
+  readonly multiplicity: number;
+}
+
+/** The product of two power series, cut to a length. */
+function mulSeries(a: readonly Complex[], b: readonly Complex[], length: number): Complex[] {
+  return Array.from({ length }, (_, k) => {
+    let sum = zero;
+    for (let i = 0; i <= k; i++) {
+      sum = addComplex(sum, multiplyComplex(a[i] ?? zero, b[k - i] ?? zero));
+    }
+    return sum;
+  });
+}
+
+/**
+ * The denominator at root + ε, divided by ε^m, as a series of m terms. Taken factor by factor: expanded, a denominator
+ * with close roots would lose half of the digits.
+ */
+function denominatorAt(
+  root: Complex,
+  own: MonicFactor,
+  factors: readonly MonicFactor[],
+): readonly Complex[] {
+  const length = own.multiplicity;
+  let product: Complex[] = [complex(1)];
+  for (const factor of factors) {
+    const series = shifted(factor.coefficients, root).slice(factor === own ? 1 : 0);
+    for (let k = 0; k < factor.multiplicity; k++) product = mulSeries(product, series, length);
+  }
+  return product;
+}
+
+/** Coefficients of 1/(s − r)^m, …, 1/(s − r) at a root r of a factor of multiplicity m; index 0 for the first. */
 function principalPart(
   num: readonly number[],
-  den: readonly number[],
   root: Complex,
-  multiplicity: number,
+  own: MonicFactor,
+  factors: readonly MonicFactor[],
 ): Complex[] {
   const top = shifted(num, root);
-  const bottom = shifted(den, root).slice(multiplicity);
+  const bottom = denominatorAt(root, own, factors);
   const quotient: Complex[] = [];
-  for (let k = 0; k < multiplicity; k++) {
+  for (let k = 0; k < own.multiplicity; k++) {
     let rest = top[k] ?? zero;
     for (let i = 1; i <= k; i++) {
-      rest = subtractComplex(rest, multiplyComplex(bottom[i] ?? zero, quotient[k - i]));
+      rest = subtractComplex(rest, multiplyComplex(bottom[i], quotient[k - i]));
     }
     quotient.push(divideComplex(rest, bottom[0]));
   }
@@ -80,17 +115,20 @@ function termsAt(root: Complex, c: Complex, power: number, after: Ratio): Respon
  * Multiplicities come from the exact factors, the roots of each factor are simple and numeric.
  */
 export function numericTerms(r: Ratio, after: Ratio, budget?: Budget): ResponseTerm<number>[] {
-  const [lead] = descendingInS(r.den);
-  const num = numbersOver(r.num, lead);
-  const den = numbersOver(r.den, lead);
-  return factorPolynomial(r.den, budget)
-    .factors.filter(({ factor }) => !isFreeOfS(factor) && degreeInS(factor) > 0)
-    .flatMap(({ factor, multiplicity }) =>
-      polynomialRoots(numbersOver(factor, descendingInS(factor)[0]))
+  const num = numbersOver(r.num, descendingInS(r.den)[0]);
+  const factors: readonly MonicFactor[] = factorPolynomial(r.den, budget)
+    .factors.filter(({ factor }) => degreeInS(factor) > 0)
+    .map(({ factor, multiplicity }) => ({
+      coefficients: numbersOver(factor, descendingInS(factor)[0]),
+      multiplicity,
+    }));
+  return factors
+    .flatMap((own) =>
+      polynomialRoots(own.coefficients)
         .filter((root) => root.im >= 0)
         .flatMap((root) =>
-          principalPart(num, den, root, multiplicity).flatMap((c, k) =>
-            termsAt(root, c, multiplicity - 1 - k, after),
+          principalPart(num, root, own, factors).flatMap((c, k) =>
+            termsAt(root, c, own.multiplicity - 1 - k, after),
           ),
         ),
     )

@@ -103,6 +103,8 @@ export interface SignalValue extends ValueBase {
   /** How it is called: `storm.e`. */
   readonly name: string;
   readonly terms: readonly SignalTerm[];
+  /** The inputs of its loop; empty for a formula taken as a transform. */
+  readonly inputs: readonly string[];
   /** The blocks of the loop that the signal depends on, uncancelled; empty for a formula taken as a transform. */
   readonly blocks: readonly StabilityBlock[];
   /** The loop has a dead time: its blocks' polynomials contain a delay and cannot be judged as polynomials. */
