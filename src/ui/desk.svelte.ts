@@ -46,7 +46,7 @@ export class Desk {
       startWorker: startEvaluator,
       onReport: (report) => this.take(nextSheet(this.sheet, report, this.editor.text)),
       onState: (state) => this.evaluatorIs(state),
-      onVocabulary: (functions) => this.editor.setVocabulary(functions),
+      onVocabulary: (words) => this.editor.setVocabulary(words),
     });
     this.keeper = new FileKeeper({
       service: this.service,

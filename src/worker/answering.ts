@@ -6,9 +6,9 @@ import { packReport, type UpdateMessage, type WorkerMessage } from './protocol.t
  * that the other side holds; a bug in the evaluator becomes a failure message and a new session.
  */
 export function createAnswering(
-  startSession: () => Session,
+  startSession: () => Pick<Session, 'update'>,
 ): (update: UpdateMessage) => WorkerMessage {
-  let session: Session | null = null;
+  let session: Pick<Session, 'update'> | null = null;
   let sent: Report | null = null;
   return ({ revision, text, fresh }) => {
     try {

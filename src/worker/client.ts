@@ -1,10 +1,5 @@
-import type { Report } from '../engine/index.ts';
-import {
-  unpackReport,
-  type UpdateMessage,
-  type VocabularyEntry,
-  type WorkerMessage,
-} from './protocol.ts';
+import type { Report, VocabularyWord } from '../engine/index.ts';
+import { unpackReport, type UpdateMessage, type WorkerMessage } from './protocol.ts';
 
 /** The part of a Worker that the client uses, so that tests can stand in for it. */
 export interface WorkerPort {
@@ -29,7 +24,7 @@ export interface ClientOptions {
   /** Called with the report of the newest text only. */
   readonly onReport: (report: Report) => void;
   readonly onState: (state: EvaluatorState) => void;
-  readonly onVocabulary?: (functions: readonly VocabularyEntry[]) => void;
+  readonly onVocabulary?: (words: readonly VocabularyWord[]) => void;
   /** Seconds that one revision may take before the worker is ended; 10 unless given. */
   readonly patienceSeconds?: number;
 }
@@ -106,7 +101,7 @@ class Client implements EvaluatorClient {
 
   private receive(message: WorkerMessage): void {
     if (message.kind === 'vocabulary') {
-      this.options.onVocabulary?.(message.functions);
+      this.options.onVocabulary?.(message.words);
       return;
     }
     this.settle();

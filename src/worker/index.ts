@@ -5,5 +5,4 @@ export {
   type EvaluatorState,
   type WorkerPort,
 } from './client.ts';
-export type { VocabularyEntry } from './protocol.ts';
 export { startEvaluator } from './start.ts';

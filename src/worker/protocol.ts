@@ -1,4 +1,4 @@
-import type { Placed, Report } from '../engine/index.ts';
+import type { Placed, Report, VocabularyWord } from '../engine/index.ts';
 
 /** Asks for the report of a text. `fresh` forgets the session before it: another worksheet was opened. */
 export interface UpdateMessage {
@@ -8,18 +8,10 @@ export interface UpdateMessage {
   readonly fresh: boolean;
 }
 
-/** A function or a word of the language, for completion. */
-export interface VocabularyEntry {
-  readonly name: string;
-  /** What follows the name, `(L)`, or the empty string for a word. */
-  readonly signature: string;
-  readonly help: string;
-}
-
 /** What the evaluator knows by name, sent once when it starts. */
 export interface VocabularyMessage {
   readonly kind: 'vocabulary';
-  readonly functions: readonly VocabularyEntry[];
+  readonly words: readonly VocabularyWord[];
 }
 
 /** The report of a revision; rows whose content is that of the report before are sent as their index there. */

@@ -4,8 +4,10 @@ import { createAnswering } from '../../src/worker/answering.ts';
 import { createClient, type EvaluatorState, type WorkerPort } from '../../src/worker/client.ts';
 import type { UpdateMessage } from '../../src/worker/protocol.ts';
 
+type Updating = Pick<Session, 'update'>;
+
 /** A session whose report names the text as its only reference. */
-const echo: Session = { update: (text) => echoReport(text) };
+const echo: Updating = { update: (text) => echoReport(text) };
 
 function echoReport(text: string): Report {
   const references = [{ from: 0, to: text.length, name: text, shown: null }];
@@ -20,7 +22,7 @@ class ManualWorker implements WorkerPort {
   ended = false;
   private readonly answering;
 
-  constructor(session: Session = echo) {
+  constructor(session: Updating = echo) {
     this.answering = createAnswering(() => session);
   }
 
@@ -38,7 +40,7 @@ class ManualWorker implements WorkerPort {
   }
 }
 
-function setUp(session?: Session) {
+function setUp(session?: Updating) {
   const workers: ManualWorker[] = [];
   const reports: string[] = [];
   const states: EvaluatorState[] = [];

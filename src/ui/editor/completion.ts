@@ -6,13 +6,13 @@ import {
 } from '@codemirror/autocomplete';
 import { StateEffect, StateField, type EditorState, type Extension } from '@codemirror/state';
 import { isInCell } from './cells.ts';
-import type { VocabularyEntry } from '../../worker/index.ts';
+import type { VocabularyWord } from '../../engine/index.ts';
 import { sheetOf } from './sheet-field.ts';
 
 /** Gives the editor the functions that the evaluator knows. */
-export const setVocabulary = StateEffect.define<readonly VocabularyEntry[]>();
+export const setVocabulary = StateEffect.define<readonly VocabularyWord[]>();
 
-const vocabularyField = StateField.define<readonly VocabularyEntry[]>({
+const vocabularyField = StateField.define<readonly VocabularyWord[]>({
   create: () => [],
   update(entries, transaction) {
     return transaction.effects.find((effect) => effect.is(setVocabulary))?.value ?? entries;
@@ -43,7 +43,7 @@ export const completing: Extension = [
 ];
 
 /** The entry of a function, for help on it. */
-export function vocabularyEntry(state: EditorState, name: string): VocabularyEntry | null {
+export function vocabularyWord(state: EditorState, name: string): VocabularyWord | null {
   return state.field(vocabularyField).find((entry) => entry.name === name) ?? null;
 }
 

@@ -1,13 +1,13 @@
 import { hoverTooltip } from '@codemirror/view';
 import { element } from '../results/element.ts';
 import { isInCell } from './cells.ts';
-import { vocabularyEntry } from './completion.ts';
+import { vocabularyWord } from './completion.ts';
 
 /** Help on the function under the pointer. */
 export const functionHelp = hoverTooltip((view, place) => {
   const word = view.state.wordAt(place);
   if (!word || !isInCell(view.state, place)) return null;
-  const entry = vocabularyEntry(view.state, view.state.sliceDoc(word.from, word.to));
+  const entry = vocabularyWord(view.state, view.state.sliceDoc(word.from, word.to));
   if (!entry) return null;
   const create = () => ({
     dom: element(

@@ -1,6 +1,6 @@
 import { Compartment, EditorSelection, EditorState, type Text } from '@codemirror/state';
 import { EditorView, highlightSpecialChars } from '@codemirror/view';
-import type { VocabularyEntry } from '../../worker/index.ts';
+import type { VocabularyWord } from '../../engine/index.ts';
 import { completing, setVocabulary } from './completion.ts';
 import { editorKeys } from './editor-keys.ts';
 import { fileText, keepEndings } from './endings-field.ts';
@@ -25,7 +25,7 @@ export interface EditorEvents {
 export class WorksheetEditor {
   private readonly view: EditorView;
   private readonly writing = new Compartment();
-  private vocabulary: readonly VocabularyEntry[] = [];
+  private vocabulary: readonly VocabularyWord[] = [];
   /** The document as it was opened or saved last. */
   private savedDoc: Text;
 
@@ -96,7 +96,7 @@ export class WorksheetEditor {
     this.view.dispatch({ effects: this.writing.reconfigure(EditorState.readOnly.of(readOnly)) });
   }
 
-  setVocabulary(entries: readonly VocabularyEntry[]): void {
+  setVocabulary(entries: readonly VocabularyWord[]): void {
     this.vocabulary = entries;
     this.view.dispatch({ effects: setVocabulary.of(entries) });
   }

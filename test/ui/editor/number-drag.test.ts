@@ -1,5 +1,5 @@
 import { undo, undoDepth } from '@codemirror/commands';
-import { EditorState, type Transaction } from '@codemirror/state';
+import { EditorState, Transaction, type TransactionSpec } from '@codemirror/state';
 import type { EditorView } from '@codemirror/view';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { NumberDrag, writeNumbers } from '../../../src/ui/editor/number-drag.ts';
@@ -13,10 +13,8 @@ const TEXT = 'Kp is 9 kN m/rad\nKi is 6 kN m/(rad s)\n';
 class StandInView {
   state = EditorState.create({ doc: TEXT, extensions: [undoSteps, sheetKeeping] });
 
-  dispatch = (spec: Parameters<EditorState['update']>[0] | readonly Transaction[]): void => {
-    if (Array.isArray(spec)) this.state = (spec as readonly Transaction[]).at(-1)!.state;
-    else if ('state' in spec) this.state = (spec as Transaction).state;
-    else this.state = this.state.update(spec as Parameters<EditorState['update']>[0]).state;
+  dispatch = (step: TransactionSpec | Transaction): void => {
+    this.state = step instanceof Transaction ? step.state : this.state.update(step).state;
   };
 
   get text(): string {
