@@ -4,5 +4,7 @@ import { defineConfig } from 'vite';
 
 export default defineConfig({
   plugins: [lezer(), sveltekit()],
+  // The page's security policy allows no font from a data address.
+  build: { assetsInlineLimit: 0 },
   worker: { format: 'es', plugins: () => [lezer()] },
 });

@@ -64,6 +64,10 @@ export class RequirementWidget extends RowWidget<RequirementContent> {
 
 /** The equations of a loop, typeset as they were read. */
 export class LoopWidget extends RowWidget<LoopContent> {
+  override eq(other: LoopWidget): boolean {
+    return other.content.equationsLatex.join('\n') === this.content.equationsLatex.join('\n');
+  }
+
   override draw(): HTMLElement {
     return equationsElement(this.content);
   }
