@@ -42,7 +42,8 @@ function commonFactorWithoutLaplace(a: Polynomial, b: Polynomial, budget?: Budge
 
 function fraction(num: Polynomial, den: Polynomial, budget?: Budget): Fraction {
   invariant(!isZeroPolynomial(den), 'a fraction with denominator zero');
-  if (isZeroPolynomial(num)) return Object.freeze({ num: zeroPolynomial, den });
+  // Nothing has no poles: a branch whose gain is 0 leaves no mode behind.
+  if (isZeroPolynomial(num)) return Object.freeze({ num: zeroPolynomial, den: onePolynomial });
   const common = scalePolynomial(
     commonFactorWithoutLaplace(num, den, budget),
     BigInt(leadingCoefficientSign(den)),

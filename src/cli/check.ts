@@ -40,7 +40,7 @@ interface CheckedFile {
 async function checkFile(file: string): Promise<CheckedFile> {
   const text = await readWorksheet(file);
   if (isRefusal(text)) return { record: unreadableRecord(file, text.reason), notes: [] };
-  const report = createSession({}).update(text);
+  const report = createSession().update(text);
   const notes = report.requirements.map(({ content }) => content.notes);
   return { record: checkRecord(file, text, report), notes };
 }

@@ -47,7 +47,8 @@ export interface ResultContent {
   readonly shown: string | null;
   readonly span: SpanContent | null;
   readonly notes: readonly string[];
-  readonly parts: Readonly<Record<string, unknown>> | null;
+  /** What a result of its kind is made of, as in `check --json`: plain data. */
+  readonly parts: unknown;
   readonly figure: FigureData | null;
   /** `trivial`: the same as its source, not to be repeated on the page; `error`: a problem stops it (its own or one it waits for). */
   readonly state: 'ready' | 'trivial' | 'error';
@@ -107,7 +108,11 @@ export interface AssumptionContent {
   /** Absolute offsets of the number's text, for editing in place; null where there is none. */
   readonly numberSpan: { readonly from: number; readonly to: number } | null;
   /** Range of the slider in the typed unit: the `tune` range, else the tolerance, else none. */
-  readonly slider: { readonly low: number; readonly high: number; readonly why: 'tune' | 'tolerance' } | null;
+  readonly slider: {
+    readonly low: number;
+    readonly high: number;
+    readonly why: 'tune' | 'tolerance';
+  } | null;
   readonly used: boolean;
 }
 

@@ -1,0 +1,198 @@
+import { errorAt, type Problem, type Span } from '../base/index.ts';
+import {
+  nameToText,
+  type AssumptionStatement,
+  type Quantity,
+  type Sign,
+  type ToleranceClause,
+} from '../language/index.ts';
+import {
+  formatNumber,
+  valueIn,
+  type CustomUnits,
+  type SiQuantity,
+  type Unit,
+} from '../units/index.ts';
+import { siOfQuantity, unitOfQuantity } from './quantities.ts';
+import { outcomeOf, stopAt, type Outcome } from './stop.ts';
+
+/** An assumption's number, in coherent SI units. */
+export interface AssumptionReading {
+  readonly unit: Unit;
+  readonly value: SiQuantity;
+  readonly tolerance: ToleranceReading | null;
+}
+
+/** Hard bounds in SI units, or a normal distribution whose half-width is so many standard deviations. */
+export interface ToleranceReading {
+  readonly low: number;
+  readonly high: number;
+  readonly sigma: number | null;
+}
+
+/** Reads the number, the unit and the tolerance of an assumption. */
+export function readAssumption(
+  node: AssumptionStatement,
+  units: CustomUnits,
+): Outcome<AssumptionReading> {
+  return outcomeOf(node.span, () => {
+    const unit = unitOfQuantity(node.value, units);
+    const value = siOfQuantity(node.value, unit);
+    return {
+      unit,
+      value,
+      tolerance: node.tolerance && readTolerance(node, node.tolerance, unit, value, units),
+    };
+  });
+}
+
+function readTolerance(
+  node: AssumptionStatement,
+  tolerance: ToleranceClause,
+  unit: Unit,
+  value: SiQuantity,
+  units: CustomUnits,
+): ToleranceReading {
+  if (tolerance.kind === 'range') return readRange(node, tolerance, unit, value, units);
+  const half = halfWidth(node, tolerance.half, unit, value, units);
+  if (!(half >= 0))
+    stopAt(
+      tolerance.half.span,
+      'negative-tolerance',
+      'A tolerance is a half-width; it cannot be negative.',
+    );
+  const sigmas = tolerance.sigmas === null ? null : Number(tolerance.sigmas);
+  if (sigmas !== null && !(sigmas > 0)) {
+    stopAt(
+      tolerance.span,
+      'bad-sigma',
+      'The number of standard deviations is positive, as in `at 3 sigma`.',
+    );
+  }
+  const sigma = sigmas === null ? null : half / sigmas;
+  return { low: value.value - half, high: value.value + half, sigma };
+}
+
+function halfWidth(
+  node: AssumptionStatement,
+  half: Quantity,
+  unit: Unit,
+  value: SiQuantity,
+  units: CustomUnits,
+): number {
+  const typed = half.unit === '' ? unit : unitOfQuantity(half, units);
+  if (!typed.isPercent || half.unit === '') {
+    requireSameKind(half, typed, unit, node.name);
+    return siOfQuantity(half, typed, { difference: true }).value;
+  }
+  if (unit.isPercent) {
+    stopAt(
+      half.span,
+      'percent-of-percent',
+      `${node.name} is in %, so ± % could mean two things; give the tolerance as a number without unit.`,
+    );
+  }
+  if (Number(unit.offset.split('/')[0]) !== 0) {
+    stopAt(
+      half.span,
+      'percent-of-temperature',
+      'A percentage of a temperature in °C has no meaning; give the tolerance in K.',
+    );
+  }
+  if (value.value === 0) {
+    stopAt(
+      half.span,
+      'percent-of-zero',
+      `${node.name} is 0, so a tolerance in % is 0 too; give it as a quantity or a range.`,
+    );
+  }
+  return (Math.abs(value.value) * Number(half.text)) / 100;
+}
+
+function requireSameKind(quantity: Quantity, typed: Unit, unit: Unit, name: string): void {
+  const same = typed.dimension.exponents.every(
+    (exponent, index) => exponent === unit.dimension.exponents[index],
+  );
+  if (same && typed.logarithmic === unit.logarithmic) return;
+  stopAt(
+    quantity.unitSpan,
+    'unit-mismatch',
+    `${name} is given in ${unit.text || 'no unit'}, and ${typed.text || 'no unit'} does not fit it.`,
+  );
+}
+
+function readRange(
+  node: AssumptionStatement,
+  range: Extract<ToleranceClause, { kind: 'range' }>,
+  unit: Unit,
+  value: SiQuantity,
+  units: CustomUnits,
+): ToleranceReading {
+  const [low, high] = readBounds(range.from, range.to, unit, node.name, units);
+  if (low > high)
+    stopAt(
+      range.span,
+      'reversed-range',
+      'The range runs backwards; the smaller number comes first.',
+    );
+  if (value.value < low || value.value > high) {
+    stopAt(
+      range.span,
+      'nominal-outside-range',
+      `The nominal of ${node.name}, ${node.value.text} ${node.value.unit}, is outside its range.`,
+    );
+  }
+  return { low, high, sigma: null };
+}
+
+/** The two ends of a range in SI; a bare number takes the unit of its partner, else the nominal's. */
+export function readBounds(
+  from: Quantity,
+  to: Quantity,
+  unit: Unit,
+  name: string,
+  units: CustomUnits,
+): readonly [number, number] {
+  const pick = (own: Quantity, partner: Quantity): Unit => {
+    if (own.unit !== '') return unitOfQuantity(own, units);
+    return partner.unit !== '' ? unitOfQuantity(partner, units) : unit;
+  };
+  const ends = [
+    [from, pick(from, to)],
+    [to, pick(to, from)],
+  ] as const;
+  for (const [end, typed] of ends) requireSameKind(end, typed, unit, name);
+  return [siOfQuantity(from, ends[0][1]).value, siOfQuantity(to, ends[1][1]).value];
+}
+
+const HOLDS: Readonly<Record<Sign, (low: number, high: number) => boolean>> = {
+  positive: (low) => low > 0,
+  negative: (_, high) => high < 0,
+  nonnegative: (low) => low >= 0,
+  real: () => true,
+};
+
+/** The error of a value or a tolerance that contradicts a sign statement, or null. */
+export function contradiction(
+  reading: AssumptionReading,
+  name: string,
+  sign: Sign,
+  signLine: number,
+  span: Span,
+): Problem | null {
+  const { low, high } = reading.tolerance ?? {
+    low: reading.value.value,
+    high: reading.value.value,
+  };
+  if (HOLDS[sign](low, high)) return null;
+  const typed = (si: number) => formatNumber(valueIn(si, reading.unit));
+  const what =
+    reading.tolerance === null
+      ? `is ${typed(low)} ${reading.unit.text}`.trim()
+      : `can be from ${typed(low)} to ${typed(high)} ${reading.unit.text}`.trim();
+  return errorAt(
+    span,
+    'sign-contradicted',
+    `${nameToText(name)} ${what}, which contradicts that it is ${sign} (line ${signLine}).`,
+  );
+}

@@ -1,0 +1,275 @@
+import { asRational, dependsOn, laplace, symbol, zeroRatio, type Ratio } from '../algebra/index.ts';
+import { isRefusal } from '../base/index.ts';
+import { ALWAYS, type SignalValue, type Value } from '../control/index.ts';
+import type { Argument, Parameter, WorksheetFunction } from '../functions/index.ts';
+import { formatExpression, nearestName, type Call, type Expression } from '../language/index.ts';
+import { kindInWords } from './arithmetic.ts';
+import { parameterOf, replacementsOf } from './replacements.ts';
+
+import type { LoopRecord, Meanings } from './meanings.ts';
+import { namedSignal } from './signals.ts';
+import type { Scope } from './scope.ts';
+import { sentence, stopAt } from './stop.ts';
+
+/** Calls a worksheet function on arguments that are still text. */
+export function callFunction(call: Call, scope: Scope, meanings: Meanings): Value {
+  const spec = meanings.functionNamed(call.callee);
+  if (!spec) unknownFunction(call, meanings);
+  if (spec.availability === 'later') {
+    stopAt(call.span, 'not-available-yet', `${spec.name} is not available yet.`);
+  }
+  const args = readArguments(call, spec, scope, meanings);
+  const absent = args.find((arg) => arg.kind === 'value' && arg.value.kind === 'none');
+  if (absent?.kind === 'value' && !spec.takesAbsent) return absent.value;
+  const value = spec.evaluate(args, meanings.functionContext(scope));
+  if (isRefusal(value)) stopAt(call.span, value.code, sentence(value.reason));
+  return withInherited(value, args);
+}
+
+/** Notes and conditions of the arguments travel along. */
+function withInherited(value: Value, args: readonly Argument[]): Value {
+  const notes = args.flatMap((arg) =>
+    arg.kind === 'value' ? arg.value.notes : arg.kind === 'signal' ? arg.signal.notes : [],
+  );
+  if (notes.length === 0) return value;
+  return { ...value, notes: [...new Set([...notes, ...value.notes])] };
+}
+
+function unknownFunction(call: Call, meanings: Meanings): never {
+  const near = nearestName(call.callee, [...meanings.functionNames(), ...meanings.knownNames()]);
+  stopAt(
+    call.calleeSpan,
+    'unknown-function',
+    `There is no function ${call.callee}.${near ? ` Is ${near} meant?` : ' To multiply, leave a space before the bracket.'}`,
+    near ? [{ title: `Write ${near}`, edits: [{ span: call.calleeSpan, insert: near }] }] : [],
+  );
+}
+
+function readArguments(
+  call: Call,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): Argument[] {
+  checkCount(call, spec);
+  return call.args.map((arg, index) =>
+    readArgument(parameterAt(spec, index), arg, spec, scope, meanings),
+  );
+}
+
+/** The parameter that the argument at `index` is for; the last one repeats where it is a 'rest'. */
+function parameterAt(spec: WorksheetFunction, index: number): Parameter {
+  return spec.parameters[Math.min(index, spec.parameters.length - 1)];
+}
+
+function checkCount(call: Call, spec: WorksheetFunction): void {
+  const least = spec.parameters.filter((parameter) => parameter.count === 'one').length;
+  const most = spec.parameters.some((parameter) => parameter.count === 'rest')
+    ? Infinity
+    : spec.parameters.length;
+  if (call.args.length >= least && call.args.length <= most) return;
+  const names = spec.parameters.map(parameterText).join(', ');
+  stopAt(
+    call.span,
+    'argument-count',
+    `${spec.name}(${names}) takes ${least === most ? least : most === Infinity ? `at least ${least}` : `${least} to ${most}`} ` +
+      `argument${most === 1 ? '' : 's'}, not ${call.args.length}.`,
+  );
+}
+
+function parameterText(parameter: Parameter): string {
+  return parameter.count === 'rest' ? `${parameter.name}, …` : parameter.name;
+}
+
+function readArgument(
+  parameter: Parameter,
+  arg: Expression,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): Argument {
+  switch (parameter.takes) {
+    case 'loop':
+      return { kind: 'loop', loop: loopArgument(arg, spec, scope, meanings) };
+    case 'loop or polynomial':
+      return isLoop(arg, meanings)
+        ? { kind: 'loop', loop: loopArgument(arg, spec, scope, meanings) }
+        : { kind: 'value', value: meanings.evaluate(arg, scope) };
+    case 'signal name':
+      return {
+        kind: 'name',
+        name: namedSignal(arg).name,
+        generator: symbol(namedSignal(arg).name),
+      };
+    case 'name':
+      return nameArgument(arg, meanings);
+    case 'relation':
+      return relationArgument(arg, scope, meanings);
+    case 'limit':
+      return limitArgument(arg, scope, meanings);
+    case 'rows':
+      return rowsArgument(arg, scope, meanings);
+    case 'signal':
+      return { kind: 'signal', signal: signalArgument(arg, spec, scope, meanings) };
+    case 'parameter':
+    case 'formula':
+    case 'matrix':
+    case 'any':
+      return { kind: 'value', value: valueArgument(parameter, arg, spec, scope, meanings) };
+  }
+}
+
+function valueArgument(
+  parameter: Parameter,
+  arg: Expression,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): Value {
+  const value = meanings.evaluate(arg, scope);
+  if (value.kind === 'none' || parameter.takes === 'any') return value;
+  if (parameter.takes === 'matrix') {
+    if (value.kind === 'formula')
+      return { kind: 'matrix', rows: [[value.ratio]], when: value.when, notes: value.notes };
+    if (value.kind !== 'matrix') wrongKind(arg, spec, 'a matrix', value);
+    return value;
+  }
+  if (value.kind !== 'formula') wrongKind(arg, spec, 'a formula', value);
+  if (parameter.takes === 'parameter' && dependsOn(value.ratio, laplace)) {
+    stopAt(
+      arg.span,
+      'not-a-parameter',
+      `${spec.name} acts on parameters, and \`${formatExpression(arg)}\` depends on s.`,
+    );
+  }
+  return value;
+}
+
+function wrongKind(arg: Expression, spec: WorksheetFunction, wanted: string, value: Value): never {
+  stopAt(
+    arg.span,
+    'wrong-kind',
+    `${spec.name} takes ${wanted} here, and \`${formatExpression(arg)}\` is ${kindInWords(value)}.`,
+  );
+}
+
+function isLoop(arg: Expression, meanings: Meanings): boolean {
+  if (arg.kind === 'with') return isLoop(arg.of, meanings);
+  return arg.kind === 'name' && meanings.kindOf(arg.name) === 'loop';
+}
+
+function loopArgument(
+  arg: Expression,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): LoopRecord {
+  if (arg.kind === 'with') {
+    return loopArgument(arg.of, spec, replacementsOf(arg, scope, meanings).inside, meanings);
+  }
+  if (arg.kind === 'name' && meanings.kindOf(arg.name) === 'loop')
+    return meanings.loopOf(arg.name, arg.span, scope);
+  const loops = meanings.knownNames().filter((name) => meanings.kindOf(name) === 'loop');
+  stopAt(
+    arg.span,
+    'not-a-loop',
+    `${spec.name} takes a loop here${loops.length > 0 ? ` (${loops.join(', ')})` : ''}, not \`${formatExpression(arg)}\`.`,
+  );
+}
+
+function nameArgument(arg: Expression, meanings: Meanings): Argument {
+  if (arg.kind !== 'name') {
+    stopAt(arg.span, 'not-a-name', `A name is needed here, not \`${formatExpression(arg)}\`.`);
+  }
+  const kind = meanings.kindOf(arg.name);
+  if (kind === 'loop' || kind === 'case') {
+    stopAt(arg.span, 'not-a-name', `${arg.name} is a ${kind}; a symbol is needed here.`);
+  }
+  return { kind: 'name', name: arg.name, generator: arg.name === 's' ? laplace : symbol(arg.name) };
+}
+
+function relationArgument(arg: Expression, scope: Scope, meanings: Meanings): Argument {
+  if (arg.kind === 'relation') {
+    const sides = arg.sides.map((side) => meanings.evaluate(side, scope));
+    return { kind: 'relation', sides, operators: arg.operators };
+  }
+  return { kind: 'value', value: meanings.evaluate(arg, scope) };
+}
+
+function limitArgument(arg: Expression, scope: Scope, meanings: Meanings): Argument {
+  if (arg.kind !== 'limit') {
+    stopAt(arg.span, 'no-limit', 'Say what tends to what: `limit(x as s to 0)`.');
+  }
+  const of = meanings.evaluate(arg.of, scope);
+  const variable = arg.variable === 's' ? laplace : symbol(arg.variable);
+  if (arg.to.kind === 'name' && /^(infinity|∞)$/.test(arg.to.name))
+    return { kind: 'limit', of, variable, to: 'infinity' };
+  return {
+    kind: 'limit',
+    of,
+    variable,
+    to: parameterOf(meanings.evaluate(arg.to, scope), arg.to.span),
+  };
+}
+
+function rowsArgument(arg: Expression, scope: Scope, meanings: Meanings): Argument {
+  const rows = arg.kind === 'rows' ? arg.rows : [[arg]];
+  const widths = new Set(rows.map((row) => row.length));
+  if (widths.size > 1) {
+    stopAt(
+      arg.span,
+      'ragged-matrix',
+      `The rows have ${[...widths].join(' and ')} entries; all rows need the same number.`,
+    );
+  }
+  const ratios = rows.map((row) =>
+    row.map((entry): Ratio => parameterOf(meanings.evaluate(entry, scope), entry.span)),
+  );
+  return { kind: 'value', value: { kind: 'matrix', rows: ratios, when: ALWAYS, notes: [] } };
+}
+
+function signalArgument(
+  arg: Expression,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): SignalValue {
+  const value = meanings.evaluate(arg, scope);
+  if (value.kind === 'signal') return value;
+  if (value.kind !== 'formula') wrongKind(arg, spec, 'a signal', value);
+  if (value.origin === 'transfer') transferRefused(arg, spec);
+  return signalOfTransform(value.ratio, formatExpression(arg), value);
+}
+
+function transferRefused(arg: Expression, spec: WorksheetFunction): never {
+  const text = formatExpression(arg);
+  const at = arg.span;
+  stopAt(
+    at,
+    'transfer-not-signal',
+    `${spec.name} takes a signal, and \`${text}\` is a transfer function. ` +
+      `For its gain at rest write \`dc_gain(${text})\`, for its response to a unit step \`${spec.name}(${text}/s)\`, or name a signal of a load case.`,
+    [
+      {
+        title: `Gain at rest: dc_gain(${text})`,
+        edits: [{ span: at, insert: `dc_gain(${text})` }],
+      },
+      { title: `Unit step: ${text}/s`, edits: [{ span: at, insert: `${text}/s` }] },
+    ],
+  );
+}
+
+/** A formula in s, taken as the transform of a signal, which is said. */
+function signalOfTransform(transform: Ratio, text: string, from: Value): SignalValue {
+  const note = asRational(transform) ? [] : [`\`${text}\` is taken as the transform of a signal.`];
+  return {
+    kind: 'signal',
+    name: text,
+    terms: [{ input: '', source: 'constant', transform, after: zeroRatio }],
+    inputs: [],
+    blocks: [],
+    hasDelay: false,
+    when: from.when,
+    notes: [...from.notes, ...note],
+  };
+}

@@ -1,0 +1,240 @@
+import {
+  addRatios,
+  isZeroRatio,
+  laplace,
+  mulRatios,
+  negRatio,
+  oneRatio,
+  powRatio,
+  ratioOf,
+  zeroRatio,
+  divRatios,
+  dependsOn,
+  type Ratio,
+} from '../algebra/index.ts';
+import type { Budget } from '../base/index.ts';
+import {
+  ALWAYS,
+  closeLoop,
+  transferFunction,
+  type LoopRow,
+  type SignalTerm,
+  type SignalValue,
+  type SourceKind,
+} from '../control/index.ts';
+import { sourceNamed } from '../functions/index.ts';
+import {
+  formatExpression,
+  nearestName,
+  type CaseStatement,
+  type Expression,
+  type SourceTerm,
+} from '../language/index.ts';
+import { kindInWords } from './arithmetic.ts';
+import { initialValueName } from './equations.ts';
+import { parameterOf } from './replacements.ts';
+
+import type { LoopRecord, Meanings } from './meanings.ts';
+import type { Scope } from './scope.ts';
+import { namedSignal, requireSignal } from './signals.ts';
+import { demand, stopAt } from './stop.ts';
+
+/** A load case: its loop, and what acts on each input. */
+export interface CaseRecord {
+  readonly name: string;
+  readonly loop: LoopRecord;
+  readonly acting: readonly ActingSource[];
+  /** Initial values as further inputs, named `θ(0)`. */
+  readonly starts: readonly {
+    readonly input: string;
+    readonly signal: string;
+    readonly value: Ratio;
+  }[];
+}
+
+interface ActingSource {
+  readonly input: string;
+  readonly kind: SourceKind;
+  /** Transform of the input's share. */
+  readonly transform: Ratio;
+  readonly after: Ratio;
+}
+
+/** Reads a load case; stops at unknown inputs, unknown sources and sources that are not available yet. */
+export function readCase(statement: CaseStatement, scope: Scope, meanings: Meanings): CaseRecord {
+  const loop = meanings.loopOf(statement.loop.name, statement.loop.span, scope);
+  const acting = statement.inputs.flatMap((line) => {
+    const input = requireSignal(loop, line.input, 'input');
+    return line.sources.map((term) => readSource(term, input, line.order, scope, meanings));
+  });
+  return {
+    name: statement.name,
+    loop,
+    acting,
+    starts: readStarts(statement, loop, scope, meanings),
+  };
+}
+
+function readSource(
+  term: SourceTerm,
+  input: string,
+  order: number,
+  scope: Scope,
+  meanings: Meanings,
+): ActingSource {
+  const { factor, call } = splitSource(term.source);
+  const source = sourceNamed(call.callee);
+  if (!source) unknownSource(call);
+  if (source.availability === 'later') {
+    stopAt(call.span, 'not-available-yet', `The source ${call.callee} is not available yet.`);
+  }
+  if (call.args.length !== 1) {
+    stopAt(call.span, 'argument-count', `${call.callee} takes one argument: ${source.summary}`);
+  }
+  const size = parameterOf(meanings.evaluate(call.args[0], scope), call.args[0].span);
+  if (dependsOn(size, laplace))
+    stopAt(call.args[0].span, 'not-a-parameter', 'The size of a source does not depend on s.');
+  const scale = factor ? parameterOf(meanings.evaluate(factor, scope), factor.span) : oneRatio;
+  const amount = mulRatios(term.sign < 0 ? negRatio(scale) : scale, size);
+  return {
+    input,
+    kind: source.kindAfterIntegrations(order),
+    transform: divRatios(amount, powRatio(ratioOf(laplace), source.power + order)),
+    after: term.after
+      ? parameterOf(meanings.evaluate(term.after, scope), term.after.span)
+      : zeroRatio,
+  };
+}
+
+/** `2 step(A)` is a factor and the call. */
+function splitSource(source: Expression): {
+  factor: Expression | null;
+  call: Extract<Expression, { kind: 'call' }>;
+} {
+  if (source.kind === 'call') return { factor: null, call: source };
+  if (source.kind === 'product' && !source.inverted.includes(true)) {
+    const call = source.factors.at(-1)!;
+    if (call.kind === 'call') {
+      const rest = source.factors.slice(0, -1);
+      const factor =
+        rest.length === 1 ? rest[0] : { ...source, factors: rest, inverted: rest.map(() => false) };
+      return { factor, call };
+    }
+  }
+  stopAt(
+    source.span,
+    'not-a-source',
+    `\`${formatExpression(source)}\` is not a source; for a constant load write \`step(…)\`.`,
+  );
+}
+
+function unknownSource(call: Extract<Expression, { kind: 'call' }>): never {
+  const near = nearestName(call.callee, [
+    'step',
+    'ramp',
+    'parabola',
+    'impulse',
+    'sine',
+    'noise',
+    'shaped',
+    'measured',
+  ]);
+  stopAt(
+    call.calleeSpan,
+    'unknown-source',
+    `There is no source ${call.callee}.${near ? ` Is ${near} meant?` : ''} Sources are step, ramp, parabola and impulse.`,
+    near ? [{ title: `Write ${near}`, edits: [{ span: call.calleeSpan, insert: near }] }] : [],
+  );
+}
+
+function readStarts(
+  statement: CaseStatement,
+  loop: LoopRecord,
+  scope: Scope,
+  meanings: Meanings,
+): CaseRecord['starts'] {
+  return statement.starts.map((start) => {
+    const { name } = namedSignal(start.signal);
+    const signal = requireSignal(loop, start.signal, 'any');
+    const input = initialValueName(name, start.order);
+    if (!loop.initialRows.some((row) => row.has(input))) {
+      stopAt(
+        start.span,
+        'no-initial-value',
+        `${name}${"'".repeat(start.order)} cannot start at a value of its own: no equation of ${loop.name} ` +
+          `differentiates it ${start.order + 1 === 1 ? '' : `${start.order + 1} times `}with \`'\`.`,
+      );
+    }
+    const value = meanings.evaluate(start.value, scope);
+    if (value.kind !== 'formula') {
+      stopAt(
+        start.value.span,
+        'not-a-parameter',
+        `An initial value is a parameter, not ${kindInWords(value)}.`,
+      );
+    }
+    return { input, signal, value: value.ratio };
+  });
+}
+
+/** A signal of a case: the share of every source, and of every initial value. */
+export function signalIn(
+  record: CaseRecord,
+  signal: string,
+  budget: Budget,
+  demandAt: Expression['span'],
+): SignalValue {
+  const { loop } = record;
+  const terms = record.acting.map((acting): SignalTerm => {
+    const transfer = transferRatio(loop, acting.input, signal, demandAt);
+    const { input, kind: source, after } = acting;
+    return { input, source, transform: mulRatios(transfer, acting.transform), after };
+  });
+  const initial = record.starts.map((start): SignalTerm => {
+    const transfer = initialTransfer(loop, start.input, signal, budget, demandAt);
+    const transform = mulRatios(transfer, start.value);
+    return { input: start.input, source: 'impulsive', transform, after: zeroRatio };
+  });
+  return {
+    kind: 'signal',
+    name: `${record.name}.${signal}`,
+    terms: [...terms, ...initial].filter((term) => !isZeroRatio(term.transform)),
+    inputs: loop.inputs,
+    blocks: loop.blocks(signal),
+    hasDelay: loop.hasDelay,
+    when: ALWAYS,
+    notes: [],
+  };
+}
+
+function transferRatio(
+  loop: LoopRecord,
+  input: string,
+  signal: string,
+  span: Expression['span'],
+): Ratio {
+  if (loop.inputs.includes(signal)) return input === signal ? oneRatio : zeroRatio;
+  return demand(transferFunction(loop.closed, input, signal), span).ratio;
+}
+
+/** How an initial value enters: as one more input of the loop, with the coefficients that L{x'} = sX − x(0) gives. */
+function initialTransfer(
+  loop: LoopRecord,
+  input: string,
+  signal: string,
+  budget: Budget,
+  span: Expression['span'],
+): Ratio {
+  if (loop.inputs.includes(signal)) return zeroRatio;
+  const rows: LoopRow[] = loop.rows.map((row, index) => {
+    const share = loop.initialRows[index].get(input);
+    return share ? { coefficients: new Map([...row.coefficients, [input, share]]) } : row;
+  });
+  const closed = demand(closeLoop(rows, loop.unknowns, [...loop.inputs, input], budget), span);
+  return demand(transferFunction(closed, input, signal), span).ratio;
+}
+
+/** Total transform of a signal's terms that begin at once; used where only sums matter. */
+export function totalTransform(signal: SignalValue): Ratio {
+  return signal.terms.reduce((total, term) => addRatios(total, term.transform), zeroRatio);
+}

@@ -1,0 +1,491 @@
+import {
+  dependsOn,
+  equalPolynomials,
+  equalRatios,
+  fractionOfRatio,
+  imaginary,
+  laplace,
+  ratioOf,
+  signOfRatio,
+  substituteRatio,
+  symbol,
+  symbolsOfRatio,
+  type Fraction,
+  type Generator,
+  type Ratio,
+  type Sign,
+} from '../algebra/index.ts';
+import { Budget, DEFAULT_BUDGET, isRefusal, type Refusal, type Span } from '../base/index.ts';
+import {
+  ALWAYS,
+  conditionKey,
+  expandStable,
+  readable,
+  type Condition,
+  type SignalValue,
+  type Value,
+} from '../control/index.ts';
+import { FUNCTIONS, type FunctionContext, type WorksheetFunction } from '../functions/index.ts';
+import {
+  nearestName,
+  type CaseStatement,
+  type DefinitionStatement,
+  type Expression,
+  type LoopStatement,
+  type Statement,
+} from '../language/index.ts';
+import { formulaText, type Writing } from '../present/index.ts';
+import { customUnit, parseUnit, type CustomUnits, type Unit } from '../units/index.ts';
+import { formulaValue } from './arithmetic.ts';
+import { readCase, signalIn, type CaseRecord } from './cases.ts';
+import { referencesOf, type Catalogue, type Entry } from './catalogue.ts';
+import { constantOf } from './constants.ts';
+import { evaluate } from './evaluate.ts';
+import { evaluateFraction } from './fractions.ts';
+import { readLoop } from './loops.ts';
+import type { LoopRecord, Meanings } from './meanings.ts';
+import type { Queries } from './queries.ts';
+import { BASE_SCOPE, relevantScope, type Scope } from './scope.ts';
+import { outcomeOf, Stop, stopAt, waitFor, type Outcome } from './stop.ts';
+
+/**
+ * The symbolic stage: what every name stands for in symbols, derived on demand and kept until something that it was
+ * derived from changes. The numbers of assumptions are not among that.
+ */
+export class Derivations implements Meanings {
+  constructor(private readonly queries: Queries) {}
+
+  private get catalogue(): Catalogue {
+    return this.queries.input<Catalogue>('catalogue');
+  }
+
+  evaluate(expression: Expression, scope: Scope): Value {
+    return evaluate(expression, scope, this);
+  }
+
+  evaluateFraction(expression: Expression, scope: Scope): Fraction {
+    return evaluateFraction(expression, scope, this);
+  }
+
+  kindOf(name: string): Entry['kind'] | null {
+    return this.queries.get(`kind:${name}`, () => {
+      const { entries, circular } = this.catalogue;
+      return circular.has(name) ? 'unavailable' : (entries.get(name)?.kind ?? null);
+    });
+  }
+
+  /** The statement that introduces a definition, a loop or a case. */
+  private node<T extends Statement>(name: string): T {
+    return this.queries.get(`node:${name}`, () => this.catalogue.entries.get(name)!.node as T);
+  }
+
+  /** All names that a name is derived from, itself included. */
+  reachOf(name: string): ReadonlySet<string> {
+    return this.queries.get(`reach:${name}`, () => this.collectReach(name), sameSet);
+  }
+
+  private collectReach(name: string): ReadonlySet<string> {
+    const reach = new Set([name]);
+    const { entries, circular } = this.catalogue;
+    const visit = (next: string): void => {
+      const entry = entries.get(next);
+      if (!entry || circular.has(next)) return;
+      for (const reference of referencesOf(entry, entries)) {
+        if (reach.has(reference)) continue;
+        reach.add(reference);
+        visit(reference);
+      }
+    };
+    visit(name);
+    return reach;
+  }
+
+  valueOf(name: string, span: Span, scope: Scope): Value {
+    const replaced = scope.replacements.get(name);
+    if (replaced) return replaced.value;
+    const kind = this.kindOf(name);
+    const constant = kind === null ? constantOf(name) : null;
+    if (constant) return formulaValue(constant);
+    switch (kind) {
+      case 'assumption':
+      case 'symbol':
+        return formulaValue(ratioOf(symbol(name)));
+      case 'definition':
+        return this.definitionValue(name, span, scope);
+      case 'unavailable':
+        return waitFor(name);
+      case 'loop':
+        return stopAt(
+          span,
+          'loop-as-value',
+          `${name} is a loop; ask for a transfer function with \`${name}(input -> signal)\`.`,
+        );
+      case 'case':
+        return stopAt(
+          span,
+          'case-as-value',
+          `${name} is a load case; name one of its signals, \`${name}.signal\`.`,
+        );
+      case null:
+        return this.unknownName(name, span);
+    }
+  }
+
+  private unknownName(name: string, span: Span): never {
+    const loops = this.loopsWithSignal(name);
+    if (loops.length > 0) {
+      stopAt(
+        span,
+        'signal-outside-loop',
+        `${name} is a signal of ${loops.join(' and ')}; outside the loop it is reached through a load case, \`case.${name}\`.`,
+      );
+    }
+    if (name === 't')
+      stopAt(
+        span,
+        'time-in-formula',
+        'Formulas stand in s; use `response(x)` for a function of t.',
+      );
+    const near = nearestName(name, this.knownNames());
+    stopAt(
+      span,
+      'unknown-name',
+      `Nothing introduces ${name}.${near ? ` Is ${near} meant?` : ` Give it a value (\`${name} is …\`), a definition or a sign.`}`,
+      near ? [{ title: `Write ${near}`, edits: [{ span, insert: near }] }] : [],
+    );
+  }
+
+  private definitionValue(name: string, span: Span, scope: Scope): Value {
+    const relevant = relevantScope(scope, this.reachOf(name));
+    const value = this.settle(name, span, relevant, this.definition(name, relevant));
+    if (relevant === BASE_SCOPE && this.isDerivedParameter(name))
+      return formulaValue(ratioOf(symbol(name)));
+    return value;
+  }
+
+  /** The value, or a stop: waiting where the name itself is in error, a problem here where only `with` brought it up. */
+  private settle<T>(name: string, span: Span, scope: Scope, outcome: Outcome<T>): T {
+    if (outcome.ok) return outcome.value;
+    if (scope === BASE_SCOPE) return waitFor(name);
+    if (outcome.waitsFor) return waitFor(outcome.waitsFor);
+    throw new Stop(
+      {
+        ...outcome.problem!,
+        span,
+        message: `In ${name}, derived anew: ${outcome.problem!.message}`,
+        fixes: [],
+      },
+      null,
+    );
+  }
+
+  /** A definition as derived in a scope, parameters of its own kept as symbols. */
+  definition(name: string, scope: Scope): Outcome<Value> {
+    return this.queries.get(
+      `definition:${name}@${scope.key}`,
+      () => {
+        const { formula, span } = this.node<DefinitionStatement>(name);
+        return outcomeOf(span, () => evaluate(formula, scope, this));
+      },
+      sameOutcome,
+    );
+  }
+
+  /** A definition without s and signals: it stays a symbol in derivations. */
+  isDerivedParameter(name: string): boolean {
+    return this.queries.get(
+      `parameter:${name}`,
+      () => this.kindOf(name) === 'definition' && this.derivedRatio(name) !== null,
+    );
+  }
+
+  /** What a derived parameter stands for, in assumptions and other derived parameters; null if it is not one. */
+  private derivedRatio(name: string): Ratio | null {
+    for (const reached of this.reachOf(name)) {
+      const kind = this.kindOf(reached);
+      if (kind === 'loop' || kind === 'case') return null;
+    }
+    const outcome = this.definition(name, BASE_SCOPE);
+    if (!outcome.ok || outcome.value.kind !== 'formula' || outcome.value.when !== ALWAYS)
+      return null;
+    const { ratio } = outcome.value;
+    return dependsOn(ratio, laplace) || dependsOn(ratio, imaginary) ? null : ratio;
+  }
+
+  /** The ratio that a symbol abbreviates, or null for assumptions and free symbols. */
+  abbreviated(name: string): Ratio | null {
+    return this.kindOf(name) === 'definition' && this.isDerivedParameter(name)
+      ? this.derivedRatio(name)
+      : null;
+  }
+
+  /** The formula with derived parameters replaced by what they stand for, down to assumptions. */
+  open(ratio: Ratio): Ratio {
+    let opened = ratio;
+    for (;;) {
+      const map = new Map<Generator, Ratio>();
+      for (const g of symbolsOfRatio(opened)) {
+        const meaning = this.abbreviated(g.name);
+        if (meaning) map.set(g, meaning);
+      }
+      if (map.size === 0) return opened;
+      const next = substituteRatio(opened, map);
+      if (isRefusal(next)) return opened;
+      opened = next;
+    }
+  }
+
+  fractionOf(name: string, span: Span, scope: Scope): Fraction {
+    const replaced = scope.replacements.get(name);
+    if (replaced?.fraction) return replaced.fraction;
+    const value = this.valueOf(name, span, scope);
+    if (value.kind !== 'formula') {
+      stopAt(
+        span,
+        'not-a-coefficient',
+        `${name} is not a formula, so it cannot be a coefficient of a loop.`,
+      );
+    }
+    if (this.kindOf(name) !== 'definition' || replaced) return fractionOfRatio(value.ratio);
+    const relevant = relevantScope(scope, this.reachOf(name));
+    if (relevant === BASE_SCOPE && this.isDerivedParameter(name))
+      return fractionOfRatio(value.ratio);
+    return this.queries.get(`fraction:${name}@${relevant.key}`, () =>
+      evaluateFraction(this.node<DefinitionStatement>(name).formula, relevant, this),
+    );
+  }
+
+  loopOf(name: string, span: Span, scope: Scope): LoopRecord {
+    const kind = this.kindOf(name);
+    if (kind === 'unavailable') waitFor(name);
+    if (kind !== 'loop') stopAt(span, 'not-a-loop', `${name} is not a loop of this worksheet.`);
+    const relevant = relevantScope(scope, this.reachOf(name));
+    return this.settle(name, span, relevant, this.loop(name, relevant));
+  }
+
+  /** A loop as read and closed in a scope. */
+  loop(name: string, scope: Scope): Outcome<LoopRecord> {
+    return this.queries.get(`loop:${name}@${scope.key}`, () => {
+      const statement = this.node<LoopStatement>(name);
+      const source = {
+        loopStatement: (used: string, span: Span) => this.usedLoop(used, span, scope),
+        isCoefficient: (candidate: string) =>
+          this.kindOf(candidate) !== null || constantOf(candidate) !== null,
+      };
+      return outcomeOf(statement.span, () =>
+        readLoop(statement, scope, this, source, new Budget(DEFAULT_BUDGET)),
+      );
+    });
+  }
+
+  private usedLoop(name: string, span: Span, scope: Scope): LoopStatement {
+    this.loopOf(name, span, scope);
+    return this.node<LoopStatement>(name);
+  }
+
+  caseOf(name: string, span: Span, scope: Scope): CaseRecord {
+    const relevant = relevantScope(scope, this.reachOf(name));
+    return this.settle(name, span, relevant, this.loadCase(name, relevant));
+  }
+
+  /** A load case as read in a scope. */
+  loadCase(name: string, scope: Scope): Outcome<CaseRecord> {
+    return this.queries.get(`case:${name}@${scope.key}`, () => {
+      const statement = this.node<CaseStatement>(name);
+      return outcomeOf(statement.span, () => readCase(statement, scope, this));
+    });
+  }
+
+  signalOf(caseName: string, path: string, span: Span, scope: Scope): SignalValue {
+    const record = this.caseOf(caseName, span, scope);
+    const names = [...record.loop.inputs, ...record.loop.unknowns];
+    if (!names.includes(path)) {
+      const near = nearestName(path, names);
+      stopAt(
+        span,
+        'unknown-signal',
+        `${path} is not a signal of ${record.loop.name}; its signals are ${names.join(', ')}.${near ? ` Is ${near} meant?` : ''}`,
+        near
+          ? [
+              {
+                title: `Write ${caseName}.${near}`,
+                edits: [{ span, insert: `${caseName}.${near}` }],
+              },
+            ]
+          : [],
+      );
+    }
+    const relevant = relevantScope(scope, this.reachOf(caseName));
+    return this.queries.get(`signal:${caseName}.${path}@${relevant.key}`, () =>
+      signalIn(record, path, new Budget(DEFAULT_BUDGET), span),
+    );
+  }
+
+  requireReplaceable(name: string, span: Span): void {
+    const kind = this.kindOf(name);
+    if (kind === 'assumption' || kind === 'definition' || kind === 'symbol') return;
+    if (kind === 'unavailable') waitFor(name);
+    if (kind === null) this.unknownName(name, span);
+    stopAt(
+      span,
+      'not-replaceable',
+      `${name} is a ${kind}; \`with\` replaces assumptions and definitions.`,
+    );
+  }
+
+  substitute(ratio: Ratio, by: ReadonlyMap<Generator, Ratio>): Ratio | Refusal {
+    return substituteRatio(ratio, by, new Budget(DEFAULT_BUDGET));
+  }
+
+  functionNamed(name: string): WorksheetFunction | undefined {
+    return FUNCTIONS.get(name);
+  }
+
+  functionNames(): readonly string[] {
+    return [...FUNCTIONS.keys()];
+  }
+
+  functionContext(scope: Scope): FunctionContext {
+    const writing = this.writing();
+    return {
+      signOf: (g) => (scope.replacements.has(g.name) ? 'unknown' : this.signOf(g)),
+      budget: new Budget(DEFAULT_BUDGET),
+      open: (ratio) => this.open(ratio),
+      tuned: writing.tuned,
+      readable: (condition) => readable(condition, writing.signOf, writing.tuned),
+      write: (ratio) => formulaText(ratio, writing),
+      writing,
+    };
+  }
+
+  /** The sign of a generator that the worksheet's sign statements give. */
+  readonly signOf = (g: Generator): Sign => {
+    if (g.kind !== 'symbol') return signOfFunction(g, this.signOf);
+    return this.queries.get(`sign:${g.name}`, () => {
+      const meaning = this.declaredSign(g.name) ?? null;
+      if (meaning) return meaning;
+      const ratio = this.abbreviated(g.name);
+      return ratio ? signOfRatio(ratio, this.signOf) : 'unknown';
+    });
+  };
+
+  private declaredSign(name: string): Sign | null {
+    const sign = this.catalogue.signs.get(name)?.sign;
+    return sign === undefined || sign === 'real' ? null : sign;
+  }
+
+  /** How formulas of this worksheet are written. */
+  writing(): Writing {
+    return this.queries.get('writing', () => {
+      const { order, tunes } = this.queries.get(
+        'introductions',
+        () => introductions(this.catalogue),
+        sameIntroductions,
+      );
+      const place = new Map(order.map((name, index) => [name, index] as const));
+      return {
+        order: (g) => place.get(g.name) ?? Infinity,
+        tuned: tunes.map(symbol),
+        signOf: this.signOf,
+      };
+    });
+  }
+
+  /** Stability conditions written out as inequalities. */
+  expandStability(condition: Condition): Condition {
+    return expandStable(condition, this.signOf, new Budget(DEFAULT_BUDGET));
+  }
+
+  customUnits(): CustomUnits {
+    return this.queries.get('custom-units', () => readCustomUnits(this.catalogue), sameUnits);
+  }
+
+  knownNames(): readonly string[] {
+    return this.queries.get('names', () => [...this.catalogue.entries.keys()], sameList);
+  }
+
+  loopsWithSignal(name: string): readonly string[] {
+    return [...this.catalogue.entries]
+      .filter(([, entry]) => entry.kind === 'loop')
+      .map(([loop]) => loop)
+      .filter((loop) => {
+        const outcome = this.kindOf(loop) === 'loop' ? this.loop(loop, BASE_SCOPE) : null;
+        return outcome?.ok && [...outcome.value.inputs, ...outcome.value.unknowns].includes(name);
+      });
+  }
+}
+
+function signOfFunction(g: Generator, signOf: (g: Generator) => Sign): Sign {
+  if (g.kind === 'constant') return 'positive';
+  if (g.kind !== 'function') return 'unknown';
+  if (g.name === 'exp') return dependsOnS(g) ? 'unknown' : 'positive';
+  if (g.name === 'sqrt')
+    return signOfRatio(g.args![0], signOf) === 'positive' ? 'positive' : 'nonnegative';
+  if (g.name === 'abs') return signOfRatio(g.args![0], signOf) === 'zero' ? 'zero' : 'nonnegative';
+  if (g.name === 'nominal') return signOfRatio(g.args![0], signOf);
+  return 'unknown';
+}
+
+function dependsOnS(g: Generator): boolean {
+  return (
+    g.kind === 'function' &&
+    g.args!.some((arg) => dependsOn(arg, laplace) || dependsOn(arg, imaginary))
+  );
+}
+
+interface Introductions {
+  readonly order: readonly string[];
+  readonly tunes: readonly string[];
+}
+
+function introductions(catalogue: Catalogue): Introductions {
+  return { order: [...catalogue.order.keys()], tunes: [...catalogue.tunes.keys()] };
+}
+
+function sameIntroductions(a: Introductions, b: Introductions): boolean {
+  return sameList(a.order, b.order) && sameList(a.tunes, b.tunes);
+}
+
+function readCustomUnits(catalogue: Catalogue): CustomUnits {
+  const units = new Map<string, Unit>();
+  for (const { node } of catalogue.customUnits) {
+    const base = parseUnit(node.value.unit, units);
+    if (isRefusal(base)) continue;
+    const unit = customUnit(node.name, node.value.text, base);
+    if (!isRefusal(unit)) units.set(node.name, unit);
+  }
+  return units;
+}
+
+function sameUnits(a: CustomUnits, b: CustomUnits): boolean {
+  const same = (x: Unit, y: Unit | undefined) => y?.number === x.number && y.text === x.text;
+  return a.size === b.size && [...a].every(([name, unit]) => same(unit, b.get(name)));
+}
+
+function sameList(a: readonly string[], b: readonly string[]): boolean {
+  return a.length === b.length && a.every((item, index) => item === b[index]);
+}
+
+function sameSet(a: ReadonlySet<string>, b: ReadonlySet<string>): boolean {
+  return a.size === b.size && [...a].every((item) => b.has(item));
+}
+
+/** Whether two outcomes are the same for everything that reads them. */
+export function sameOutcome(a: Outcome<Value>, b: Outcome<Value>): boolean {
+  return a.ok && b.ok && sameValue(a.value, b.value);
+}
+
+function sameValue(a: Value, b: Value): boolean {
+  if (a.kind !== 'formula' || b.kind !== 'formula') return a === b;
+  const hidden =
+    a.hidden === b.hidden ||
+    (a.hidden !== null && b.hidden !== null && equalPolynomials(a.hidden, b.hidden));
+  return (
+    hidden &&
+    equalRatios(a.ratio, b.ratio) &&
+    a.origin === b.origin &&
+    a.form === b.form &&
+    conditionKey(a.when) === conditionKey(b.when) &&
+    sameList(a.notes, b.notes)
+  );
+}

@@ -1,0 +1,657 @@
+import { errorAt, warningAt, type Problem, type Span } from '../base/index.ts';
+import type { UnitRule, WorksheetFunction } from '../functions/index.ts';
+import { sourceNamed } from '../functions/index.ts';
+import {
+  formatExpression,
+  nameToText,
+  type Call,
+  type CaseStatement,
+  type Expression,
+  type LoopStatement,
+  type Product,
+  type Quantity,
+  type RequireStatement,
+  type Statement,
+  type Sum,
+} from '../language/index.ts';
+import { isRefusal } from '../base/index.ts';
+import { parseUnit, type CustomUnits } from '../units/index.ts';
+import {
+  ANGULAR,
+  ANGULAR_FREQUENCY,
+  angleOf,
+  cyclesOf,
+  cyclesToAngle,
+  divMeasures,
+  fitsAnywhere,
+  FREE,
+  Inference,
+  isRate,
+  LAPLACE,
+  measureOfUnit,
+  measureText,
+  mulMeasures,
+  NUMBER,
+  powMeasure,
+  PURE,
+  TIME,
+  unknownMeasure,
+  type Measure,
+} from './measures.ts';
+import { memberPath } from './paths.ts';
+
+/** What the check of dimensions reads of a worksheet. None of it is a number. */
+export interface DimensionSource {
+  readonly statements: readonly Statement[];
+  entry(name: string): Statement | null;
+  /** The typed unit of an assumption, '' for none; or of a `has unit` statement; null for a symbol without either. */
+  unitText(name: string): string | null;
+  signalsOf(loop: LoopStatement): ReadonlySet<string>;
+  functionNamed(name: string): WorksheetFunction | undefined;
+  readonly customUnits: CustomUnits;
+}
+
+/** What came out of the check. */
+export interface DimensionReport {
+  readonly problems: ReadonlyMap<Statement, readonly Problem[]>;
+  /** The measure of a formula, or null where nothing gives one. */
+  measureOf(expression: Expression): Measure | null;
+  /** The measure of a name, also of one that was inferred. */
+  measureOfName(name: string): Measure | null;
+}
+
+/**
+ * Checks the dimensions of every formula and equation, and infers those of signals and of symbols without a value.
+ * A bare number, or a name without a unit, fits wherever it stands.
+ */
+export function checkDimensions(source: DimensionSource): DimensionReport {
+  const check = new DimensionCheck(source);
+  check.run();
+  return check.report();
+}
+
+/** The loop whose signals are names in the expression, with the prefix that its signals have in the whole. */
+interface Surroundings {
+  readonly loop: LoopStatement;
+  readonly owner: string;
+  readonly prefix: string;
+}
+
+class DimensionCheck {
+  private readonly inference = new Inference();
+  private readonly measures = new Map<Expression, Measure>();
+  private readonly names = new Map<string, Measure>();
+  private readonly problems = new Map<Statement, Problem[]>();
+  private readonly started = new Set<string>();
+  private statement: Statement | null = null;
+
+  constructor(private readonly source: DimensionSource) {}
+
+  run(): void {
+    const order: Statement['kind'][] = [
+      'loop',
+      'case',
+      'definition',
+      'formula',
+      'require',
+      'draw',
+      'explain',
+    ];
+    for (const kind of order) {
+      for (const statement of this.source.statements) {
+        if (statement.kind === kind) this.within(statement, () => this.checkStatement(statement));
+      }
+    }
+  }
+
+  report(): DimensionReport {
+    const settled = (measure: Measure | undefined): Measure | null => {
+      if (!measure || fitsAnywhere(measure)) return null;
+      const known = this.inference.settle(measure);
+      return known.unknowns.size === 0 ? known : null;
+    };
+    return {
+      problems: this.problems,
+      measureOf: (expression) => settled(this.measures.get(expression)),
+      measureOfName: (name) => settled(this.names.get(name)),
+    };
+  }
+
+  private within(statement: Statement, check: () => void): void {
+    const outer = this.statement;
+    this.statement = statement;
+    check();
+    this.statement = outer;
+  }
+
+  private complain(problem: Problem): void {
+    const list = this.problems.get(this.statement!) ?? [];
+    list.push(problem);
+    this.problems.set(this.statement!, list);
+  }
+
+  private checkStatement(statement: Statement): void {
+    switch (statement.kind) {
+      case 'loop':
+        return this.checkLoop(statement, { loop: statement, owner: statement.name, prefix: '' });
+      case 'case':
+        return this.checkCase(statement);
+      case 'definition':
+        this.measureOfName(statement.name);
+        return;
+      case 'formula':
+      case 'explain':
+        this.measure(statement.formula, null);
+        return;
+      case 'require':
+        return this.checkRequirement(statement);
+      case 'draw':
+        for (const part of [...statement.of, ...statement.where]) this.measure(part, null);
+        return;
+    }
+  }
+
+  private checkLoop(loop: LoopStatement, surroundings: Surroundings): void {
+    for (const use of loop.uses) {
+      const inner = this.source.entry(use.loop.name);
+      if (inner?.kind !== 'loop' || inner === loop) continue;
+      const prefix = use.prefix ? `${surroundings.prefix}${use.prefix.name}.` : surroundings.prefix;
+      this.checkLoop(inner, { loop: inner, owner: surroundings.owner, prefix });
+    }
+    for (const { left, right, span } of loop.equations) {
+      this.agree(
+        left,
+        this.measure(left, surroundings),
+        right,
+        this.measure(right, surroundings),
+        span,
+        'equation',
+      );
+    }
+  }
+
+  private signal(owner: string, path: string): Measure {
+    return unknownMeasure(`signal ${owner}.${path}`);
+  }
+
+  private checkCase(statement: CaseStatement): void {
+    const loop = this.source.entry(statement.loop.name);
+    if (loop?.kind !== 'loop') return;
+    for (const line of statement.inputs) {
+      const wanted = divMeasures(
+        this.signal(loop.name, line.input.name),
+        powMeasure(TIME, line.order),
+      );
+      for (const term of line.sources) {
+        const measure = this.sourceMeasure(term.source);
+        if (measure && !this.inference.unify(wanted, measure))
+          this.sourceConflict(term.source, line.input.name, measure, wanted);
+        if (term.after) this.expect(term.after, TIME, 'a time');
+      }
+    }
+    for (const start of statement.starts) {
+      const path = memberPath(start.signal.kind === 'derivative' ? start.signal.of : start.signal);
+      if (path === null) continue;
+      const wanted = divMeasures(this.signal(loop.name, path), powMeasure(TIME, start.order));
+      this.agree(
+        start.signal,
+        wanted,
+        start.value,
+        this.measure(start.value, null),
+        start.span,
+        'value',
+      );
+    }
+  }
+
+  /** A source's size has the unit of its input, times s for each integration. */
+  private sourceMeasure(source: Expression): Measure | null {
+    if (source.kind === 'product') {
+      const call = source.factors.at(-1)!;
+      const inner = this.sourceMeasure(call);
+      const scale = source.factors.slice(0, -1).map((factor) => this.measure(factor, null));
+      return inner && scale.reduce(mulMeasures, inner);
+    }
+    if (source.kind !== 'call' || source.args.length === 0) return null;
+    const spec = sourceNamed(source.callee);
+    const size = this.measure(source.args[0], null);
+    if (!spec || spec.availability === 'later') return null;
+    return mulMeasures(size, powMeasure(TIME, spec.power - 1));
+  }
+
+  private sourceConflict(
+    source: Expression,
+    input: string,
+    measure: Measure,
+    wanted: Measure,
+  ): void {
+    const [have, need] = [this.inference.settle(measure), this.inference.settle(wanted)];
+    this.complain(
+      errorAt(
+        source.span,
+        'dimension',
+        `The input ${nameToText(input)} is in ${measureText(need)}, and \`${formatExpression(source)}\` gives ${measureText(have)}.`,
+      ),
+    );
+  }
+
+  private expect(expression: Expression, wanted: Measure, words: string): void {
+    const measure = this.measure(expression, null);
+    if (this.inference.unify(measure, wanted)) return;
+    const text = `\`${formatExpression(expression)}\` is in ${measureText(this.inference.settle(measure))}, and ${words} is needed here.`;
+    this.complain(errorAt(expression.span, 'dimension', text));
+  }
+
+  private checkRequirement(statement: RequireStatement): void {
+    this.measure(statement.condition, null);
+    for (const relation of relationsIn(statement.condition)) {
+      relation.sides
+        .slice(1)
+        .forEach((limit, index) => this.checkBareLimit(relation.sides[index], limit));
+    }
+  }
+
+  private checkBareLimit(left: Expression, limit: Expression): void {
+    const number = limit.kind === 'negation' ? limit.of : limit;
+    if (number.kind !== 'number' || Number(number.text) === 0) return;
+    const measure = this.measures.get(left);
+    if (!measure || fitsAnywhere(measure)) return;
+    const known = this.inference.settle(measure);
+    const text = measureText(known);
+    if (known.unknowns.size > 0 || text === 'a pure number') return;
+    const fixed = `${formatExpression(limit)} ${text}`;
+    this.complain(
+      errorAt(
+        limit.span,
+        'bare-limit',
+        `\`${formatExpression(left)}\` is in ${text}, and the limit ${formatExpression(limit)} has no unit; write \`${fixed}\`.`,
+        [{ title: `Write ${fixed}`, edits: [{ span: limit.span, insert: fixed }] }],
+      ),
+    );
+  }
+
+  private measureOfName(name: string): Measure {
+    const known = this.names.get(name);
+    if (known) return known;
+    if (this.started.has(name)) return FREE;
+    this.started.add(name);
+    const measure = this.introducedMeasure(name);
+    this.names.set(name, measure);
+    return measure;
+  }
+
+  private introducedMeasure(name: string): Measure {
+    const entry = this.source.entry(name);
+    if (entry?.kind === 'definition') {
+      let measure = FREE;
+      this.within(entry, () => {
+        measure = this.measure(entry.formula, null);
+      });
+      return measure;
+    }
+    const unit = this.source.unitText(name);
+    if (unit === null) return entry ? unknownMeasure(`symbol ${name}`) : FREE;
+    return unit === '' ? FREE : this.unitMeasure(unit);
+  }
+
+  private unitMeasure(text: string): Measure {
+    const unit = parseUnit(text, this.source.customUnits);
+    return isRefusal(unit) ? FREE : measureOfUnit(unit);
+  }
+
+  private measure(expression: Expression, around: Surroundings | null): Measure {
+    const measure = this.compute(expression, around);
+    if (around === null || around.prefix === '') this.measures.set(expression, measure);
+    return measure;
+  }
+
+  private compute(expression: Expression, around: Surroundings | null): Measure {
+    const inner = (part: Expression) => this.measure(part, around);
+    switch (expression.kind) {
+      case 'number':
+        return Number(expression.text) === 0 ? FREE : NUMBER;
+      case 'quantity':
+        return this.quantityMeasure(expression);
+      case 'name':
+        return this.nameMeasure(expression.name, around);
+      case 'member':
+        return this.memberMeasure(expression, around);
+      case 'derivative':
+        return divMeasures(inner(expression.of), powMeasure(TIME, expression.order));
+      case 'evaluation':
+        inner(expression.at);
+        return this.nameMeasure(expression.name, around);
+      case 'call':
+        return this.callMeasure(expression, around);
+      case 'sum':
+        return this.sumMeasure(expression, inner);
+      case 'product':
+        return productMeasure(expression, inner);
+      case 'negation':
+        return inner(expression.of);
+      case 'power':
+        return this.powerMeasure(expression.base, expression.exponent, inner);
+      case 'relation':
+        expression.sides.forEach(inner);
+        expression.sides.slice(1).forEach((side, index) => {
+          const left = expression.sides[index];
+          this.agree(left, inner(left), side, inner(side), expression.span, 'relation');
+        });
+        return PURE;
+      case 'logical':
+        expression.operands.forEach(inner);
+        return PURE;
+      case 'not':
+        inner(expression.of);
+        return PURE;
+      case 'with':
+        return this.withMeasure(expression, inner);
+      case 'in-unit':
+        return this.shownIn(expression, inner(expression.of));
+      case 'limit':
+        return inner(expression.of);
+      case 'rows':
+        expression.rows.flat().forEach(inner);
+        return FREE;
+      case 'arrow':
+      case 'text':
+        return FREE;
+    }
+  }
+
+  private quantityMeasure(quantity: Quantity): Measure {
+    return quantity.unit === '' ? NUMBER : this.unitMeasure(quantity.unit);
+  }
+
+  private nameMeasure(name: string, around: Surroundings | null): Measure {
+    if (around && this.source.signalsOf(around.loop).has(name))
+      return this.signal(around.owner, around.prefix + name);
+    if (this.source.entry(name) === null && this.source.unitText(name) === null)
+      return constantMeasure(name);
+    return this.measureOfName(name);
+  }
+
+  private memberMeasure(
+    member: Extract<Expression, { kind: 'member' }>,
+    around: Surroundings | null,
+  ): Measure {
+    const path = memberPath(member);
+    if (around && path !== null) return this.signal(around.owner, around.prefix + path);
+    const names = [member.name];
+    let root: Expression = member.of;
+    while (root.kind === 'member' || root.kind === 'with') {
+      if (root.kind === 'member') names.unshift(root.name);
+      else this.checkReplacements(root);
+      root = root.of;
+    }
+    if (root.kind !== 'name') return FREE;
+    const entry = this.source.entry(root.name);
+    return entry?.kind === 'case' ? this.signal(entry.loop.name, names.join('.')) : FREE;
+  }
+
+  private callMeasure(call: Call, around: Surroundings | null): Measure {
+    const loop = this.source.entry(call.callee);
+    if (loop?.kind === 'loop') return this.transferMeasure(call, loop.name);
+    const args = call.args.map((arg) => this.measure(arg, around));
+    const spec = this.source.functionNamed(call.callee);
+    return spec ? this.ruleMeasure(spec, spec.unit, call, args) : FREE;
+  }
+
+  private transferMeasure(call: Call, loop: string): Measure {
+    const [arrow] = call.args;
+    if (arrow?.kind !== 'arrow' || arrow.to.length !== 1) return FREE;
+    const end = (expression: Expression): Measure => {
+      if (expression.kind === 'derivative')
+        return divMeasures(end(expression.of), powMeasure(TIME, expression.order));
+      const path = memberPath(expression);
+      return path === null ? FREE : this.signal(loop, path);
+    };
+    return divMeasures(end(arrow.to[0]), end(arrow.from));
+  }
+
+  private ruleMeasure(
+    spec: WorksheetFunction,
+    rule: UnitRule,
+    call: Call,
+    args: readonly Measure[],
+  ): Measure {
+    const [first = FREE, second = FREE] = args;
+    switch (rule) {
+      case 'first':
+        return first;
+      case 'common':
+        call.args
+          .slice(1)
+          .forEach((arg, index) =>
+            this.agree(call.args[0], first, arg, args[index + 1], call.span, 'relation'),
+          );
+        return args.find((arg) => !fitsAnywhere(arg)) ?? first;
+      case 'signal':
+        return isTransform(call.args[0]) ? divMeasures(first, TIME) : first;
+      case 'root':
+        return powMeasure(first, 1 / 2);
+      case 'number':
+        return PURE;
+      case 'pure':
+        this.expectPure(spec.name, call.args[0], first);
+        return spec.name === 'atan' ? ANGULAR : PURE;
+      case 'time':
+        return TIME;
+      case 'angular frequency':
+        return ANGULAR_FREQUENCY;
+      case 'quotient':
+        return divMeasures(first, second);
+      case 'second':
+        return second;
+      case 'unchecked':
+        return FREE;
+    }
+  }
+
+  private expectPure(name: string, arg: Expression, measure: Measure): void {
+    if (this.inference.unify(measure, PURE)) return;
+    const text = measureText(this.inference.settle(measure));
+    this.complain(
+      errorAt(
+        arg.span,
+        'dimension',
+        `${name} takes a pure number or an angle, and \`${formatExpression(arg)}\` is in ${text}.`,
+      ),
+    );
+  }
+
+  /** Terms agree with one of them; the one that holds an angle stands for the sum, so that `rad` is kept. */
+  private sumMeasure(sum: Sum, inner: (part: Expression) => Measure): Measure {
+    const terms = sum.terms.map((term) => ({ term, measure: inner(term) }));
+    const carrying = terms.filter(({ measure }) => !fitsAnywhere(measure));
+    if (carrying.length === 0) return terms.some(({ measure }) => measure.free) ? FREE : NUMBER;
+    const lead = carrying.find(({ measure }) => angleOf(measure) !== 0) ?? carrying[0];
+    for (const other of carrying) {
+      if (other !== lead)
+        this.agree(lead.term, lead.measure, other.term, other.measure, sum.span, 'sum');
+    }
+    return lead.measure;
+  }
+
+  private powerMeasure(
+    base: Expression,
+    exponent: Expression,
+    inner: (part: Expression) => Measure,
+  ): Measure {
+    const measure = inner(base);
+    inner(exponent);
+    const value = exponentValue(exponent);
+    if (value !== null) return powMeasure(measure, value);
+    return fitsAnywhere(measure) ? measure : FREE;
+  }
+
+  private withMeasure(
+    expression: Extract<Expression, { kind: 'with' }>,
+    inner: (part: Expression) => Measure,
+  ): Measure {
+    this.checkReplacements(expression);
+    return inner(expression.of);
+  }
+
+  private checkReplacements(expression: Extract<Expression, { kind: 'with' }>): void {
+    for (const replacement of expression.replacements) {
+      const value = this.measure(replacement.value, null);
+      const entry = this.source.entry(replacement.name);
+      if (!entry || entry.kind === 'loop' || entry.kind === 'case') continue;
+      const wanted = this.measureOfName(replacement.name);
+      if (this.inference.unify(wanted, value)) continue;
+      const [need, have] = [wanted, value].map((measure) =>
+        measureText(this.inference.settle(measure)),
+      );
+      this.complain(
+        errorAt(
+          replacement.span,
+          'dimension',
+          `${nameToText(replacement.name)} is in ${need}, and its replacement is in ${have}.`,
+        ),
+      );
+    }
+  }
+
+  private shownIn(expression: Extract<Expression, { kind: 'in-unit' }>, of: Measure): Measure {
+    const unit = this.unitMeasure(expression.unit);
+    if (this.inference.unify(of, unit)) return fitsAnywhere(of) ? unit : of;
+    this.complain(
+      errorAt(
+        expression.unitSpan,
+        'dimension',
+        `\`${formatExpression(expression.of)}\` is in ${measureText(this.inference.settle(of))}, so it cannot be shown in ${expression.unit}.`,
+      ),
+    );
+    return of;
+  }
+
+  private agree(
+    left: Expression,
+    leftMeasure: Measure,
+    right: Expression,
+    rightMeasure: Measure,
+    span: Span,
+    where: 'sum' | 'relation' | 'equation' | 'value',
+  ): void {
+    if (!this.inference.unify(leftMeasure, rightMeasure)) {
+      const [a, b] = [leftMeasure, rightMeasure].map((measure) =>
+        measureText(this.inference.settle(measure)),
+      );
+      this.complain(errorAt(span, 'dimension', conflictText(where, left, a, right, b)));
+      return;
+    }
+    this.checkFrequencies(left, leftMeasure, right, rightMeasure);
+  }
+
+  /** A frequency in Hz beside an angular frequency or s lacks the factor 2π (ISO 80000-3). */
+  private checkFrequencies(
+    left: Expression,
+    leftMeasure: Measure,
+    right: Expression,
+    rightMeasure: Measure,
+  ): void {
+    const [a, b] = [this.inference.settle(leftMeasure), this.inference.settle(rightMeasure)];
+    if (!isRate(a) || !isRate(b) || fitsAnywhere(a) || fitsAnywhere(b)) return;
+    const isCyclic = (measure: Measure) => cyclesOf(measure) === 1;
+    const isAngular = (measure: Measure) =>
+      cyclesOf(measure) === 0 && (angleOf(measure) === 1 || measure.laplace);
+    const cyclic = isCyclic(a) && isAngular(b) ? left : isCyclic(b) && isAngular(a) ? right : null;
+    if (!cyclic || cyclic.kind === 'quantity') return;
+    const text = formatExpression(cyclic);
+    this.complain(
+      warningAt(
+        cyclic.span,
+        'frequency-without-2pi',
+        `\`${text}\` is a frequency in Hz, and the other side is an angular frequency; formulas do not convert: write \`2 pi ${text}\`.`,
+        [{ title: `Write 2 pi ${text}`, edits: [{ span: cyclic.span, insert: `2 pi ${text}` }] }],
+      ),
+    );
+  }
+}
+
+function conflictText(
+  where: string,
+  left: Expression,
+  a: string,
+  right: Expression,
+  b: string,
+): string {
+  const [l, r] = [formatExpression(left), formatExpression(right)];
+  switch (where) {
+    case 'sum':
+      return `\`${l} + ${r}\` adds ${a} to ${b}.`;
+    case 'equation':
+      return `The two sides do not fit: \`${l}\` is in ${a}, and \`${r}\` is in ${b}.`;
+    case 'value':
+      return `\`${l}\` is in ${a}, and \`${r}\` is in ${b}.`;
+    default:
+      return `\`${l}\` is in ${a} and cannot be compared with \`${r}\`, which is in ${b}.`;
+  }
+}
+
+function constantMeasure(name: string): Measure {
+  if (name === 's') return LAPLACE;
+  return name === 'j' || name === 'pi' || name === 'π' ? PURE : FREE;
+}
+
+/** `2 pi f1`: π turns cycles into an angle. */
+function productMeasure(product: Product, inner: (part: Expression) => Measure): Measure {
+  const measure = product.factors
+    .map(inner)
+    .reduce((total, factor, index) =>
+      product.inverted[index] ? divMeasures(total, factor) : mulMeasures(total, factor),
+    );
+  const hasPi = product.factors.some(
+    (factor) => factor.kind === 'name' && /^(pi|π)$/.test(factor.name),
+  );
+  const onlyPi =
+    hasPi &&
+    !product.factors.some(
+      (factor) =>
+        factor.kind !== 'number' && !(factor.kind === 'name' && /^(pi|π)$/.test(factor.name)),
+    );
+  if (onlyPi) return { ...measure, bare: true, rigid: false };
+  return hasPi ? cyclesToAngle(measure) : measure;
+}
+
+function exponentValue(exponent: Expression): number | null {
+  if (exponent.kind === 'number') return Number(exponent.text);
+  if (exponent.kind === 'negation') {
+    const inner = exponentValue(exponent.of);
+    return inner === null ? null : -inner;
+  }
+  if (exponent.kind === 'product' && exponent.factors.length === 2 && exponent.inverted[1]) {
+    const [top, bottom] = exponent.factors.map(exponentValue);
+    return top !== null && bottom !== null && bottom !== 0 ? top / bottom : null;
+  }
+  return null;
+}
+
+function relationsIn(condition: Expression): Extract<Expression, { kind: 'relation' }>[] {
+  if (condition.kind === 'relation') return [condition];
+  if (condition.kind === 'logical') return condition.operands.flatMap(relationsIn);
+  if (condition.kind === 'not') return relationsIn(condition.of);
+  return [];
+}
+
+/** Whether a signal argument is a formula in s taken as a transform, rather than a signal of a case. */
+function isTransform(expression: Expression): boolean {
+  switch (expression.kind) {
+    case 'member':
+      return false;
+    case 'derivative':
+    case 'negation':
+    case 'with':
+    case 'in-unit':
+      return isTransform(expression.of);
+    case 'sum':
+      return expression.terms.every(isTransform);
+    case 'product':
+      return expression.factors.every(isTransform);
+    case 'call':
+      return expression.args.length === 0 || isTransform(expression.args[0]);
+    default:
+      return true;
+  }
+}

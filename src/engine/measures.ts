@@ -1,0 +1,202 @@
+import { dimensionText, type Dimension, type Unit } from '../units/index.ts';
+
+/**
+ * What the check of dimensions knows of an expression.
+ *
+ * `exponents` are those of the seven SI base units, then of the plane angle and of the cycle. Angle and cycle count as
+ * 1: they are kept for display and for the rule on frequencies, and never make two measures disagree. `unknowns` are
+ * exponents of dimensions still to be inferred (signals, symbols without a value).
+ */
+export interface Measure {
+  readonly exponents: readonly number[];
+  readonly unknowns: ReadonlyMap<string, number>;
+  /** Holds a name without a unit: fits wherever it stands. */
+  readonly free: boolean;
+  /** Holds a bare number. */
+  readonly bare: boolean;
+  /** Holds a quantity with a unit, so that a bare number beside it is a pure number. */
+  readonly rigid: boolean;
+  /** Holds s, which is an angular frequency. */
+  readonly laplace: boolean;
+}
+
+const BASES = 7;
+const ANGLE = 7;
+const CYCLE = 8;
+const NO_UNKNOWNS: ReadonlyMap<string, number> = new Map();
+
+function measure(exponents: readonly number[], more: Partial<Measure> = {}): Measure {
+  return {
+    exponents,
+    unknowns: NO_UNKNOWNS,
+    free: false,
+    bare: false,
+    rigid: false,
+    laplace: false,
+    ...more,
+  };
+}
+
+const NONE: readonly number[] = Array.from({ length: BASES + 2 }, () => 0);
+
+function exponentsOf(base: number, value: number, angle = 0): number[] {
+  return NONE.map((_, index) => (index === base ? value : index === ANGLE ? angle : 0));
+}
+
+const SECOND = 2;
+
+export const NUMBER = measure(NONE, { bare: true });
+export const PURE = measure(NONE, { rigid: true });
+export const FREE = measure(NONE, { free: true });
+export const ANGULAR = measure(exponentsOf(ANGLE, 1), { rigid: true });
+export const TIME = measure(exponentsOf(SECOND, 1), { rigid: true });
+export const ANGULAR_FREQUENCY = measure(exponentsOf(SECOND, -1, 1), { rigid: true });
+export const LAPLACE = measure(exponentsOf(SECOND, -1), { laplace: true });
+
+/** The measure of a unit. */
+export function measureOfUnit(unit: Unit): Measure {
+  return measure([...unit.dimension.exponents, unit.angle, unit.cycles], { rigid: true });
+}
+
+/** A dimension still to be inferred. */
+export function unknownMeasure(name: string): Measure {
+  return measure(NONE, { unknowns: new Map([[name, 1]]) });
+}
+
+/** The measure of a product. */
+export function mulMeasures(a: Measure, b: Measure): Measure {
+  return {
+    exponents: a.exponents.map((exponent, index) => exponent + b.exponents[index]),
+    unknowns: addUnknowns(a.unknowns, b.unknowns),
+    free: a.free || b.free,
+    bare: a.bare || b.bare,
+    rigid: a.rigid || b.rigid,
+    laplace: a.laplace || b.laplace,
+  };
+}
+
+function addUnknowns(
+  a: ReadonlyMap<string, number>,
+  b: ReadonlyMap<string, number>,
+): ReadonlyMap<string, number> {
+  if (a.size === 0) return b;
+  if (b.size === 0) return a;
+  const sum = new Map(a);
+  for (const [name, exponent] of b) {
+    const total = (sum.get(name) ?? 0) + exponent;
+    if (total === 0) sum.delete(name);
+    else sum.set(name, total);
+  }
+  return sum;
+}
+
+/** The measure of a power. */
+export function powMeasure(a: Measure, exponent: number): Measure {
+  return {
+    ...a,
+    exponents: a.exponents.map((own) => own * exponent),
+    unknowns:
+      exponent === 0
+        ? NO_UNKNOWNS
+        : new Map([...a.unknowns].map(([name, own]) => [name, own * exponent])),
+  };
+}
+
+export function divMeasures(a: Measure, b: Measure): Measure {
+  return mulMeasures(a, powMeasure(b, -1));
+}
+
+/** 2π f: the factor turns cycles into angles. */
+export function cyclesToAngle(a: Measure): Measure {
+  const exponents = a.exponents.map((own, index) =>
+    index === ANGLE ? own + a.exponents[CYCLE] : index === CYCLE ? 0 : own,
+  );
+  return { ...a, exponents };
+}
+
+/** Whether it fits wherever it stands: a name without a unit, or a bare number with nothing rigid beside it. */
+export function fitsAnywhere(a: Measure): boolean {
+  return a.free || (a.bare && !a.rigid);
+}
+
+export function angleOf(a: Measure): number {
+  return a.exponents[ANGLE];
+}
+
+export function cyclesOf(a: Measure): number {
+  return a.exponents[CYCLE];
+}
+
+/** The dimension, where nothing is left to infer. */
+export function dimensionIn(a: Measure): Dimension {
+  return { exponents: a.exponents.slice(0, BASES) };
+}
+
+/** Whether it is a frequency or a rate: 1/s. */
+export function isRate(a: Measure): boolean {
+  return (
+    a.unknowns.size === 0 &&
+    a.exponents.slice(0, BASES).every((own, index) => own === (index === SECOND ? -1 : 0))
+  );
+}
+
+/** The measure in words: `N m`, `rad`, `a pure number`. */
+export function measureText(a: Measure): string {
+  const text = dimensionText(dimensionIn(a), {
+    angle: a.exponents[ANGLE],
+    cycles: a.exponents[CYCLE],
+  });
+  return text === '' || text === '1' ? 'a pure number' : text;
+}
+
+/** The dimensions inferred so far, and the one way to add to them. */
+export class Inference {
+  private readonly bound = new Map<string, Measure>();
+
+  /** The measure with everything put in that is known. */
+  settle(a: Measure): Measure {
+    let settled = a;
+    for (
+      let known = firstKnown(settled, this.bound);
+      known;
+      known = firstKnown(settled, this.bound)
+    ) {
+      const [name, exponent] = known;
+      const unknowns = new Map(settled.unknowns);
+      unknowns.delete(name);
+      const value = powMeasure(this.bound.get(name)!, exponent);
+      const sum = mulMeasures({ ...settled, unknowns }, value);
+      settled = {
+        ...sum,
+        free: settled.free,
+        bare: settled.bare,
+        rigid: settled.rigid,
+        laplace: settled.laplace,
+      };
+    }
+    return settled;
+  }
+
+  /** Makes two measures agree by inferring an unknown; false where they disagree. */
+  unify(a: Measure, b: Measure): boolean {
+    if (fitsAnywhere(a) || fitsAnywhere(b)) return true;
+    const difference = this.settle(divMeasures(a, b));
+    const [unknown] = difference.unknowns;
+    if (!unknown)
+      return difference.exponents.slice(0, BASES).every((exponent) => Math.abs(exponent) < 1e-9);
+    const [name, exponent] = unknown;
+    const others = new Map(difference.unknowns);
+    others.delete(name);
+    const value = powMeasure(
+      { ...difference, unknowns: others, free: false, bare: false },
+      -1 / exponent,
+    );
+    this.bound.set(name, { ...value, rigid: true, laplace: false });
+    return true;
+  }
+}
+
+function firstKnown(a: Measure, bound: ReadonlyMap<string, Measure>): [string, number] | undefined {
+  for (const unknown of a.unknowns) if (bound.has(unknown[0])) return unknown;
+  return undefined;
+}

@@ -1,0 +1,46 @@
+import { laplace, type Generator, type Ratio } from '../algebra/index.ts';
+import type { Span } from '../base/index.ts';
+import type { Value } from '../control/index.ts';
+import { formatExpression, type Expression, type With } from '../language/index.ts';
+import { kindInWords } from './arithmetic.ts';
+import type { Meanings } from './meanings.ts';
+import { narrowScope, valueKey, type ReplacementValue, type Scope } from './scope.ts';
+import { stopAt } from './stop.ts';
+
+/** The scope inside a `with`, and the values given to s in it. */
+export function replacementsOf(
+  expression: With,
+  scope: Scope,
+  meanings: Meanings,
+): { inside: Scope; point: ReadonlyMap<Generator, Ratio> } {
+  const replacements = new Map<string, ReplacementValue>();
+  const point = new Map<Generator, Ratio>();
+  for (const replacement of expression.replacements) {
+    if (replacement.name === 's') {
+      point.set(
+        laplace,
+        parameterOf(meanings.evaluate(replacement.value, scope), replacement.value.span),
+      );
+      continue;
+    }
+    meanings.requireReplaceable(replacement.name, replacement.nameSpan);
+    replacements.set(replacement.name, replacementValue(replacement.value, scope, meanings));
+  }
+  return { inside: replacements.size === 0 ? scope : narrowScope(scope, replacements), point };
+}
+
+function replacementValue(
+  expression: Expression,
+  scope: Scope,
+  meanings: Meanings,
+): ReplacementValue {
+  const value = meanings.evaluate(expression, scope);
+  const fraction = value.kind === 'formula' ? meanings.evaluateFraction(expression, scope) : null;
+  return { value, fraction, key: valueKey(value, `${formatExpression(expression)}@${scope.key}`) };
+}
+
+/** The ratio of a formula; stops where the value is something else. */
+export function parameterOf(value: Value, span: Span): Ratio {
+  if (value.kind === 'formula') return value.ratio;
+  stopAt(span, 'not-a-formula', `A formula is needed here, not ${kindInWords(value)}.`);
+}

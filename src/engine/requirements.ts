@@ -1,0 +1,244 @@
+import { YES, type Condition, type Value } from '../control/index.ts';
+import type { Expression, Relation, RequireStatement } from '../language/index.ts';
+import { formatExpression } from '../language/index.ts';
+import { conditionText, expressionLatex } from '../present/index.ts';
+import { formatNumber, formatValue, unitText, valueIn, type Unit } from '../units/index.ts';
+import type { Derivations } from './derivations.ts';
+import { unitFor, type Display } from './display.ts';
+import { failureOf } from './failures.ts';
+import type { Evaluated, Numbers, Points, Subject } from './numbers.ts';
+import type { RequirementContent, Verdict } from './report.ts';
+import { tolerancedNames } from './results.ts';
+import { BASE_SCOPE } from './scope.ts';
+import { isMonotoneCondition, sampleBox, type ToleranceSample } from './tolerance.ts';
+
+/** What a verdict is made from. */
+export interface RequirementRequest {
+  readonly statement: RequireStatement;
+  readonly subject: Subject;
+  /** How the limit is shown. */
+  readonly display: Display;
+  readonly hints: readonly Unit[];
+}
+
+type Content = RequirementContent;
+
+/** The verdict on a requirement at nominal values and over the tolerances, with its margin and its worst point. */
+export function requirementContent(
+  request: RequirementRequest,
+  derivations: Derivations,
+  numbers: Numbers,
+): Content {
+  const { subject } = request;
+  const compiled = numbers.compiled(subject, numbers.zeroScope(numbers.zeros(subject)));
+  if (!compiled)
+    return settled(request, 'undecided', [
+      'With the values that are exactly 0 left out, this cannot be derived.',
+    ]);
+  if (compiled.value.kind === 'none')
+    return settled(request, 'not met', [`No value: ${compiled.value.reason}`]);
+  if (compiled.value.kind !== 'condition')
+    return settled(request, 'undecided', ['A requirement is a condition.']);
+  const missing = numbers.missing(compiled);
+  if (missing.length > 0) return undecidedContent(request, compiled.value, missing, derivations);
+  return judge(request, compiled.value, derivations, numbers);
+}
+
+/** A requirement that a problem stops. */
+export function stoppedRequirement(statement: RequireStatement): Content {
+  return { ...blank(statement), verdict: 'undecided', notes: [], shown: 'undecided' };
+}
+
+function blank(statement: RequireStatement) {
+  return {
+    label: statement.comment,
+    text: formatExpression(statement.condition),
+    latex: expressionLatex(statement.condition),
+    nominal: null,
+    worst: null,
+    limit: null,
+    operator: relationOf(statement.condition)?.operators[0] ?? null,
+    unit: null,
+    how: 'proved' as const,
+    n: null,
+    at: null,
+    waitsFor: null,
+    dependsOn: [],
+  };
+}
+
+function settled(request: RequirementRequest, verdict: Verdict, notes: readonly string[]): Content {
+  return {
+    ...blank(request.statement),
+    verdict,
+    notes,
+    shown: verdict,
+    dependsOn: [...request.subject.reach],
+  };
+}
+
+/** Conditions on symbols without values are undecided, and shown reduced. */
+function undecidedContent(
+  request: RequirementRequest,
+  value: Extract<Value, { kind: 'condition' }>,
+  missing: readonly string[],
+  derivations: Derivations,
+): Content {
+  const { readable, writing } = derivations.functionContext(BASE_SCOPE);
+  const reduced = conditionText(readable(derivations.expandStability(value.condition)), writing);
+  const words = `${missing.join(', ')} ${missing.length === 1 ? 'has' : 'have'} no value`;
+  return settled(request, 'undecided', [`${words}; it holds if ${reduced}.`]);
+}
+
+/** The one relation that a requirement is, or null for other conditions. */
+export function relationOf(condition: Expression): Relation | null {
+  return condition.kind === 'relation' && condition.operators.length === 1 ? condition : null;
+}
+
+function judge(
+  request: RequirementRequest,
+  value: Extract<Value, { kind: 'condition' }>,
+  derivations: Derivations,
+  numbers: Numbers,
+): Content {
+  const { subject } = request;
+  const base = numbers.compiled(subject, BASE_SCOPE);
+  const names = base ? tolerancedNames(base, numbers) : [];
+  const monotone =
+    isMonotoneCondition(value.condition, names, numbers, derivations) &&
+    isMonotoneCondition(value.when, names, numbers, derivations);
+  const sample = sampleBox(names, monotone, numbers);
+  const evaluated = numbers.evaluateSubject(subject, sample);
+  if (!evaluated)
+    return settled(request, 'undecided', ['Somewhere in the tolerances this cannot be derived.']);
+  const holds = evaluated.verdicts.map((verdict, i) =>
+    verdict === YES && evaluated.exists[i] ? 1 : 0,
+  );
+  const worst = worstPoint(value.condition, evaluated, holds);
+  const verdict = verdictOf(holds);
+  const numbersShown = relationNumbers(request, value.condition, evaluated, worst);
+  return {
+    ...blank(request.statement),
+    verdict,
+    ...numbersShown,
+    how: sample.method,
+    n: sample.method === 'sampled' ? sample.n : null,
+    at: names.length > 0 ? placeOf(sample, worst) : null,
+    notes: notesOf(value, verdict, sample, worst, derivations, numbers),
+    shown: numbersShown.shown ?? verdict,
+    dependsOn: [...subject.reach],
+  };
+}
+
+function verdictOf(holds: Uint8Array): Verdict {
+  if (!holds.includes(0)) return 'met';
+  return holds[0] ? 'met at nominal only' : 'not met';
+}
+
+/** The point with the least margin of a relation; of another condition the first at which it fails, else the nominal. */
+function worstPoint(
+  condition: Condition,
+  { columns, exists }: Evaluated,
+  holds: Uint8Array,
+): number {
+  const absent = exists.indexOf(0);
+  if (absent >= 0) return absent;
+  if (condition.kind !== 'compare' || condition.operator === '=' || condition.operator === '!=') {
+    return Math.max(0, holds.indexOf(0));
+  }
+  const sign = condition.operator === '<' || condition.operator === '<=' ? 1 : -1;
+  let [worst, least] = [0, Infinity];
+  for (let i = 0; i < holds.length; i++) {
+    const margin = sign * (columns[1][i] - columns[0][i]);
+    if (margin < least) [worst, least] = [i, margin];
+  }
+  return worst;
+}
+
+function placeOf(sample: ToleranceSample, index: number): Record<string, number> {
+  return Object.fromEntries(sample.names.map((name) => [name, sample.columns.get(name)![index]]));
+}
+
+type Numbers3 = Pick<Content, 'nominal' | 'worst' | 'limit' | 'unit'> & { shown?: string };
+
+/** Nominal, worst and limit of a relation, in the limit's unit. */
+function relationNumbers(
+  request: RequirementRequest,
+  condition: Condition,
+  evaluated: Evaluated,
+  worst: number,
+): Numbers3 {
+  const none: Numbers3 = { nominal: null, worst: null, limit: null, unit: null };
+  if (condition.kind !== 'compare' || !relationOf(request.statement.condition)) return none;
+  const [left, right] = evaluated.columns;
+  const limit = right[0];
+  if (!Number.isFinite(limit)) return none;
+  const unit = unitFor(
+    request.display,
+    Math.max(Math.abs(limit), limit === 0 ? Math.abs(left[0]) : 0),
+    request.hints,
+  );
+  const inUnit = (si: number): number | null => {
+    const number = unit ? valueIn(si, unit) : si;
+    return Number.isFinite(number) ? number : null;
+  };
+  const ends = [left[0], evaluated.exists[worst] ? left[worst] : NaN].map(inUnit);
+  return {
+    nominal: ends[0],
+    worst: ends[1],
+    limit: inUnit(limit),
+    unit: unit && unitText(unit) !== '' ? unit.text : null,
+    shown: shownMargin(ends, limit, unit),
+  };
+}
+
+function shownMargin(
+  [nominal, worst]: readonly (number | null)[],
+  limit: number,
+  unit: Unit | null,
+): string {
+  const write = (number: number | null) => (number === null ? 'no value' : formatNumber(number, 3));
+  const end = unit ? formatValue(limit, unit, { digits: 3 }) : formatNumber(limit, 3);
+  const values = nominal === worst ? write(nominal) : `${write(nominal)}, worst ${write(worst)},`;
+  return `${values} of ${end}`;
+}
+
+function notesOf(
+  value: Extract<Value, { kind: 'condition' }>,
+  verdict: Verdict,
+  sample: ToleranceSample,
+  worst: number,
+  derivations: Derivations,
+  numbers: Numbers,
+): string[] {
+  const notes = [...value.notes];
+  if (verdict !== 'met') {
+    const at = pointAt(sample, worst);
+    const absent = failureOf(value.when, numbers, derivations.writing(), at);
+    const why = absent
+      ? `there is no value: ${absent}`
+      : failureOf(stableParts(value.condition), numbers, derivations.writing(), at);
+    if (why)
+      notes.push(
+        verdict === 'not met'
+          ? `At the nominal or at the worst point ${why}.`
+          : `At the worst point ${why}.`,
+      );
+  }
+  if (verdict === 'met' && sample.method === 'sampled')
+    notes.push(`met (sampled, n = ${sample.n}): looked at, not proved.`);
+  return notes;
+}
+
+/** Only failures of stability are put in words; those of a relation are seen in its numbers. */
+function stableParts(condition: Condition): Condition {
+  if (condition.kind === 'compare') return { kind: 'truth', value: true };
+  return condition;
+}
+
+function pointAt(sample: ToleranceSample, index: number): Points {
+  const columns = new Map(
+    [...sample.columns].map(([name, column]) => [name, column.slice(index, index + 1)] as const),
+  );
+  return { count: 1, columns };
+}

@@ -1,0 +1,373 @@
+import {
+  coefficientsIn,
+  dependsOn,
+  isConstantPolynomial,
+  laplace,
+  ratioFromPolynomial,
+  rationalToNumber,
+  asRational,
+} from '../algebra/index.ts';
+import type { ArrayValue, FormulaValue, PartsValue, RootsValue, Value } from '../control/index.ts';
+import { compileRatios, YES } from '../control/index.ts';
+import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
+import { polynomialRoots } from '../numeric/index.ts';
+import {
+  conditionText,
+  formulaLatex,
+  formulaText,
+  jsonComplex,
+  jsonNumber,
+  jsonRoots,
+  matrixRows,
+  rootsLatex,
+  routhRows,
+  valueLatex,
+  valueText,
+  type Writing,
+} from '../present/index.ts';
+import type { Unit } from '../units/index.ts';
+import type { Derivations } from './derivations.ts';
+import { coherentText, showSpan, showValue, type Display } from './display.ts';
+import { failureOf } from './failures.ts';
+import {
+  asMagnitude,
+  plainName,
+  type Compiled,
+  type Evaluated,
+  type Numbers,
+  type Points,
+  type Subject,
+} from './numbers.ts';
+import type { ResultContent, ResultKind, SpanContent } from './report.ts';
+import { BASE_SCOPE } from './scope.ts';
+import { isMonotone, sampleBox } from './tolerance.ts';
+
+const NOMINAL: Points = { count: 1, columns: new Map() };
+
+/** What a result is made from. */
+export interface ResultRequest {
+  readonly name: string | null;
+  readonly expression: Expression;
+  readonly subject: Subject;
+  readonly display: Display;
+  readonly hints: readonly Unit[];
+  readonly notes: readonly string[];
+}
+
+/** The content of a result that can be derived: formula, value, span, parts. */
+export function resultContent(
+  value: Value,
+  request: ResultRequest,
+  derivations: Derivations,
+  numbers: Numbers,
+): ResultContent {
+  const writing = derivations.writing();
+  const nominal = nominalValue(request.subject, numbers, writing);
+  const formula = formulaOf(value, writing);
+  const { display } = request;
+  const shown = shownText(nominal.value, display, request.hints);
+  const parts = partsOf(value, numbers, writing);
+  return {
+    name: request.name,
+    nameLatex: request.name && nameToLatex(request.name),
+    kind: kindOf(value),
+    formula,
+    latex: latexOf(value, numbers, writing),
+    value: nominal.value,
+    unit: typeof nominal.value === 'boolean' ? null : coherentText(display.measure),
+    shown,
+    span: typeof nominal.value === 'number' ? spanOf(request, numbers, derivations) : null,
+    notes: [...new Set([...value.notes, ...request.notes, ...display.notes, ...nominal.notes])],
+    parts,
+    figure: null,
+    state: isTrivial(value, request, formula) ? 'trivial' : 'ready',
+    waitsFor: null,
+    dependsOn: [...request.subject.reach],
+  };
+}
+
+/** The derived form as re-readable text; null where there is nothing to read. */
+function formulaOf(value: Value, writing: Writing): string | null {
+  if (value.kind === 'none') return null;
+  if (value.kind === 'formula') return formulaText(value.ratio, writing, ...formArguments(value));
+  return valueText(value, writing);
+}
+
+/** The content of a result that a problem stops. */
+export function erroneousContent(name: string | null, kind: ResultKind): ResultContent {
+  return {
+    name,
+    nameLatex: name && nameToLatex(name),
+    kind,
+    formula: null,
+    latex: null,
+    value: null,
+    unit: null,
+    shown: null,
+    span: null,
+    notes: [],
+    parts: null,
+    figure: null,
+    state: 'error',
+    waitsFor: null,
+    dependsOn: [],
+  };
+}
+
+function kindOf(value: Value): ResultKind {
+  switch (value.kind) {
+    case 'formula':
+      if (!dependsOn(value.ratio, laplace)) return 'value';
+      return isConstantPolynomial(value.ratio.den) ? 'polynomial' : 'transfer';
+    case 'condition':
+      return 'condition';
+    case 'array':
+      return 'array';
+    case 'signal':
+      return 'transfer';
+    case 'parts':
+      return 'table';
+    case 'text':
+      return 'text';
+    case 'none':
+    case 'matrix':
+    case 'roots':
+      return 'value';
+  }
+}
+
+/** A plain number is not repeated under its source. */
+function isTrivial(value: Value, request: ResultRequest, formula: string | null): boolean {
+  if (value.kind !== 'formula' || !request.name) return false;
+  return (
+    request.expression.kind === 'number' ||
+    (dependsOn(value.ratio, laplace) && formula === formatExpression(request.expression))
+  );
+}
+
+interface NominalValue {
+  readonly value: ResultContent['value'];
+  readonly notes: readonly string[];
+}
+
+const NO_VALUE: NominalValue = { value: null, notes: [] };
+
+function nominalValue(subject: Subject, numbers: Numbers, writing: Writing): NominalValue {
+  const compiled = numbers.compiled(subject, numbers.zeroScope(numbers.zeros(subject)));
+  if (!compiled)
+    return {
+      value: null,
+      notes: ['With the values that are exactly 0 left out, this cannot be derived.'],
+    };
+  const { value } = compiled;
+  if (value.kind === 'none') return { value: null, notes: [`No value: ${value.reason}`] };
+  if (value.kind !== 'formula' && value.kind !== 'condition') return NO_VALUE;
+  if (value.kind === 'formula' && !compiled.ratios) return NO_VALUE;
+  const missing = numbers.missing(compiled);
+  if (missing.length > 0)
+    return {
+      value: null,
+      notes: [
+        `No number: ${missing.join(', ')} ${missing.length === 1 ? 'has' : 'have'} no value.`,
+      ],
+    };
+  const evaluated = numbers.evaluate(compiled, NOMINAL);
+  if (evaluated.exists[0]) return { value: numberIn(compiled, evaluated), notes: [] };
+  return absentAtNominal(subject, compiled, numbers, writing);
+}
+
+function numberIn(compiled: Compiled, evaluated: Evaluated): ResultContent['value'] {
+  if (compiled.value.kind === 'condition') return evaluated.verdicts[0] === YES;
+  const [output] = compiled.ratios!.outputs;
+  const re = evaluated.columns[output.re][0];
+  return output.im === null
+    ? jsonNumber(re)
+    : jsonComplex({ re, im: evaluated.columns[output.im][0] });
+}
+
+/** Where the formula divides by 0 at the nominal, it is derived anew in exact numbers before it is given up. */
+function absentAtNominal(
+  subject: Subject,
+  compiled: Compiled,
+  numbers: Numbers,
+  writing: Writing,
+): NominalValue {
+  const failure = failureOf(compiled.value.when, numbers, writing);
+  if (failure) return { value: null, notes: [`No value at the nominal: ${failure}.`] };
+  const scope = numbers.exactScope(subject);
+  const exact = scope && numbers.compiled(subject, scope);
+  if (exact?.value.kind === 'none')
+    return { value: null, notes: [`No value at the nominal: ${exact.value.reason}`] };
+  if (exact?.value.kind === 'formula' && exact.ratios && numbers.missing(exact).length === 0) {
+    const evaluated = numbers.evaluate(exact, NOMINAL);
+    if (evaluated.exists[0])
+      return {
+        value: numberIn(exact, evaluated),
+        notes: ['Derived anew at the nominal values, where the formula divides by 0.'],
+      };
+  }
+  return {
+    value: null,
+    notes: ['No value at the nominal: the formula divides by 0 there, or is not real.'],
+  };
+}
+
+function shownText(
+  value: ResultContent['value'],
+  display: Display,
+  hints: readonly Unit[],
+): string | null {
+  if (value === null) return null;
+  if (typeof value === 'boolean') return value ? 'holds' : 'does not hold';
+  if (typeof value === 'number') return showValue(value, display, hints);
+  const [re, im] = value;
+  return `${showValue(re, display, hints)} ${im < 0 ? '-' : '+'} j ${showValue(Math.abs(im), display, hints)}`;
+}
+
+/** The toleranced names among the inputs of a subject. */
+export function tolerancedNames(compiled: Compiled, numbers: Numbers): string[] {
+  const moving = compiled.inputs.filter((input) => plainName(input) === input);
+  return moving.filter((name) => numbers.bounds(name) !== null);
+}
+
+function spanOf(
+  request: ResultRequest,
+  numbers: Numbers,
+  derivations: Derivations,
+): SpanContent | null {
+  const compiled = numbers.compiled(request.subject, BASE_SCOPE);
+  if (!compiled || compiled.value.kind !== 'formula' || !compiled.ratios) return null;
+  const names = tolerancedNames(compiled, numbers);
+  if (names.length === 0 || compiled.ratios.outputs[0].im !== null) return null;
+  const magnitude = asMagnitude(compiled.value.ratio);
+  const monotone = isMonotone(
+    magnitude?.inner ?? compiled.value.ratio,
+    names,
+    numbers,
+    derivations,
+  );
+  const sample = sampleBox(names, monotone, numbers);
+  const evaluated = numbers.evaluateSubject(request.subject, sample);
+  if (!evaluated || evaluated.exists.includes(0)) return null;
+  const column = evaluated.columns[0];
+  let [low, high] = [Infinity, -Infinity];
+  for (const value of column) {
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  if (magnitude && sample.method === 'corners' && changesSign(magnitude.inner, sample, numbers)) {
+    if (magnitude.factor > 0) low = 0;
+    else high = 0;
+  }
+  const n = sample.method === 'sampled' ? sample.n : null;
+  return {
+    low,
+    high,
+    how: sample.method,
+    n,
+    shown: showSpan(low, high, request.display, request.hints),
+  };
+}
+
+/** A magnitude is 0 somewhere between corners of opposite sign. */
+function changesSign(inner: FormulaValue['ratio'], sample: Points, numbers: Numbers): boolean {
+  const { tape, inputs, outputs } = compileRatios([inner], numbers.resolve);
+  const column = tape.evaluateBatch(numbers.inputs(inputs, sample), sample.count)[outputs[0].re];
+  return column.some((value) => value <= 0) && column.some((value) => value >= 0);
+}
+
+/** Where in the tolerances a value does not exist: the first such point, in words. */
+export function absentPlace(
+  request: ResultRequest,
+  numbers: Numbers,
+): Readonly<Record<string, number>> | null {
+  const compiled = numbers.compiled(request.subject, BASE_SCOPE);
+  if (!compiled) return null;
+  const names = tolerancedNames(compiled, numbers);
+  if (names.length === 0) return null;
+  const sample = sampleBox(names, false, numbers);
+  const evaluated = numbers.evaluateSubject(request.subject, sample);
+  const index = evaluated ? evaluated.exists.indexOf(0) : -1;
+  if (index < 0) return null;
+  return Object.fromEntries(names.map((name) => [name, sample.columns.get(name)![index]]));
+}
+
+function latexOf(value: Value, numbers: Numbers, writing: Writing): string {
+  if (value.kind === 'roots') {
+    const roots = rootNumbers(value, numbers);
+    return roots ? rootsLatex(roots) : valueLatex(value, writing);
+  }
+  if (value.kind === 'formula' && value.form)
+    return formulaLatex(value.ratio, writing, ...formArguments(value));
+  return valueLatex(value, writing);
+}
+
+/** How `expand`, `factor` and `collect` ask a formula to be written. */
+export function formArguments(
+  value: FormulaValue,
+): [shape?: 'readable' | 'expanded' | 'factored', main?: typeof laplace] {
+  if (value.form?.kind === 'expanded') return ['expanded'];
+  if (value.form?.kind === 'factored') return ['factored'];
+  return value.form?.kind === 'collected' ? ['readable', value.form.by] : [];
+}
+
+function rootNumbers(value: RootsValue, numbers: Numbers) {
+  const coefficients = [...coefficientsIn(value.polynomial, laplace)]
+    .reverse()
+    .map(ratioFromPolynomial);
+  const { tape, inputs, outputs } = compileRatios(coefficients, numbers.resolve);
+  if (inputs.some((input) => numbers.nominal(plainName(input)) === null)) return null;
+  const column = tape.evaluate(inputs.map((input) => numbers.nominal(plainName(input))!));
+  const values = outputs.map((output) => column[output.re]);
+  return values.every(Number.isFinite) ? polynomialRoots(values) : null;
+}
+
+/** The parts of a result, as plain data for the page and for `check --json`. */
+function partsOf(value: Value, numbers: Numbers, writing: Writing): unknown {
+  switch (value.kind) {
+    case 'array':
+      return arrayParts(value, writing);
+    case 'roots': {
+      const roots = rootNumbers(value, numbers);
+      return roots && jsonRoots(roots);
+    }
+    case 'matrix':
+      return { rows: matrixRows(value.rows, writing) };
+    case 'parts':
+      return listParts(value, numbers, writing);
+    case 'none':
+      return (
+        value.growth && {
+          growth: { rate: formulaText(value.growth.rate, writing), power: value.growth.power },
+        }
+      );
+    default:
+      return null;
+  }
+}
+
+function arrayParts(value: ArrayValue, writing: Writing): unknown {
+  const { routh } = value;
+  const conditions = routh.conditions.map((condition) => conditionText(condition, writing));
+  return { rows: routhRows(routh, writing), conditions, counts: routh.counts };
+}
+
+function listParts(value: PartsValue, numbers: Numbers, writing: Writing): unknown {
+  return {
+    joined: value.joined,
+    items: value.parts.map((part) => ({
+      name: part.name,
+      formula: valueText(part.value, writing),
+      latex: valueLatex(part.value, writing),
+      value: partNumber(part.value, numbers),
+      reason: part.value.kind === 'none' ? part.value.reason : null,
+    })),
+  };
+}
+
+function partNumber(value: Value, numbers: Numbers): number | null {
+  if (value.kind !== 'formula' || dependsOn(value.ratio, laplace)) return null;
+  const exact = asRational(value.ratio);
+  const number = exact ? rationalToNumber(exact) : numbers.valueOfRatio(value.ratio);
+  return number === null ? null : jsonNumber(number);
+}

@@ -1,0 +1,179 @@
+import {
+  derivativeRatio,
+  dependsOn,
+  generatorsOfRatio,
+  numberToRational,
+  ratioFromRational,
+  signOfPolynomial,
+  signOfRatio,
+  substituteRatio,
+  subRatios,
+  symbol,
+  type Generator,
+  type Ratio,
+  type Sign,
+} from '../algebra/index.ts';
+import { Budget, BudgetExceeded, isRefusal } from '../base/index.ts';
+import { stabilityConditions, type Condition } from '../control/index.ts';
+import { latinHypercube, seededRandom } from '../numeric/index.ts';
+import type { Derivations } from './derivations.ts';
+import { asMagnitude, type Numbers, type Points } from './numbers.ts';
+
+/** How the values over the tolerances were found. */
+export type Method = 'proved' | 'corners' | 'sampled';
+
+/** The points of a tolerance box that are looked at, the first being the nominal. */
+export interface ToleranceSample extends Points {
+  readonly names: readonly string[];
+  readonly method: Method;
+  /** Points besides the nominal; null where nothing is toleranced. */
+  readonly n: number | null;
+}
+
+/** All corners are visited up to this many toleranced names; beyond it, corners are drawn at random too. */
+const MOST_CORNER_NAMES = 10;
+const SAMPLES = 2000;
+const SEED = 20260101;
+/** Work that may be spent on proving that a formula is monotone. */
+const PROOF_BUDGET = 400_000;
+
+/**
+ * The points at which a quantity is judged over its tolerances: the corners alone where it is proved monotone in every
+ * toleranced name, otherwise the corners and a seeded Latin hypercube.
+ */
+export function sampleBox(
+  names: readonly string[],
+  monotone: boolean,
+  numbers: Numbers,
+): ToleranceSample {
+  if (names.length === 0) return { names, count: 1, columns: new Map(), method: 'proved', n: null };
+  const corners = cornerCount(names.length);
+  const method: Method = monotone && names.length <= MOST_CORNER_NAMES ? 'corners' : 'sampled';
+  const samples = method === 'corners' ? 0 : SAMPLES;
+  const count = 1 + corners + samples;
+  const random = seededRandom(SEED);
+  const cube = latinHypercube(random, names.length, samples);
+  const columns = new Map<string, Float64Array>();
+  names.forEach((name, k) => {
+    const [low, high] = numbers.bounds(name)!;
+    const column = new Float64Array(count);
+    column[0] = numbers.nominal(name)!;
+    for (let i = 0; i < corners; i++) {
+      const upper = names.length <= MOST_CORNER_NAMES ? ((i >> k) & 1) === 1 : random() < 0.5;
+      column[1 + i] = upper ? high : low;
+    }
+    for (let i = 0; i < samples; i++) column[1 + corners + i] = low + (high - low) * cube[k][i];
+    columns.set(name, column);
+  });
+  return { names, count, columns, method, n: count - 1 };
+}
+
+function cornerCount(names: number): number {
+  return 2 ** Math.min(names, MOST_CORNER_NAMES);
+}
+
+/** The sign of a symbol over the whole tolerance box. */
+function signOverBox(numbers: Numbers, derivations: Derivations): (g: Generator) => Sign {
+  return (g) => {
+    if (g.kind !== 'symbol') return derivations.signOf(g);
+    const nominal = numbers.nominal(g.name);
+    if (nominal === null) return derivations.signOf(g);
+    const [low, high] = numbers.bounds(g.name) ?? [nominal, nominal];
+    if (low > 0) return 'positive';
+    if (high < 0) return 'negative';
+    if (low === 0) return high === 0 ? 'zero' : 'nonnegative';
+    return high === 0 ? 'nonpositive' : 'unknown';
+  };
+}
+
+/** Whether a formula is proved monotone over the box in each of the names: no derivative changes sign. */
+export function isMonotone(
+  ratio: Ratio,
+  names: readonly string[],
+  numbers: Numbers,
+  derivations: Derivations,
+): boolean {
+  try {
+    const opened = holdNominals(derivations.open(ratio), numbers);
+    return (
+      opened !== null &&
+      names.every((name) => isMonotoneIn(opened, name, signOverBox(numbers, derivations)))
+    );
+  } catch (error) {
+    if (error instanceof BudgetExceeded) return false;
+    throw error;
+  }
+}
+
+/** `nominal(x)` does not move with the tolerances: its number takes its place. Null where it has none. */
+function holdNominals(ratio: Ratio, numbers: Numbers): Ratio | null {
+  const held = new Map<Generator, Ratio>();
+  for (const g of generatorsOfRatio(ratio)) {
+    if (g.kind !== 'function' || g.name !== 'nominal') continue;
+    const value = numbers.valueOfRatio(g.args![0]);
+    if (value === null || !Number.isFinite(value)) return null;
+    held.set(g, ratioFromRational(numberToRational(value)));
+  }
+  if (held.size === 0) return ratio;
+  const substituted = substituteRatio(ratio, held);
+  return isRefusal(substituted) ? null : substituted;
+}
+
+function isMonotoneIn(ratio: Ratio, name: string, signOf: (g: Generator) => Sign): boolean {
+  const g = symbol(name);
+  if (!dependsOn(ratio, g)) return true;
+  const budget = new Budget(PROOF_BUDGET);
+  const denominator = signOfPolynomial(ratio.den, signOf, budget);
+  if (denominator !== 'positive' && denominator !== 'negative') return false;
+  const derivative = derivativeRatio(ratio, g, budget);
+  return !isRefusal(derivative) && signOfRatio(derivative, signOf, budget) !== 'unknown';
+}
+
+/** Whether a condition's truth over the box is settled by the corners: each of its relations is monotone. */
+export function isMonotoneCondition(
+  condition: Condition,
+  names: readonly string[],
+  numbers: Numbers,
+  derivations: Derivations,
+): boolean {
+  switch (condition.kind) {
+    case 'truth':
+    case 'undecided':
+      return true;
+    case 'compare':
+      return isMonotoneRelation(condition, names, numbers, derivations);
+    case 'stable':
+      return condition.blocks.every((block) =>
+        stabilityConditions(block.polynomial, derivations.signOf).every((part) =>
+          isMonotoneCondition(part, names, numbers, derivations),
+        ),
+      );
+    case 'not':
+      return isMonotoneCondition(condition.of, names, numbers, derivations);
+    // A corner of each relation being enough does not make the corners enough for an alternative.
+    case 'any':
+      return (
+        condition.of.length === 1 &&
+        isMonotoneCondition(condition.of[0], names, numbers, derivations)
+      );
+    case 'all':
+      return condition.of.every((part) => isMonotoneCondition(part, names, numbers, derivations));
+  }
+}
+
+/** An upper bound on a magnitude holds over the box if it holds at the corners of what is inside. */
+function isMonotoneRelation(
+  condition: Extract<Condition, { kind: 'compare' }>,
+  names: readonly string[],
+  numbers: Numbers,
+  derivations: Derivations,
+): boolean {
+  const { left, operator, right } = condition;
+  const isUpper = operator === '<' || operator === '<=';
+  const magnitude = asMagnitude(left);
+  const rightFixed = names.every((name) => !dependsOn(derivations.open(right), symbol(name)));
+  if (magnitude && magnitude.factor > 0 && isUpper && rightFixed) {
+    return isMonotone(magnitude.inner, names, numbers, derivations);
+  }
+  return isMonotone(subRatios(left, right), names, numbers, derivations);
+}

@@ -1,0 +1,52 @@
+import type { WrittenForm } from '../control/index.ts';
+import { formulaAnswer, nameOf, onFormula } from './answer.ts';
+import { one, type Parameter, type Argument, type WorksheetFunction } from './spec.ts';
+
+/** A formula in a form asked for; the formula itself does not change. */
+function written(
+  name: string,
+  summary: string,
+  example: string,
+  more: readonly Parameter[],
+  form: (args: readonly Argument[]) => WrittenForm,
+): WorksheetFunction {
+  return {
+    name,
+    summary,
+    source: null,
+    example,
+    parameters: [one('x', 'formula'), ...more],
+    unit: 'first',
+    availability: 'now',
+    evaluate: (args) => onFormula(args[0], (ratio) => formulaAnswer(ratio, { form: form(args) })),
+  };
+}
+
+/** The forms a formula can be written in. */
+export const FORMS: readonly WorksheetFunction[] = [
+  written(
+    'expand',
+    'A formula with its products multiplied out.',
+    'a is 2\nexpand((s + a)^2)',
+    [],
+    () => ({
+      kind: 'expanded',
+    }),
+  ),
+  written(
+    'factor',
+    'A formula as a product of its factors.',
+    'a is 2\nfactor(s^2 + a s)',
+    [],
+    () => ({
+      kind: 'factored',
+    }),
+  ),
+  written(
+    'collect',
+    'A formula ordered by the powers of s, or of another symbol.',
+    'a, b are positive\ncollect(a s + b s + a, s)',
+    [one('s', 'name')],
+    ([, by]) => ({ kind: 'collected', by: nameOf(by).generator }),
+  ),
+];
