@@ -1,3 +1,4 @@
+import type { FigureData } from '../figures/index.ts';
 import type {
   Placed,
   Report,
@@ -14,6 +15,7 @@ export interface Baseline {
       readonly value: ResultContent['value'];
       readonly shown: string | null;
       readonly formula: string | null;
+      readonly figure: FigureData | null;
     }
   >;
   readonly requirements: ReadonlyMap<string, { readonly verdict: Verdict; readonly shown: string }>;
@@ -65,9 +67,9 @@ export function pinBaseline(report: Report, text: string): Baseline {
   const requirements = requirementKeys(report);
   return {
     results: new Map(
-      report.results.map(({ content: { value, shown, formula } }, index) => [
+      report.results.map(({ content: { value, shown, formula, figure } }, index) => [
         results[index] ?? '',
-        { value, shown, formula },
+        { value, shown, formula, figure },
       ]),
     ),
     requirements: new Map(
@@ -99,6 +101,21 @@ export function resultMovement(
     was: `was ${then.shown ?? 'without a value'}`,
     by: distance(then.value, now.value, now.shown),
   };
+}
+
+/** A figure with the curves that it had under the baseline, to be drawn dashed; the figure itself where they are the same. */
+export function figureWithBaseline(
+  baseline: Baseline | null,
+  key: string,
+  now: FigureData,
+): FigureData {
+  const then = baseline?.results.get(key)?.figure;
+  if (!then || then === now || then.kind !== 'response' || now.kind !== 'response') return now;
+  const panels = new Set(now.curves.map(({ axisLabel }) => axisLabel));
+  const pinned = then.curves
+    .filter(({ axisLabel }) => panels.has(axisLabel))
+    .map((curve) => ({ ...curve, label: `${curve.label}, baseline`, band: null, baseline: true }));
+  return { ...now, curves: [...now.curves, ...pinned] };
 }
 
 /** What a requirement was under the baseline; null where it was the same or is new. */

@@ -1,7 +1,9 @@
 import { describe, expect, it } from 'vitest';
+import type { ResponseFigure } from '../../src/figures/index.ts';
 import {
   assumptionWas,
   distance,
+  figureWithBaseline,
   pinBaseline,
   requirementMovement,
   resultKeys,
@@ -74,6 +76,38 @@ describe('the baseline', () => {
   it('says what an assumption was as typed', () => {
     expect(assumptionWas(baseline, 'Kp', '12 kN m/rad')).toBe('was 9 kN m/rad');
     expect(assumptionWas(baseline, 'Kp', '9 kN m/rad')).toBeNull();
+  });
+});
+
+describe('figures under a baseline', () => {
+  const axis = { name: 't', label: 'time t, s', unit: 's', from: 0, to: 1 };
+  const response = (axisLabel: string): ResponseFigure => ({
+    kind: 'response',
+    title: null,
+    x: axis,
+    curves: [{ label: 'e', axisLabel, unit: '', points: [[0, 1]], band: null, baseline: false }],
+    diverges: null,
+    notes: [],
+  });
+  const then = response('e, mrad');
+  const pinned = pinBaseline(
+    report({ results: [placed(result({ name: 'f', figure: then }))] }),
+    '',
+  );
+
+  it('have the curves as they were beside their own', () => {
+    const drawn = figureWithBaseline(pinned, 'f', response('e, mrad')) as ResponseFigure;
+    expect(drawn.curves.map(({ label, baseline }) => [label, baseline])).toEqual([
+      ['e', false],
+      ['e, baseline', true],
+    ]);
+  });
+
+  it('are left as they are where nothing changed, is pinned, or can be compared', () => {
+    const other = response('T, N m');
+    expect(figureWithBaseline(pinned, 'f', then)).toBe(then);
+    expect(figureWithBaseline(null, 'f', other)).toBe(other);
+    expect((figureWithBaseline(pinned, 'f', other) as ResponseFigure).curves).toHaveLength(1);
   });
 });
 

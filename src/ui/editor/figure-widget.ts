@@ -7,16 +7,20 @@ const frames = new WeakMap<HTMLElement, FigureFrame>();
 
 /** A figure under its statement. While its data changes the element stays, so that a drag on it goes on. */
 export class FigureWidget extends WidgetType {
-  constructor(private readonly figure: FigureData) {
+  /** `figure` is the evaluator's; `drawn` may have the curves of a baseline beside its own. */
+  constructor(
+    private readonly figure: FigureData,
+    private readonly drawn: FigureData,
+  ) {
     super();
   }
 
   override eq(other: FigureWidget): boolean {
-    return other.figure === this.figure;
+    return other.figure === this.figure && other.curveCount === this.curveCount;
   }
 
   override toDOM(view: EditorView): HTMLElement {
-    const frame = new FigureFrame(this.figure, new GainDrag(view));
+    const frame = new FigureFrame(this.drawn, new GainDrag(view));
     frames.set(frame.element, frame);
     return frame.element;
   }
@@ -24,8 +28,13 @@ export class FigureWidget extends WidgetType {
   override updateDOM(element: HTMLElement): boolean {
     const frame = frames.get(element);
     if (frame?.kind !== this.figure.kind) return false;
-    frame.show(this.figure);
+    frame.show(this.drawn);
     return true;
+  }
+
+  /** Tells apart the same figure with and without the curves of a baseline. */
+  private get curveCount(): number {
+    return this.drawn.kind === 'response' ? this.drawn.curves.length : 0;
   }
 
   override destroy(element: HTMLElement): void {

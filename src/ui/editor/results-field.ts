@@ -1,8 +1,9 @@
 import { StateField, type EditorState, type Range } from '@codemirror/state';
 import { Decoration, EditorView, type DecorationSet, type WidgetType } from '@codemirror/view';
 import type { Problem } from '../../base/index.ts';
+import type { FigureData } from '../../figures/index.ts';
 import type { Report } from '../../engine/index.ts';
-import { requirementMovement, resultMovement } from '../baseline.ts';
+import { figureWithBaseline, requirementMovement, resultMovement } from '../baseline.ts';
 import { isShown } from '../results/result-row.ts';
 import { applyFix } from './fixes.ts';
 import { FigureWidget } from './figure-widget.ts';
@@ -42,6 +43,10 @@ function decorate(state: EditorState): DecorationSet {
   return Decoration.set(ranges, true);
 }
 
+function figureWidget({ baseline }: Sheet, key: string, figure: FigureData): FigureWidget {
+  return new FigureWidget(figure, figureWithBaseline(baseline, key, figure));
+}
+
 /** Order of the rows below one line. */
 const ORDER = { problem: 1, loop: 2, row: 3, figure: 4 };
 
@@ -52,7 +57,8 @@ function below(state: EditorState, place: number, widget: WidgetType, side: numb
 
 function resultRanges(state: EditorState, sheet: Sheet, report: Report): Range<Decoration>[] {
   return report.results.flatMap(({ to, content }, index) => {
-    const change = changeOf(sheet, sheet.resultKeys[index] ?? '', (key) =>
+    const key = sheet.resultKeys[index] ?? '';
+    const change = changeOf(sheet, key, () =>
       sheet.baseline ? resultMovement(sheet.baseline, key, content) : null,
     );
     const made: Range<Decoration>[] = [];
@@ -60,7 +66,7 @@ function resultRanges(state: EditorState, sheet: Sheet, report: Report): Range<D
       made.push(below(state, to, new ResultWidget(content, change), ORDER.row));
     }
     if (content.figure) {
-      made.push(below(state, to, new FigureWidget(content.figure), ORDER.figure));
+      made.push(below(state, to, figureWidget(sheet, key, content.figure), ORDER.figure));
     }
     return made;
   });

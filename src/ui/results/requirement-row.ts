@@ -13,7 +13,9 @@ export function requirementRow(
   const row = element('div', 'result requirement');
   row.setAttribute('role', 'group');
   row.setAttribute('aria-label', `Requirement ${content.label ?? content.text}`);
-  const figures = element('div', 'figures', element('span', 'value', withMinus(content.shown)));
+  const figures = element('div', 'figures');
+  // Without a limit what is shown is the verdict's word, which stands at the left.
+  if (content.limit !== null) figures.append(element('span', 'value', withMinus(content.shown)));
   const bar = marginBarElement(content);
   if (bar) figures.append(bar);
   if (movement) figures.append(movementElement(movement));

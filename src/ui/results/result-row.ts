@@ -9,8 +9,7 @@ export function isShown(content: ResultContent, movement: Movement | null): bool
   return (
     movement !== null ||
     (content.state === 'error' && content.waitsFor !== null) ||
-    (content.state === 'ready' && content.kind !== 'figure') ||
-    content.notes.length > 0
+    (content.kind !== 'figure' && (content.state === 'ready' || content.notes.length > 0))
   );
 }
 
@@ -50,7 +49,7 @@ function figures(content: ResultContent, movement: Movement | null): HTMLElement
   if (content.shown !== null && content.state === 'ready') {
     made.append(element('span', 'value', withMinus(content.shown)));
   }
-  if (content.span) {
+  if (content.span && content.span.low !== content.span.high) {
     const { shown, how, n } = content.span;
     const found = how === 'sampled' ? `sampled, n = ${n ?? '?'}` : how;
     made.append(element('span', 'span', withMinus(shown), element('span', 'how', found)));
