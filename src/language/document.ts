@@ -1,6 +1,7 @@
 import { NodeProp, TreeFragment, type SyntaxNode, type Tree } from '@lezer/common';
 import type { Problem, Span } from '../base/index.ts';
 import type { PlacedStatement } from './ast.ts';
+import { firstToken } from './first-token.ts';
 import { offsetSpan } from './placing.ts';
 import { worksheetParts, type Cell, type ProseBlock, type Reference } from './prose.ts';
 import { introductionsOf, type Introduction, type StatementSource } from './statement-source.ts';
@@ -121,13 +122,6 @@ function statementPlace(node: SyntaxNode, cell: CellTree, text: string): Stateme
   const to = comment?.to ?? node.to + treeStart;
   const key = text.slice(from, to) + gapsBetween(cell.stretches, from, to);
   return { node, treeStart, from, to, comment, key };
-}
-
-/** A statement's node begins with its line's indent. */
-function firstToken(node: SyntaxNode): SyntaxNode {
-  let first = node;
-  while (first.firstChild) first = first.firstChild;
-  return first;
 }
 
 /** The marks of a quote or list that interrupt a statement's text: equal text reads equally only with equal gaps. */

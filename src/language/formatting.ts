@@ -34,7 +34,7 @@ function levelOf(e: Expression): Level {
     case 'product':
       return LEVELS.product;
     case 'negation':
-      return LEVELS.sign;
+      return isSignedProduct(e.of) ? LEVELS.product : LEVELS.sign;
     case 'power':
       return LEVELS.power;
     case 'quantity':
@@ -129,7 +129,11 @@ function formatOperation(e: Operation): string {
 
 /** What a sign is put before. The sign of a product's first factor is the product's, so a product needs no brackets. */
 function negated(e: Expression): string {
-  return e.kind === 'product' && !e.inverted[0] ? formatProduct(e, true) : at(LEVELS.power, e);
+  return isSignedProduct(e) ? formatProduct(e, 'signed') : at(LEVELS.power, e);
+}
+
+function isSignedProduct(e: Expression): e is Product {
+  return e.kind === 'product' && !e.inverted[0];
 }
 
 function formatReplacements(replacements: readonly Replacement[]): string {
@@ -147,46 +151,57 @@ function formatReplaced(by: Replacement['by'], value: Expression): string {
 function formatSum({ terms, signs }: Sum): string {
   return terms
     .map((term, k) => {
-      const text = k === 0 ? at(LEVELS.product, term) : at(LEVELS.product, term);
+      const text = at(LEVELS.product, term);
       if (k === 0) return signs[0] === -1 ? `-${negated(term)}` : text;
-      return ` ${signs[k] === -1 ? '-' : '+'} ${levelOf(term) === LEVELS.sign ? `(${text})` : text}`;
+      return ` ${signs[k] === -1 ? '-' : '+'} ${text.startsWith('-') ? `(${text})` : text}`;
     })
     .join('');
 }
 
+/** Where a product stands: at the start of a term, after the sign of one, or after other factors. */
+type Place = 'start' | 'signed' | 'later';
+
 /** A product as `a b/(c d)`; one whose divisors come before further factors is grouped from the left. */
-function formatProduct({ factors, inverted }: Product, isSigned = false): string {
+function formatProduct({ factors, inverted, span }: Product, place: Place = 'start'): string {
   const firstDivisor = inverted.indexOf(true);
   const above = firstDivisor < 0 ? factors : factors.slice(0, firstDivisor);
-  const numerator = above.length === 0 ? '1' : juxtaposed(above, isSigned);
+  const numerator = above.length === 0 ? '1' : juxtaposed(above, place);
   if (firstDivisor < 0) return numerator;
   const later = inverted.indexOf(false, firstDivisor);
   const below = factors.slice(firstDivisor, later < 0 ? undefined : later);
   const quotient = `${numerator}/${divisor(below)}`;
   if (later < 0) return quotient;
-  const rest = formatProduct({
-    kind: 'product',
-    span: { from: 0, to: 0 },
-    factors: factors.slice(later),
-    inverted: inverted.slice(later),
-  });
-  return `(${quotient})${/^[\d]/.test(rest) ? '*' : ' '}${rest}`;
+  const [factorsLeft, invertedLeft] = [factors.slice(later), inverted.slice(later)];
+  const rest: Product = { kind: 'product', span, factors: factorsLeft, inverted: invertedLeft };
+  return afterQuotient(quotient, formatProduct(rest, 'later'), place);
+}
+
+/** Goes on after a quotient, which needs brackets unless it is a leading coefficient, `1/2 s`. */
+function afterQuotient(quotient: string, rest: string, place: Place): string {
+  if (/^\d/.test(rest)) return `(${quotient})*${rest}`;
+  const isCoefficient = place !== 'later' && /^-?[\d.]+\/[\d.]+$/.test(quotient);
+  return isCoefficient && !/^pi\b/.test(rest) ? `${quotient} ${rest}` : `(${quotient}) ${rest}`;
 }
 
 function divisor(factors: readonly Expression[]): string {
   const [only, ...others] = factors;
   if (only && others.length === 0) return at(LEVELS.sign, only);
-  return `(${juxtaposed(factors, false)})`;
+  return `(${juxtaposed(factors, 'start')})`;
 }
 
 /** Factors side by side; `*` where a number follows a number, which would otherwise read as one. */
-function juxtaposed(factors: readonly Expression[], isSigned: boolean): string {
+function juxtaposed(factors: readonly Expression[], place: Place): string {
   let text = '';
   for (const [k, factor] of factors.entries()) {
-    const isFirst = k === 0 && !isSigned;
-    const part = at(isFirst ? LEVELS.sign : LEVELS.power, factor);
+    const part = k === 0 && place === 'start' ? firstFactor(factor) : at(LEVELS.power, factor);
     const isAfterNumber = /(^|[^\p{L}\d_])[\d.]+(e-?\d+)?$/iu.test(text) && /^\d/.test(part);
     text += k === 0 ? part : (isAfterNumber ? '*' : ' ') + part;
   }
   return text;
+}
+
+/** A first factor may have its sign; a product with a sign keeps brackets of its own. */
+function firstFactor(factor: Expression): string {
+  const isSigned = factor.kind === 'negation' && factor.of.kind === 'product';
+  return isSigned ? `-(${formatProduct(factor.of)})` : at(LEVELS.sign, factor);
 }

@@ -1,5 +1,6 @@
 import { ContextTracker, ExternalTokenizer, type InputStream } from '@lezer/lr';
 import type { SyntaxNode, Tree } from '@lezer/common';
+import { firstToken } from './first-token.ts';
 import { blockStart, lineBreak, lineStart, softBreak, statementBreak } from './loop.grammar.terms';
 
 const NEWLINE = 10;
@@ -61,7 +62,14 @@ function shifted(layout: Layout, term: number, input: InputStream): Layout {
   return layout;
 }
 
-/** The last statement that ends a reused node, which may be a nameless run of statements. */
+/** Indent, in columns, of the line on which a reused node's first token stands. */
+function indentOf(node: SyntaxNode, input: InputStream): number {
+  let offset = firstToken(node).from;
+  while (isSpace(input.peek(offset - 1))) offset -= 1;
+  return indentAhead(input, offset).columns;
+}
+
+/** The last statement in a reused run of statements, which is a node without a name; null in any other node. */
 function lastStatement(tree: Tree): SyntaxNode | null {
   if (!tree.type.isAnonymous) return null;
   let node: SyntaxNode | null = tree.resolveInner(tree.length, -1);
@@ -73,15 +81,13 @@ function lastStatement(tree: Tree): SyntaxNode | null {
 function reused(layout: Layout, tree: Tree, input: InputStream): Layout {
   const { name } = tree.type;
   if (name === 'Statement' || name === 'BlockStatement')
-    return lineShifted(BETWEEN_STATEMENTS, indentAhead(input, 0).columns);
+    return lineShifted(BETWEEN_STATEMENTS, indentOf(tree.topNode, input));
   if (name === 'Header' || name === 'Line')
-    return lineShifted(layout, indentAhead(input, 0).columns);
+    return lineShifted(layout, indentOf(tree.topNode, input));
   const firstLine = name === 'Block' ? tree.topNode.getChild('Line') : null;
-  if (firstLine)
-    return { ...layout, fresh: false, block: indentAhead(input, firstLine.from).columns };
+  if (firstLine) return { ...layout, fresh: false, block: indentOf(firstLine, input) };
   const last = lastStatement(tree);
-  if (!last) return layout;
-  return lineShifted(BETWEEN_STATEMENTS, indentAhead(input, last.from).columns);
+  return last ? lineShifted(BETWEEN_STATEMENTS, indentOf(last, input)) : layout;
 }
 
 /** Follows the indents of the statement and block that are being read. */

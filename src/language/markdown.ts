@@ -1,4 +1,4 @@
-import type { BlockContext, InlineContext, Line, MarkdownConfig } from '@lezer/markdown';
+import type { BlockContext, Element, InlineContext, Line, MarkdownConfig } from '@lezer/markdown';
 import { tags } from '@lezer/highlight';
 
 const DOLLAR = 36;
@@ -26,28 +26,32 @@ function parseReference(context: InlineContext, next: number, position: number):
   return context.addElement(context.elt('Reference', position, position + match[0].length));
 }
 
-/** Whether a line, from its content on, ends a displayed formula that an earlier line opened. */
-function closesFormula(line: Line): boolean {
-  return line.text.slice(line.pos).trimEnd().endsWith('$$');
-}
-
 /**
  * Reads a paragraph that begins with `$$` up to the line that ends with `$$`. Where a blank line or a fence comes first
- * there is no formula: a formula that is still being typed must not swallow the cells below it.
+ * it is a paragraph like others: a formula that is still being typed must not swallow the cells below it.
  */
 function parseFormulaBlock(context: BlockContext, line: Line): boolean {
-  const opening = line.text.slice(line.pos).trimEnd();
-  if (!opening.startsWith('$$')) return false;
+  const first = line.text.slice(line.pos).trimEnd();
+  if (!first.startsWith('$$')) return false;
   const from = context.lineStart + line.pos;
-  let to = context.lineStart + line.text.trimEnd().length;
-  let isClosed = opening.length > 4 && opening.endsWith('$$');
+  const lines = [line.text.slice(line.pos)];
+  let to = from + first.length;
+  let isClosed = first.length > 4 && first.endsWith('$$');
   while (!isClosed && context.nextLine() && !endsParagraph(context, line)) {
+    lines.push(line.text);
     to = context.lineStart + line.text.trimEnd().length;
-    isClosed = closesFormula(line);
+    isClosed = line.text.trimEnd().endsWith('$$');
   }
   if (isClosed) context.nextLine();
-  context.addElement(context.elt(isClosed ? 'FormulaBlock' : 'Paragraph', from, to));
+  const content = isClosed ? [] : inlineContent(context, lines, from);
+  context.addElement(context.elt(isClosed ? 'FormulaBlock' : 'Paragraph', from, to, content));
   return true;
+}
+
+/** What stands in the lines of a paragraph, unless the marks of a quote or list stand between them. */
+function inlineContent(context: BlockContext, lines: readonly string[], from: number): Element[] {
+  const isInterrupted = context.depth > 1 && lines.length > 1;
+  return isInterrupted ? [] : context.parser.parseInline(lines.join('\n'), from);
 }
 
 /** How many containers a line continues; the library keeps it, but does not list it in its types. */

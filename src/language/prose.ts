@@ -1,4 +1,4 @@
-import { warningAt, type Problem, type Span } from '../base/index.ts';
+import { warningAt, type Fix, type Problem, type Span } from '../base/index.ts';
 import type { SyntaxNode, Tree } from '@lezer/common';
 import { canonicalName } from './names.ts';
 import { CELL_INFO } from './worksheet-parser.ts';
@@ -99,16 +99,21 @@ function fenceProblems(fence: SyntaxNode, text: string): readonly Problem[] {
   const info = infoOf(fence, text);
   const infoNode = fence.getChild('CodeInfo');
   const marks = fence.getChildren('CodeMark');
-  const mark = marks[0]!;
   if (info !== CELL_INFO) return infoNode ? nearCellProblems(infoNode, info) : [];
   if (marks.length > 1) return [];
-  const insert = `\n${text.slice(mark.from, mark.to)}`;
-  const span = { from: mark.from, to: infoNode!.to };
-  return [
-    warningAt(span, 'unclosed-cell', 'This cell is not closed: it takes in all that follows.', [
-      { title: 'close it at the end', edits: [{ span: { from: fence.to, to: fence.to }, insert }] },
-    ]),
-  ];
+  const span = { from: marks[0]!.from, to: infoNode!.to };
+  const message = 'This cell is not closed: it takes in all that follows.';
+  return [warningAt(span, 'unclosed-cell', message, closingFixes(fence, marks[0]!, text))];
+}
+
+/** The fix that closes a cell, unless it stands in a quote or list, whose marks the closing line would need too. */
+function closingFixes(fence: SyntaxNode, mark: Span, text: string): readonly Fix[] {
+  const indent = text.slice(text.lastIndexOf('\n', mark.from) + 1, mark.from);
+  if (indent.trim() !== '' || fence.parent?.name !== 'Document') return [];
+  const end = text.slice(fence.from, fence.to).endsWith('\n') ? '' : '\n';
+  const insert = end + indent + text.slice(mark.from, mark.to);
+  const edit = { span: { from: fence.to, to: fence.to }, insert };
+  return [{ title: 'close it at the end', edits: [edit] }];
 }
 
 /** A fence that looks meant as a cell, but is prose. */

@@ -4,8 +4,8 @@ import {
   type Expression,
   type NameKind,
   type PlacedStatement,
-  type Problem,
 } from '../../src/language/index.ts';
+import type { Problem } from '../../src/base/index.ts';
 import { VOCABULARY } from './vocabulary.ts';
 
 /** The tree of a formula as a bracketed text: `(+ a (- b))` for `a - b`. */
