@@ -1,3 +1,4 @@
+import { isolateHistory } from '@codemirror/commands';
 import { Compartment, EditorSelection, EditorState, type Text } from '@codemirror/state';
 import { EditorView, highlightSpecialChars } from '@codemirror/view';
 import type { VocabularyWord } from '../../engine/index.ts';
@@ -36,6 +37,7 @@ export class WorksheetEditor {
     this.view = new EditorView({ parent, state: this.stateOf('') });
     this.savedDoc = this.view.state.doc;
     const { scrollDOM } = this.view;
+    scrollDOM.tabIndex = 0;
     scrollDOM.setAttribute('role', 'region');
     scrollDOM.setAttribute('aria-label', 'Worksheet');
   }
@@ -71,7 +73,11 @@ export class WorksheetEditor {
   /** Replaces the whole text as an edit that can be undone. */
   replace(text: string): void {
     const { plain } = splitText(text);
-    this.view.dispatch({ changes: { from: 0, to: this.view.state.doc.length, insert: plain } });
+    this.view.dispatch({
+      changes: { from: 0, to: this.view.state.doc.length, insert: plain },
+      // A step of its own, however soon after the last key it comes.
+      annotations: isolateHistory.of('full'),
+    });
   }
 
   /** Takes a text that was saved as the one that edits are counted from. */
