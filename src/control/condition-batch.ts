@@ -1,9 +1,7 @@
-import { subRatios } from '../algebra/index.ts';
 import { hurwitzVerdicts, TapeBuilder } from '../numeric/index.ts';
 import type { BatchInput, Slot, Tape } from '../numeric/index.ts';
 import { RatioCompiler } from './compile.ts';
 import type { Resolve } from './compile.ts';
-import { hurwitzMargins } from './hurwitz-margin.ts';
 import { descendingInS, functionsOfS } from './s-polynomial.ts';
 import type { Comparison, Condition } from './values.ts';
 
@@ -11,14 +9,6 @@ import type { Comparison, Condition } from './values.ts';
 export const NO = 0;
 export const YES = 1;
 export const UNDECIDED = 2;
-
-/** What a condition says at every point of a batch. */
-export interface ConditionBatch {
-  /** 1 holds, 0 does not, 2 cannot be told (a value is missing or not a number). */
-  readonly verdicts: Uint8Array;
-  /** Positive inside, for comparisons left minus right in the sense of the operator; null where there is no measure. */
-  readonly margins: Float64Array | null;
-}
 
 /** A condition whose ratios are outputs of a tape. */
 type Compiled =
@@ -28,7 +18,6 @@ type Compiled =
       readonly operator: Comparison;
       readonly left: number;
       readonly right: number;
-      readonly difference: number;
     }
   | { readonly kind: 'stable'; readonly blocks: readonly (readonly number[])[] }
   | { readonly kind: 'all' | 'any'; readonly of: readonly Compiled[] }
@@ -38,8 +27,8 @@ type Compiled =
 export interface CompiledConditions {
   /** Names of the inputs, in the order in which `evaluate` takes them. */
   readonly inputs: readonly string[];
-  /** One batch for each condition, in their order. */
-  evaluate(values: readonly BatchInput[], count: number): readonly ConditionBatch[];
+  /** For each condition, in their order, the verdict at every point: {@link YES}, {@link NO} or {@link UNDECIDED}. */
+  evaluate(values: readonly BatchInput[], count: number): readonly Uint8Array[];
 }
 
 class ConditionCompiler {
@@ -70,10 +59,10 @@ class ConditionCompiler {
 
   private comparison(condition: Extract<Condition, { kind: 'compare' }>): Compiled {
     const { left, operator, right } = condition;
-    const slots = [left, right, subRatios(left, right)].map((r) => this.compiler.ratio(r));
+    const slots = [left, right].map((r) => this.compiler.ratio(r));
     if (slots.some(({ im }) => im !== null)) return { kind: 'constant', verdict: UNDECIDED };
-    const [leftAt, rightAt, difference] = slots.map(({ re }) => this.place(re));
-    return { kind: 'compare', operator, left: leftAt, right: rightAt, difference };
+    const [leftAt, rightAt] = slots.map(({ re }) => this.place(re));
+    return { kind: 'compare', operator, left: leftAt, right: rightAt };
   }
 
   private stable(condition: Extract<Condition, { kind: 'stable' }>): Compiled {
@@ -116,26 +105,25 @@ function compareVerdict(operator: Comparison, left: number, right: number): 0 | 
 
 type Columns = readonly Float64Array[];
 
-function compareBatch(
+function compareVerdicts(
   node: Extract<Compiled, { kind: 'compare' }>,
   columns: Columns,
   count: number,
-): ConditionBatch {
+): Uint8Array {
   const verdicts = new Uint8Array(count);
   const [left, right] = [columns[node.left], columns[node.right]];
   for (let i = 0; i < count; i++) verdicts[i] = compareVerdict(node.operator, left[i], right[i]);
-  if (node.operator === '=' || node.operator === '!=') return { verdicts, margins: null };
-  const difference = columns[node.difference];
-  const upward = node.operator === '>' || node.operator === '>=';
-  return { verdicts, margins: upward ? difference : difference.map((x) => -x) };
+  return verdicts;
 }
 
-function stableBatch(coefficients: readonly Float64Array[], count: number): ConditionBatch {
+function stableVerdicts(coefficients: Columns, count: number): Uint8Array {
   const verdicts = hurwitzVerdicts(coefficients, count);
-  coefficients.forEach((column) => {
-    for (let i = 0; i < count; i++) if (Number.isNaN(column[i])) verdicts[i] = UNDECIDED;
-  });
-  return { verdicts, margins: hurwitzMargins(coefficients, count) };
+  for (let i = 0; i < count; i++) {
+    // A coefficient that is not a number never counts as stable, but neither is it known to be unstable.
+    if (verdicts[i] === NO && coefficients.some((column) => Number.isNaN(column[i])))
+      verdicts[i] = UNDECIDED;
+  }
+  return verdicts;
 }
 
 const conjoin = (a: number, b: number): number =>
@@ -143,41 +131,28 @@ const conjoin = (a: number, b: number): number =>
 const disjoin = (a: number, b: number): number =>
   a === YES || b === YES ? YES : a === NO && b === NO ? NO : UNDECIDED;
 
-function joinBatches(kind: 'all' | 'any', parts: readonly ConditionBatch[]): ConditionBatch {
-  const [join, nearest] = kind === 'all' ? [conjoin, Math.min] : [disjoin, Math.max];
-  return parts.reduce((a, b) => ({
-    verdicts: a.verdicts.map((v, i) => join(v, b.verdicts[i])),
-    margins: a.margins && b.margins ? a.margins.map((m, i) => nearest(m, b.margins![i])) : null,
-  }));
+function joined(kind: 'all' | 'any', parts: readonly Uint8Array[]): Uint8Array {
+  const join = kind === 'all' ? conjoin : disjoin;
+  return parts.reduce((a, b) => a.map((verdict, i) => join(verdict, b[i])));
 }
 
-function opposite({ verdicts, margins }: ConditionBatch): ConditionBatch {
-  return {
-    verdicts: verdicts.map((v) => (v === UNDECIDED ? v : 1 - v)),
-    margins: margins && margins.map((m) => -m),
-  };
-}
-
-function evaluateNode(node: Compiled, columns: Columns, count: number): ConditionBatch {
+function evaluateNode(node: Compiled, columns: Columns, count: number): Uint8Array {
   switch (node.kind) {
     case 'constant':
-      return { verdicts: new Uint8Array(count).fill(node.verdict), margins: null };
+      return new Uint8Array(count).fill(node.verdict);
     case 'compare':
-      return compareBatch(node, columns, count);
-    case 'stable':
-      return joinBatches(
+      return compareVerdicts(node, columns, count);
+    case 'stable': {
+      const blocks = node.blocks.map((block) => block.map((k) => columns[k]));
+      return joined(
         'all',
-        node.blocks.map((block) =>
-          stableBatch(
-            block.map((k) => columns[k]),
-            count,
-          ),
-        ),
+        blocks.map((coefficients) => stableVerdicts(coefficients, count)),
       );
+    }
     case 'not':
-      return opposite(evaluateNode(node.of, columns, count));
+      return evaluateNode(node.of, columns, count).map((v) => (v === UNDECIDED ? v : 1 - v));
     default:
-      return joinBatches(
+      return joined(
         node.kind,
         node.of.map((part) => evaluateNode(part, columns, count)),
       );

@@ -33,7 +33,7 @@ export type { Bounds, Corners } from './tolerance.ts';
 export { compileRatios, numberOf } from './compile.ts';
 export type { CompiledRatio, CompiledRatios, Resolve } from './compile.ts';
 export { compileConditions, NO, UNDECIDED, YES } from './condition-batch.ts';
-export type { CompiledConditions, ConditionBatch } from './condition-batch.ts';
+export type { CompiledConditions } from './condition-batch.ts';
 export {
   degreeInS,
   descendingInS,

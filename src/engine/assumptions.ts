@@ -36,7 +36,7 @@ export function readAssumption(
   units: CustomUnits,
 ): Outcome<AssumptionReading> {
   return outcomeOf(node.span, () => {
-    const unit = unitOfQuantity(node.value, units);
+    const unit = unitOfQuantity(typedNominal(node), units);
     const value = siOfQuantity(node.value, unit);
     return {
       unit,
@@ -44,6 +44,17 @@ export function readAssumption(
       tolerance: node.tolerance && readTolerance(node, node.tolerance, unit, value, units),
     };
   });
+}
+
+/** The nominal with its unit: in `480 ± 20 kg m^2` and `260 from 0 to 400 N m` a bare number takes that of its partner. */
+export function typedNominal({ value, tolerance }: AssumptionStatement): Quantity {
+  if (value.unit !== '' || tolerance === null) return value;
+  const partner =
+    tolerance.kind === 'half-width'
+      ? tolerance.half
+      : [tolerance.to, tolerance.from].find((end) => end.unit !== '');
+  if (!partner || partner.unit === '%') return value;
+  return { ...value, unit: partner.unit, unitSpan: partner.unitSpan };
 }
 
 function readTolerance(

@@ -167,7 +167,8 @@ function loopArgument(
   if (arg.kind === 'with') {
     return loopArgument(arg.of, spec, replacementsOf(arg, scope, meanings).inside, meanings);
   }
-  if (arg.kind === 'name' && meanings.kindOf(arg.name) === 'loop')
+  const kind = arg.kind === 'name' ? meanings.kindOf(arg.name) : null;
+  if (arg.kind === 'name' && (kind === 'loop' || kind === 'unavailable'))
     return meanings.loopOf(arg.name, arg.span, scope);
   const loops = meanings.knownNames().filter((name) => meanings.kindOf(name) === 'loop');
   stopAt(

@@ -76,6 +76,11 @@ export function makeCatalogue(
   return builder.finish();
 }
 
+/** A loop or a case of which a line could not be read says less than was written: nothing may be derived from it. */
+function isWhole({ problems }: PlacedStatement): boolean {
+  return problems.every(({ severity }) => severity !== 'error');
+}
+
 class CatalogueBuilder {
   private readonly entries = new Map<string, Entry>();
   private readonly places = new Map<string, Introduction[]>();
@@ -94,10 +99,14 @@ class CatalogueBuilder {
     switch (node.kind) {
       case 'assumption':
       case 'definition':
-      case 'loop':
-      case 'case':
         this.introduce(node.name, node.nameSpan, { kind: node.kind, node, placed } as Entry);
         break;
+      case 'loop':
+      case 'case': {
+        const kind = isWhole(placed) ? node.kind : 'unavailable';
+        this.introduce(node.name, node.nameSpan, { kind, node, placed } as Entry);
+        break;
+      }
       case 'sign':
         for (const name of node.names) this.readSign(name.name, name.span, node.sign, placed);
         break;

@@ -22,6 +22,7 @@ import {
   angleOf,
   cyclesOf,
   cyclesToAngle,
+  DERIVATIVE,
   divMeasures,
   fitsAnywhere,
   FREE,
@@ -178,9 +179,9 @@ class DimensionCheck {
     const loop = this.source.entry(statement.loop.name);
     if (loop?.kind !== 'loop') return;
     for (const line of statement.inputs) {
-      const wanted = divMeasures(
+      const wanted = mulMeasures(
         this.signal(loop.name, line.input.name),
-        powMeasure(TIME, line.order),
+        powMeasure(DERIVATIVE, line.order),
       );
       for (const term of line.sources) {
         const measure = this.sourceMeasure(term.source);
@@ -192,7 +193,10 @@ class DimensionCheck {
     for (const start of statement.starts) {
       const path = memberPath(start.signal.kind === 'derivative' ? start.signal.of : start.signal);
       if (path === null) continue;
-      const wanted = divMeasures(this.signal(loop.name, path), powMeasure(TIME, start.order));
+      const wanted = mulMeasures(
+        this.signal(loop.name, path),
+        powMeasure(DERIVATIVE, start.order),
+      );
       this.agree(
         start.signal,
         wanted,
@@ -216,7 +220,7 @@ class DimensionCheck {
     const spec = sourceNamed(source.callee);
     const size = this.measure(source.args[0], null);
     if (!spec || spec.availability === 'later') return null;
-    return mulMeasures(size, powMeasure(TIME, spec.power - 1));
+    return divMeasures(size, powMeasure(DERIVATIVE, spec.power - 1));
   }
 
   private sourceConflict(
@@ -317,7 +321,7 @@ class DimensionCheck {
       case 'member':
         return this.memberMeasure(expression, around);
       case 'derivative':
-        return divMeasures(inner(expression.of), powMeasure(TIME, expression.order));
+        return mulMeasures(inner(expression.of), powMeasure(DERIVATIVE, expression.order));
       case 'evaluation':
         inner(expression.at);
         return this.nameMeasure(expression.name, around);
@@ -402,7 +406,7 @@ class DimensionCheck {
     if (arrow?.kind !== 'arrow' || arrow.to.length !== 1) return FREE;
     const end = (expression: Expression): Measure => {
       if (expression.kind === 'derivative')
-        return divMeasures(end(expression.of), powMeasure(TIME, expression.order));
+        return mulMeasures(end(expression.of), powMeasure(DERIVATIVE, expression.order));
       const path = memberPath(expression);
       return path === null ? FREE : this.signal(loop, path);
     };
@@ -427,7 +431,7 @@ class DimensionCheck {
           );
         return args.find((arg) => !fitsAnywhere(arg)) ?? first;
       case 'signal':
-        return isTransform(call.args[0]) ? divMeasures(first, TIME) : first;
+        return isTransform(call.args[0]) ? mulMeasures(first, DERIVATIVE) : first;
       case 'root':
         return powMeasure(first, 1 / 2);
       case 'number':

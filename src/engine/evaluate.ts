@@ -168,7 +168,9 @@ function differentiateSignal(signal: SignalValue, order: number): SignalValue {
 }
 
 function callValue(call: Call, scope: Scope, meanings: Meanings): Value {
-  if (meanings.kindOf(call.callee) === 'loop') return loopCall(call, scope, meanings);
+  const kind = meanings.kindOf(call.callee);
+  if (kind === 'unavailable') waitFor(call.callee);
+  if (kind === 'loop') return loopCall(call, scope, meanings);
   return callFunction(call, scope, meanings);
 }
 

@@ -59,7 +59,7 @@ function firstFailure(
 
 function verdictAt(condition: Condition, numbers: Numbers, at: Points): number {
   const compiled = compileConditions([condition], numbers.resolve);
-  return compiled.evaluate(numbers.inputs(compiled.inputs, at), at.count)[0].verdicts[0];
+  return compiled.evaluate(numbers.inputs(compiled.inputs, at), at.count)[0][0];
 }
 
 function blockFailure(block: StabilityBlock, numbers: Numbers, at: Points): string {

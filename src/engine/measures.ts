@@ -51,6 +51,8 @@ export const FREE = measure(NONE, { free: true });
 export const ANGULAR = measure(exponentsOf(ANGLE, 1), { rigid: true });
 export const TIME = measure(exponentsOf(SECOND, 1), { rigid: true });
 export const ANGULAR_FREQUENCY = measure(exponentsOf(SECOND, -1, 1), { rigid: true });
+/** What a time derivative multiplies by: no unit is typed in it, so that by itself it makes no measure rigid. */
+export const DERIVATIVE = measure(exponentsOf(SECOND, -1));
 export const LAPLACE = measure(exponentsOf(SECOND, -1), { laplace: true });
 
 /** The measure of a unit. */
@@ -170,18 +172,20 @@ export class Inference {
         ...sum,
         free: settled.free,
         bare: settled.bare,
-        rigid: settled.rigid,
+        rigid: sum.rigid,
         laplace: settled.laplace,
       };
     }
     return settled;
   }
 
-  /** Makes two measures agree by inferring an unknown; false where they disagree. */
+  /** Makes two measures agree by inferring an unknown; false where they disagree and both carry a unit. */
   unify(a: Measure, b: Measure): boolean {
     if (fitsAnywhere(a) || fitsAnywhere(b)) return true;
-    const difference = this.settle(divMeasures(a, b));
+    const [left, right] = [this.settle(a), this.settle(b)];
+    const difference = divMeasures(left, right);
     const [unknown] = difference.unknowns;
+    if (!unknown && !(left.rigid && right.rigid)) return true;
     if (!unknown)
       return difference.exponents.slice(0, BASES).every((exponent) => Math.abs(exponent) < 1e-9);
     const [name, exponent] = unknown;
@@ -191,7 +195,7 @@ export class Inference {
       { ...difference, unknowns: others, free: false, bare: false },
       -1 / exponent,
     );
-    this.bound.set(name, { ...value, rigid: true, laplace: false });
+    this.bound.set(name, { ...value, laplace: false });
     return true;
   }
 }

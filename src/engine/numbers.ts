@@ -203,11 +203,11 @@ export class Numbers {
       ? ratios.tape.evaluateBatch(this.inputs(ratios.inputs, points), points.count)
       : [];
     const [own, when] = conditions.evaluate(this.inputs(conditions.inputs, points), points.count);
-    const exists = when.verdicts.map((verdict) => (verdict === YES ? 1 : 0));
+    const exists = when.map((verdict) => (verdict === YES ? 1 : 0));
     for (const column of columns) {
       for (let i = 0; i < points.count; i++) if (!Number.isFinite(column[i])) exists[i] = 0;
     }
-    return { columns, verdicts: own.verdicts, exists };
+    return { columns, verdicts: own, exists };
   }
 
   /** Inputs of a tape at points. */

@@ -1,4 +1,10 @@
-import { compileConditions, expandStable, type Condition, type Value } from '../control/index.ts';
+import {
+  compileConditions,
+  expandStable,
+  YES,
+  type Condition,
+  type Value,
+} from '../control/index.ts';
 import {
   traceRegion,
   type Axis,
@@ -201,10 +207,8 @@ function regionCondition(
       const inputs = compiled.inputs.map(
         (name) => own.get(name) ?? at.get(name) ?? numbers.nominal(plainName(name)) ?? NaN,
       );
-      const [batch] = compiled.evaluate(inputs, xs.length);
-      return (
-        batch.margins ?? Float64Array.from(batch.verdicts, (verdict) => (verdict === 1 ? 1 : -1))
-      );
+      // What cannot be told counts as not holding.
+      return compiled.evaluate(inputs, xs.length)[0].map((verdict) => (verdict === YES ? 1 : 0));
     };
   return {
     label: part.text,

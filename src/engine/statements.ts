@@ -10,6 +10,7 @@ import {
 } from '../language/index.ts';
 import { formatValue, parseUnit, type Unit } from '../units/index.ts';
 import { isRefusal } from '../base/index.ts';
+import { typedNominal } from './assumptions.ts';
 import { hidingWarning, type Catalogue } from './catalogue.ts';
 import type { Derivations } from './derivations.ts';
 import { checkDimensions, type DimensionReport } from './dimensions.ts';
@@ -368,7 +369,7 @@ export class Statements {
     return this.queries.get(`unit of:${name}`, () => {
       const entry = this.catalogue.entries.get(name);
       if (entry?.kind === 'assumption' && entry.node.kind === 'assumption')
-        return entry.node.value.unit;
+        return typedNominal(entry.node).unit;
       return this.catalogue.units.get(name)?.unit ?? null;
     });
   }

@@ -40,7 +40,7 @@ const compiled = compileConditions(
 function holds(xs: Float64Array, ys: Float64Array): Uint8Array {
   const gains: Readonly<Record<string, Float64Array>> = { Kp: xs, Ki: ys };
   const inputs = compiled.inputs.map((name) => gains[name] ?? values[name]);
-  return compiled.evaluate(inputs, xs.length)[0].verdicts.map((v) => (v === YES ? 1 : 0));
+  return compiled.evaluate(inputs, xs.length)[0].map((v) => (v === YES ? 1 : 0));
 }
 
 const side = { from: 0, to: 40, n: 400 };
