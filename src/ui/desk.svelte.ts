@@ -13,6 +13,8 @@ import { createFileService, isFailure, type FileService, type Folder } from './f
 
 /** Milliseconds after which results that are still being recomputed are greyed. */
 const GREY_AFTER = 200;
+/** Milliseconds after an edit in which its draft is kept. */
+const DRAFT_WITHIN = 400;
 const LAST_OPENED = 'loopwright last opened';
 
 /** Everything that the page shows, and what can be done to it. Made once, when the column is on the page. */
@@ -32,6 +34,7 @@ export class Desk {
   private readonly keeper: FileKeeper;
   private readonly client: EvaluatorClient;
   private readonly stopListening: () => void;
+  private drafting: ReturnType<typeof setTimeout> | null = null;
   private greying: ReturnType<typeof setTimeout> | null = null;
 
   constructor(
@@ -79,6 +82,7 @@ export class Desk {
 
   async open(name: string): Promise<void> {
     localStorage.setItem(LAST_OPENED, name);
+    this.keepDraft();
     this.onOpened(name);
     await this.keeper.open(name);
   }
@@ -138,7 +142,15 @@ export class Desk {
     return this.editor.dragNumbers([name]);
   }
 
+  /** Keeps the unsaved text in the browser, now. */
+  keepDraft(): void {
+    if (this.drafting !== null) clearTimeout(this.drafting);
+    this.drafting = null;
+    this.keeper.keepDraft();
+  }
+
   close(): void {
+    this.keepDraft();
     this.stopListening();
     this.client.close();
     this.editor.close();
@@ -169,6 +181,7 @@ export class Desk {
     this.client.update(text);
     this.headings = this.editor.headings;
     this.keeper.textChanged();
+    this.drafting ??= setTimeout(() => this.keepDraft(), DRAFT_WITHIN);
   }
 
   private take(sheet: Sheet): void {

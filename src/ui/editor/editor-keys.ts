@@ -1,7 +1,7 @@
 import { defaultKeymap, historyKeymap } from '@codemirror/commands';
 import { search, searchKeymap } from '@codemirror/search';
 import { EditorSelection, type Extension } from '@codemirror/state';
-import { EditorView, keymap, type Command } from '@codemirror/view';
+import { keymap, type Command, type EditorView } from '@codemirror/view';
 import { sheetOf } from './sheet-field.ts';
 import { undoSteps } from './undo-steps.ts';
 
@@ -19,15 +19,18 @@ export function editorKeys(save: () => void): Extension {
       { key: 'Escape', run: returnToReading },
       ...defaultKeymap,
     ]),
-    EditorView.domEventHandlers({
-      keydown(event, view) {
-        // From reading: the column, not the text in it, has the focus.
-        if (event.target !== view.scrollDOM || event.key !== 'Enter') return false;
-        view.focus();
-        return true;
-      },
-    }),
   ];
+}
+
+/** Enter, while reading, goes into the text: the column around it, not the text, has the focus then. */
+export function enterFromReading(view: EditorView): void {
+  const { scrollDOM } = view;
+  scrollDOM.tabIndex = 0;
+  scrollDOM.addEventListener('keydown', (event) => {
+    if (event.target !== scrollDOM || event.key !== 'Enter') return;
+    event.preventDefault();
+    view.focus();
+  });
 }
 
 /** Leaves the text for the column around it, which scrolls with the arrow keys. */

@@ -3,7 +3,7 @@ import { Compartment, EditorSelection, EditorState, type Text } from '@codemirro
 import { EditorView, highlightSpecialChars } from '@codemirror/view';
 import type { VocabularyWord } from '../../engine/index.ts';
 import { completing, setVocabulary } from './completion.ts';
-import { editorKeys } from './editor-keys.ts';
+import { editorKeys, enterFromReading } from './editor-keys.ts';
 import { fileText, keepEndings } from './endings-field.ts';
 import { functionHelp } from './function-help.ts';
 import { headingsOf } from './headings.ts';
@@ -37,9 +37,9 @@ export class WorksheetEditor {
     this.view = new EditorView({ parent, state: this.stateOf('') });
     this.savedDoc = this.view.state.doc;
     const { scrollDOM } = this.view;
-    scrollDOM.tabIndex = 0;
     scrollDOM.setAttribute('role', 'region');
     scrollDOM.setAttribute('aria-label', 'Worksheet');
+    enterFromReading(this.view);
   }
 
   /** The text of the file as it would be saved now, byte for byte where it was not edited. */

@@ -77,15 +77,22 @@ export class FileKeeper {
     });
   }
 
-  /** Notes that the text changed, and keeps the draft up to date. */
+  /** Notes that the text changed; the draft follows with {@link keepDraft}. */
   textChanged(): void {
     const { state } = this;
     if (state?.phase !== 'open') return;
-    const { holder, storage } = this.options;
-    const { edited } = holder;
-    if (edited) keepDraft(storage, state.name, { text: holder.fileText, baseHash: state.hash });
-    else if (!state.draft) dropDraft(storage, state.name);
+    const { edited } = this.options.holder;
     if (edited !== state.edited) this.patch({ edited });
+  }
+
+  /** Brings the draft up to the text. */
+  keepDraft(): void {
+    const { state } = this;
+    if (state?.phase !== 'open') return;
+    const { holder, storage } = this.options;
+    const { name, hash } = state;
+    if (holder.edited) keepDraft(storage, name, { text: holder.fileText, baseHash: hash });
+    else if (!state.draft) dropDraft(storage, name);
   }
 
   /** Saves over the file that the edits are based on; one that changed since is a conflict. */

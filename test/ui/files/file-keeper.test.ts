@@ -88,6 +88,7 @@ describe('keeping a worksheet', () => {
   const type = (text: string) => {
     editor.fileText = text;
     keeper.textChanged();
+    keeper.keepDraft();
   };
   const changeOnDisk = (text: string) => {
     disk.files.set('a.md', text);
