@@ -40,7 +40,7 @@ import type { Meanings } from './meanings.ts';
 import { quantityRatio } from './quantities.ts';
 import { replacementsOf } from './replacements.ts';
 import type { Scope } from './scope.ts';
-import { demand, stopAt } from './stop.ts';
+import { demand, stopAt, waitFor } from './stop.ts';
 import { signalPath, transferOf } from './signals.ts';
 
 /** The value of a formula in a scope; stops with a problem at its place where it has none. */
