@@ -29,6 +29,7 @@ export async function openPage(
   onTestFinished(async () => void (await server.stop()));
   const context = await browser.newContext({ viewport: { width: 1280, height: 800 }, ...options });
   onTestFinished(() => context.close());
+  context.setDefaultTimeout(10_000);
   const page = await context.newPage();
   const faults = collectFaults(page);
   onTestFinished(() => expect(faults).toEqual([]));
@@ -39,7 +40,7 @@ export async function openPage(
 function collectFaults(page: Page): string[] {
   const faults: string[] = [];
   page.on('console', (message) => {
-    if (isFault(message)) faults.push(`console ${message.type()}: ${message.text()}`);
+    if (isFault(message)) faults.push(`console ${message.type()}: ${message.text().slice(0, 300)}`);
   });
   // Uncaught errors and unhandled rejections, in the page and in its workers.
   page.on('pageerror', (error) => faults.push(`uncaught: ${error.message}`));
