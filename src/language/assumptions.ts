@@ -51,7 +51,7 @@ function refuseFormula(reader: LineReader, is: Span, name: string, start: number
 
 /** Reads the tolerance that may follow a nominal value: `± 8 %`, `± 8 % at 3 sigma`, `from 0 to 400 N m`. */
 export function readTolerance(reader: LineReader): ToleranceClause | null {
-  const from = reader.peek()?.from ?? 0;
+  const from = reader.place;
   if (reader.accept('±')) return readHalfWidth(reader, from);
   return reader.accept('from') ? readRange(reader, from) : null;
 }

@@ -309,7 +309,7 @@ function readPower(reader: LineReader): Expression {
 
 function readPostfix(reader: LineReader): Expression {
   const isBracket = reader.isAt('(');
-  const from = reader.peek()?.from ?? reader.previous.to;
+  const from = reader.place;
   let e = readAtom(reader);
   for (let length = 0; isMemberDot(reader) && isShortChain(reader, length); length++)
     e = readMember(reader, e, from);
@@ -544,7 +544,7 @@ function readLimit(reader: LineReader, of: Expression): Expression {
 }
 
 function readRows(reader: LineReader): Expression {
-  const from = reader.peek()!.from;
+  const from = reader.place;
   const rows: Expression[][] = [];
   do rows.push(readRow(reader));
   while (reader.accept('|'));

@@ -262,7 +262,7 @@ function readSources(reader: LineReader): readonly SourceTerm[] {
 
 /** Reads `- step(Tw) after 5 s`. */
 function readSource(reader: LineReader): SourceTerm {
-  const from = reader.peek()?.from ?? reader.previous.to;
+  const from = reader.place;
   const sign = reader.accept('-') ? -1 : 1;
   if (sign === 1) reader.accept('+');
   const source = readTerm(reader, false);

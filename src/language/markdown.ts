@@ -35,11 +35,12 @@ function parseFormulaBlock(context: BlockContext, line: Line): boolean {
   if (!first.startsWith('$$')) return false;
   const from = context.lineStart + line.pos;
   const lines = [line.text.slice(line.pos)];
-  let to = from + first.length;
+  let to = from + lines[0]!.length;
   let isClosed = first.length > 4 && first.endsWith('$$');
   while (!isClosed && context.nextLine() && !endsParagraph(context, line)) {
     lines.push(line.text);
-    to = context.lineStart + line.text.trimEnd().length;
+    // The whole line: a block that ends short of its line's end would be kept when the next line changes.
+    to = context.lineStart + line.text.length;
     isClosed = line.text.trimEnd().endsWith('$$');
   }
   if (isClosed) context.nextLine();

@@ -56,7 +56,7 @@ function signedNumber(reader: LineReader): { length: number; text: string } | nu
 
 /** Reads a number with an optional unit, where no formula may stand. */
 export function readQuantity(reader: LineReader, purpose: string): Quantity {
-  const from = reader.peek()?.from ?? reader.previous.to;
+  const from = reader.place;
   const number = signedNumber(reader);
   if (!number) {
     const { span } = reader.failUnexpected(`${purpose} needs a number`);
@@ -141,7 +141,7 @@ function endsSlot(token: Token | undefined): boolean {
 
 /** Reads a number that only a unit follows, in a slot that could hold a formula too; null if it is not one. */
 export function readSlotQuantity(reader: LineReader): Quantity | null {
-  const from = reader.peek()?.from ?? 0;
+  const from = reader.place;
   const number = signedNumber(reader);
   if (!number) return null;
   const scan = scanUnit(reader.tokens, reader.position + number.length);

@@ -55,6 +55,11 @@ export class LineReader {
     return this.tokens[Math.max(0, Math.min(this.position, this.tokens.length) - 1)]!;
   }
 
+  /** Where the next token starts; at the end, where the last one ends. */
+  get place(): number {
+    return this.peek()?.from ?? this.previous.to;
+  }
+
   take(): Token {
     return this.tokens[this.position++]!;
   }

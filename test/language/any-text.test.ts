@@ -5,7 +5,7 @@ import { SAMPLE } from './sample.ts';
 import { VOCABULARY } from './vocabulary.ts';
 
 const TOKENS =
-  'is are has tune from to points loop driven by uses as case of starts at after over for in with require where draw titled explain tabulate and or not unit s t j pi x Kp theta rows limit step 2 3.5 1e-3 ( ) [ ] \' . , | -> + - * / ^ = <= >= < > ± +- · % ° √ " "a" # ² × \ud800 😀 e\u0301 µ Ω'.split(
+  'is are has tune from to points loop driven by uses as case of starts at after over for in with require where draw titled explain tabulate and or not unit s t j pi x Kp theta rows limit step rows( limit( step( az( -> 2 3.5 1e-3 ( ) [ ] \' . , | -> + - * / ^ = <= >= < > ± +- · % ° √ " "a" # ² × \ud800 😀 e\u0301 µ Ω'.split(
     ' ',
   );
 const SPACES = ['', ' ', ' ', '\n', '\n  ', '\n    ', '\t', '\r\n'];
