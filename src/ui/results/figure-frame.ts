@@ -2,6 +2,7 @@ import { figureLayout, figureSvg, figureTable, type FigureData } from '../../fig
 import { DragHandle } from './drag-handle.ts';
 import { element } from './element.ts';
 import type { PointDrag } from './point-drag.ts';
+import { spoken } from './spoken.ts';
 import { tableElement } from './value-table.ts';
 
 const LEAST_WIDTH = 320;
@@ -48,7 +49,9 @@ export class FigureFrame {
     this.figure = figure;
     this.element.setAttribute('aria-label', figureName(figure));
     this.caption.textContent = figure.title ?? '';
-    this.notes.replaceChildren(...figure.notes.map((note) => element('p', 'note', note)));
+    this.notes.replaceChildren(
+      ...figure.notes.map((note) => element('p', 'note', ...spoken(note))),
+    );
     this.draw();
     if (this.data.open) this.showData();
   }

@@ -1,5 +1,6 @@
 import type { Fix, Problem } from '../../base/index.ts';
 import { element } from './element.ts';
+import { spoken } from './spoken.ts';
 
 /** A problem said under its statement, with its fixes as buttons. */
 export function problemRow(problem: Problem, applyFix: (fix: Fix) => void): HTMLElement {
@@ -8,7 +9,7 @@ export function problemRow(problem: Problem, applyFix: (fix: Fix) => void): HTML
   row.setAttribute('role', 'group');
   row.setAttribute('aria-label', kind);
   row.append(element('span', 'problem-mark', problem.severity === 'error' ? '!' : '?'));
-  row.append(element('span', 'problem-words', problem.message));
+  row.append(element('span', 'problem-words', ...spoken(problem.message)));
   if (problem.fixes.length > 0) {
     row.append(element('span', 'fixes', ...problem.fixes.map((fix) => fixButton(fix, applyFix))));
   }
@@ -16,7 +17,7 @@ export function problemRow(problem: Problem, applyFix: (fix: Fix) => void): HTML
 }
 
 function fixButton(fix: Fix, applyFix: (fix: Fix) => void): HTMLElement {
-  const button = element('button', 'fix', fix.title);
+  const button = element('button', 'fix', ...spoken(fix.title));
   button.type = 'button';
   button.addEventListener('click', () => applyFix(fix));
   return button;

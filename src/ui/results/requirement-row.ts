@@ -2,6 +2,7 @@ import type { RequirementContent } from '../../engine/index.ts';
 import type { Movement } from '../baseline.ts';
 import { verdictClass, verdictShape, verdictWord } from '../verdicts.ts';
 import { element } from './element.ts';
+import { spoken } from './spoken.ts';
 import { marginBarElement } from './margin-bar.ts';
 import { movementElement, waitingLine, withMinus } from './result-row.ts';
 
@@ -21,7 +22,7 @@ export function requirementRow(
   if (movement) figures.append(movementElement(movement));
   row.append(element('div', 'result-line', verdictElement(content), figures));
   if (content.waitsFor) row.append(waitingLine(content.waitsFor));
-  row.append(...content.notes.map((note) => element('p', 'note', note)));
+  row.append(...content.notes.map((note) => element('p', 'note', ...spoken(note))));
   return row;
 }
 

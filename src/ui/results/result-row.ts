@@ -1,6 +1,7 @@
 import type { ResultContent } from '../../engine/index.ts';
 import type { Movement } from '../baseline.ts';
 import { element } from './element.ts';
+import { spoken } from './spoken.ts';
 import { typeset } from './mathematics.ts';
 import { resultTable } from './value-table.ts';
 
@@ -22,7 +23,7 @@ export function resultRow(content: ResultContent, movement: Movement | null): HT
   else row.append(mainLine(content, movement));
   const table = resultTable(content);
   if (table) row.append(table);
-  row.append(...content.notes.map((note) => element('p', 'note', note)));
+  row.append(...content.notes.map((note) => element('p', 'note', ...spoken(note))));
   return row;
 }
 
