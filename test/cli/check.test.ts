@@ -1,5 +1,5 @@
 import { readdirSync } from 'node:fs';
-import { writeFile } from 'node:fs/promises';
+import { readFile, writeFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import type { CheckRecord } from '../../src/cli/check-record.ts';
@@ -120,6 +120,18 @@ describe('the command', () => {
       complaints: `${verb} is not available yet.\n`,
     });
   });
+});
+
+it('the first worksheet of the readme comes to what the readme says', async () => {
+  const readme = await readFile('README.md', 'utf8');
+  const lines = readme.split('\n').filter((line) => line === '' || line.startsWith('    '));
+  const text = lines.map((line) => line.slice(4)).join('\n');
+  const file = join(await temporaryFolder(), 'readme.md');
+  await writeFile(file, text.slice(text.indexOf('# Tank level')));
+  const { code, output } = await runCommand('check', file);
+  expect(output).toMatch(/● met +R-1 stable/);
+  expect(output).toMatch(/◐ met at nominal only +R-2 offset +20, worst 50, limit 25 mm/);
+  expect(code).toBe(1);
 });
 
 it('every worksheet of ours has no error, and its check takes less than a second, starting included', async () => {
