@@ -34,7 +34,7 @@ import {
   type LoopStatement,
   type Statement,
 } from '../language/index.ts';
-import { formulaText, type Writing } from '../present/index.ts';
+import { conditionText, formulaText, type Writing } from '../present/index.ts';
 import { customUnit, parseUnit, type CustomUnits, type Unit } from '../units/index.ts';
 import { formulaValue } from './arithmetic.ts';
 import { readCase, signalIn, type CaseRecord } from './cases.ts';
@@ -317,7 +317,7 @@ export class Derivations implements Meanings {
     }
     const relevant = relevantScope(scope, this.reachOf(caseName));
     return this.queries.get(`signal:${caseName}.${path}@${relevant.key}`, () =>
-      signalIn(record, path, new Budget(DEFAULT_BUDGET), span),
+      signalIn(this.caseOf(caseName, span, scope), path, new Budget(DEFAULT_BUDGET), span),
     );
   }
 
@@ -394,6 +394,19 @@ export class Derivations implements Meanings {
   /** Stability conditions written out as inequalities. */
   expandStability(condition: Condition): Condition {
     return expandStable(condition, this.signOf, new Budget(DEFAULT_BUDGET));
+  }
+
+  /** What a value takes for granted, in a sentence on the symbols; empty where it stands without conditions. */
+  provisions({ when }: Value): readonly string[] {
+    if (when === ALWAYS) return [];
+    return this.queries.get(
+      `provisions:${conditionKey(when)}`,
+      () => {
+        const text = conditionText(when, this.writing());
+        return text === conditionText(ALWAYS, this.writing()) ? [] : [`Provided that ${text}.`];
+      },
+      sameList,
+    );
   }
 
   customUnits(): CustomUnits {

@@ -77,7 +77,15 @@ export function resultContent(
     unit: typeof nominal.value === 'boolean' ? null : coherentText(display.measure),
     shown,
     span: typeof nominal.value === 'number' ? spanOf(request, numbers, derivations) : null,
-    notes: [...new Set([...value.notes, ...request.notes, ...display.notes, ...nominal.notes])],
+    notes: [
+      ...new Set([
+        ...derivations.provisions(value),
+        ...value.notes,
+        ...request.notes,
+        ...display.notes,
+        ...nominal.notes,
+      ]),
+    ],
     parts,
     figure: null,
     state: isTrivial(value, request, formula) ? 'trivial' : 'ready',
@@ -160,7 +168,8 @@ function nominalValue(subject: Subject, numbers: Numbers, writing: Writing): Nom
       notes: ['With the values that are exactly 0 left out, this cannot be derived.'],
     };
   const { value } = compiled;
-  if (value.kind === 'none') return { value: null, notes: [`No value: ${value.reason}`] };
+  if (value.kind === 'none')
+    return { value: null, notes: [`No value: ${valueText(value, writing)}`] };
   if (value.kind !== 'formula' && value.kind !== 'condition') return NO_VALUE;
   if (value.kind === 'formula' && !compiled.ratios) return NO_VALUE;
   const missing = numbers.missing(compiled);
@@ -197,7 +206,7 @@ function absentAtNominal(
   const scope = numbers.exactScope(subject);
   const exact = scope && numbers.compiled(subject, scope);
   if (exact?.value.kind === 'none')
-    return { value: null, notes: [`No value at the nominal: ${exact.value.reason}`] };
+    return { value: null, notes: [`No value at the nominal: ${valueText(exact.value, writing)}`] };
   if (exact?.value.kind === 'formula' && exact.ratios && numbers.missing(exact).length === 0) {
     const evaluated = numbers.evaluate(exact, NOMINAL);
     if (evaluated.exists[0])
