@@ -193,10 +193,7 @@ class DimensionCheck {
     for (const start of statement.starts) {
       const path = memberPath(start.signal.kind === 'derivative' ? start.signal.of : start.signal);
       if (path === null) continue;
-      const wanted = mulMeasures(
-        this.signal(loop.name, path),
-        powMeasure(DERIVATIVE, start.order),
-      );
+      const wanted = mulMeasures(this.signal(loop.name, path), powMeasure(DERIVATIVE, start.order));
       this.agree(
         start.signal,
         wanted,

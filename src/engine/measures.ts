@@ -142,13 +142,21 @@ export function isRate(a: Measure): boolean {
   );
 }
 
-/** The measure in words: `N m`, `rad`, `a pure number`. */
+/** The measure in words: `N m`, `rad`, `a pure number`; `[x] 1/s` where the unit of x is not known. */
 export function measureText(a: Measure): string {
   const text = dimensionText(dimensionIn(a), {
     angle: a.exponents[ANGLE],
     cycles: a.exponents[CYCLE],
   });
-  return text === '' || text === '1' ? 'a pure number' : text;
+  const known = text === '1' ? '' : text;
+  const unknown = [...a.unknowns].map(unknownText).join(' ');
+  return [unknown, known].filter((part) => part !== '').join(' ') || 'a pure number';
+}
+
+/** The unit of a signal or a symbol, as ISO 80000-1 writes it: `[x]`, `[x]^2`. */
+function unknownText([key, exponent]: readonly [string, number]): string {
+  const name = key.slice(key.lastIndexOf('.') + 1).replace(/^symbol /, '');
+  return `[${name}]${exponent === 1 ? '' : `^${exponent}`}`;
 }
 
 /** The dimensions inferred so far, and the one way to add to them. */
@@ -179,13 +187,13 @@ export class Inference {
     return settled;
   }
 
-  /** Makes two measures agree by inferring an unknown; false where they disagree and both carry a unit. */
+  /** Makes two measures agree by inferring an unknown; false where they disagree and a unit is to blame. */
   unify(a: Measure, b: Measure): boolean {
     if (fitsAnywhere(a) || fitsAnywhere(b)) return true;
     const [left, right] = [this.settle(a), this.settle(b)];
     const difference = divMeasures(left, right);
     const [unknown] = difference.unknowns;
-    if (!unknown && !(left.rigid && right.rigid)) return true;
+    if (!unknown && !difference.rigid) return true;
     if (!unknown)
       return difference.exponents.slice(0, BASES).every((exponent) => Math.abs(exponent) < 1e-9);
     const [name, exponent] = unknown;

@@ -144,9 +144,10 @@ export class Numbers {
 
   /** The nominal of an assumption or of a derived parameter. */
   valueOfName(name: string): number | null {
-    const meaning = this.derivations.abbreviated(name);
-    if (!meaning) return this.nominal(name);
-    return this.queries.get(`parameter-value:${name}`, () => this.valueOfRatio(meaning));
+    return this.queries.get(`value of:${name}`, () => {
+      const meaning = this.derivations.abbreviated(name);
+      return meaning ? this.valueOfRatio(meaning) : this.nominal(name);
+    });
   }
 
   /** Whether a derived parameter depends on a toleranced name other than through `nominal`. */

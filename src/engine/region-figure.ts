@@ -11,6 +11,7 @@ import {
   type BatchMargin,
   type RegionCondition,
   type RegionFigure,
+  type RegionTrace,
 } from '../figures/index.ts';
 import {
   formatExpression,
@@ -23,7 +24,6 @@ import { unitText, valueIn, type Unit } from '../units/index.ts';
 import { readBounds } from './assumptions.ts';
 import type { Catalogue } from './catalogue.ts';
 import {
-  derivedValue,
   reachOfAll,
   requireNumbers,
   type FigureContent,
@@ -31,79 +31,86 @@ import {
 } from './figure-sources.ts';
 import { plainName, type Numbers, type Subject } from './numbers.ts';
 import { BASE_SCOPE } from './scope.ts';
-import { Stop, stopAt } from './stop.ts';
+import { outcomeOf, Stop, stopAt, type Outcome } from './stop.ts';
 import { sampleBox } from './tolerance.ts';
 
 /** Samples on each side of a gain plane. */
 const REGION_SAMPLES = 400;
 
-/** A gain plane: where conditions hold at nominal values and over the tolerances. */
+/** A gain plane: where conditions hold at nominal values and over the tolerances. Dragging its point redraws nothing else. */
 export function regionContent(node: DrawStatement, sources: FigureSources): FigureContent {
-  if (node.of.length !== 2)
+  if (node.of.length !== 2) {
     stopAt(
       node.figureSpan,
       'two-gains',
       'A region is drawn over two gains: `draw region of Kp, Ki where …`.',
     );
-  if (node.where.length === 0)
+  }
+  if (node.where.length === 0) {
     stopAt(node.figureSpan, 'no-condition', 'Say where the region is: `where stable(az), …`.');
-  const sides = node.of.map((gain) => gainSide(gain, sources));
+  }
   const subjects = node.where.map((condition) => sources.subjectOf(condition));
-  const conditions = subjects.map((subject, index) =>
-    conditionOf(derivedValue(subject), node.where[index]),
+  const [x, y] = node.of.map((gain) => settled(gainSide(gain, sources)));
+  const { trace, notes } = settled(
+    sources.queries.get(`region:${sources.key}`, () => traceOf(node, subjects, sources)),
   );
-  const [x, y] = sides;
   const figure: RegionFigure = {
     kind: 'region',
     title: node.title,
     x: x.axis,
     y: y.axis,
-    ...traced(node, x, y, conditions, subjects, sources),
-    point: { x: x.present, y: y.present, draggable: true },
-    notes: [],
+    ...trace,
+    point: {
+      x: presentValue(x, sources.numbers),
+      y: presentValue(y, sources.numbers),
+      draggable: true,
+    },
+    notes,
   };
-  return { figure, notes: [], dependsOn: reachOfAll(subjects) };
+  return { figure, notes, dependsOn: reachOfAll(subjects) };
 }
 
-function conditionOf(value: Value, expression: Expression): Extract<Value, { kind: 'condition' }> {
-  if (value.kind === 'condition') return value;
-  const why = value.kind === 'none' ? value.reason : 'it is not a condition';
-  return stopAt(
-    expression.span,
-    'not-a-condition',
-    `\`${formatExpression(expression)}\` cannot bound a region: ${why}.`,
-  );
+function settled<T>(outcome: Outcome<T>): T {
+  if (outcome.ok) return outcome.value;
+  throw new Stop(outcome.problem, outcome.waitsFor);
 }
 
 interface GainSide {
   readonly name: string;
   readonly axis: Axis;
   readonly unit: Unit;
-  /** The present value in the axis's unit. */
-  readonly present: number;
 }
 
-/** One side of a gain plane: the tuned range of the gain, in its typed unit. */
-function gainSide(gain: Expression, { queries, numbers, derivations }: FigureSources): GainSide {
+/** One side of a gain plane: the tuned range of the gain, in its typed unit. Its present value is not part of it. */
+function gainSide(gain: Expression, sources: FigureSources): Outcome<GainSide> {
+  return sources.queries.get(
+    `gain-side:${sources.key}:${gain.span.from}`,
+    () => outcomeOf(gain.span, () => readGainSide(gain, sources)),
+    (a, b) => JSON.stringify(a) === JSON.stringify(b),
+  );
+}
+
+function readGainSide(
+  gain: Expression,
+  { queries, numbers, derivations }: FigureSources,
+): GainSide {
   if (gain.kind !== 'name')
-    stopAt(gain.span, 'not-a-gain', 'A region is drawn over the names of two gains.');
+    return stopAt(gain.span, 'not-a-gain', 'A region is drawn over the names of two gains.');
   const reading = numbers.reading(gain.name);
-  if (!reading)
-    stopAt(
+  if (!reading) {
+    return stopAt(
       gain.span,
       'not-a-gain',
       `${gain.name} is not an assumption with a value, so it cannot be a side of a region.`,
     );
+  }
   if (!reading.ok) throw new Stop(null, gain.name);
   const tune = queries.input<Catalogue>('catalogue').tunes.get(gain.name);
   if (!tune) {
-    stopAt(
-      gain.span,
-      'not-tuned',
-      `${gain.name} has no range to draw over; add \`tune ${gain.name} from … to …\`.`,
-    );
+    const fix = `add \`tune ${gain.name} from … to …\``;
+    return stopAt(gain.span, 'not-tuned', `${gain.name} has no range to draw over; ${fix}.`);
   }
-  const { unit, value } = reading.value;
+  const { unit } = reading.value;
   const bounds = readBounds(
     tune.node.from,
     tune.node.to,
@@ -114,53 +121,66 @@ function gainSide(gain: Expression, { queries, numbers, derivations }: FigureSou
   const [from, to] = bounds.map((si) => valueIn(si, unit));
   if (!(from < to))
     stopAt(gain.span, 'empty-range', `The range over which ${gain.name} is tuned is empty.`);
-  const text = unitText(unit);
-  const name = nameToText(gain.name);
-  const axis: Axis = {
-    name: gain.name,
-    label: text ? `gain ${name}, ${text}` : `gain ${name}`,
-    unit: text,
-    from,
-    to,
-  };
-  return { name: gain.name, axis, unit, present: valueIn(value.value, unit) };
+  return { name: gain.name, axis: axisOf(gain.name, unitText(unit), from, to), unit };
+}
+
+function axisOf(gain: string, unit: string, from: number, to: number): Axis {
+  const name = nameToText(gain);
+  return { name: gain, label: unit ? `gain ${name}, ${unit}` : `gain ${name}`, unit, from, to };
+}
+
+function presentValue(side: GainSide, numbers: Numbers): number {
+  return valueIn(numbers.nominal(side.name)!, side.unit);
+}
+
+interface NotedTrace {
+  readonly trace: RegionTrace;
+  readonly notes: readonly string[];
+}
+
+function traceOf(
+  node: DrawStatement,
+  subjects: readonly Subject[],
+  sources: FigureSources,
+): Outcome<NotedTrace> {
+  return outcomeOf(node.span, () => {
+    const [x, y] = node.of.map((gain) => settled(gainSide(gain, sources)));
+    const conditions = subjects.map((subject, index) =>
+      regionPart(subject, node.where[index], [x, y], sources),
+    );
+    const requests = conditions.map((part) => regionCondition(part, x, y, node, sources.numbers));
+    const corners = Math.max(...requests.map((request) => request.tolerance.length));
+    const trace = traceRegion({
+      x: { from: x.axis.from, to: x.axis.to, n: REGION_SAMPLES },
+      y: { from: y.axis.from, to: y.axis.to, n: REGION_SAMPLES },
+      conditions: requests,
+    });
+    const words = `The area over the tolerances holds at ${corners} corners of them: looked at, not proved.`;
+    return { trace, notes: corners > 0 ? [words] : [] };
+  });
+}
+
+/** The condition as derived with the values that are exactly 0 left out, those of the two gains excepted. */
+function regionPart(
+  subject: Subject,
+  expression: Expression,
+  sides: readonly GainSide[],
+  sources: FigureSources,
+): BoundaryPart {
+  const { numbers } = sources;
+  const zeros = numbers.zeros(subject).filter((name) => !sides.some((side) => side.name === name));
+  const value = settled(subject.derive(numbers.zeroScope(zeros)));
+  if (value.kind === 'condition') return boundaryPart(value, expression, sources);
+  const why = value.kind === 'none' ? value.reason : 'it is not a condition';
+  return stopAt(
+    expression.span,
+    'not-a-condition',
+    `\`${formatExpression(expression)}\` cannot bound a region: ${why}.`,
+  );
 }
 
 /** Corner sets of the tolerances that the area is checked at, at the most. */
 const MOST_REGION_CORNERS = 32;
-
-function traced(
-  node: DrawStatement,
-  x: GainSide,
-  y: GainSide,
-  conditions: readonly Extract<Value, { kind: 'condition' }>[],
-  subjects: readonly Subject[],
-  sources: FigureSources,
-): Pick<RegionFigure, 'nominalArea' | 'toleranceArea' | 'boundaries'> {
-  const parts = conditions.flatMap((value, index) =>
-    boundaryParts(value, node.where[index], sources),
-  );
-  const requests = parts.map((part) => regionCondition(part, x, y, sources));
-  const compiledInputs = compileConditions(
-    parts.map((part) => part.condition),
-    sources.numbers.resolve,
-  ).inputs;
-  requireNumbers(compiledInputs, { span: node.figureSpan }, sources.numbers);
-  const inputs = [...new Set(subjects.flatMap((subject) => [...subject.reach]))];
-  const others = inputs.filter((name) => name !== x.name && name !== y.name);
-  const values = others
-    .map((name) => `${sources.numbers.nominal(name)}${sources.numbers.bounds(name)}`)
-    .join(' ');
-  const names = parts.map((part) => part.text).join(';');
-  const key = `region:${sources.key}:${x.axis.from} ${x.axis.to} ${y.axis.from} ${y.axis.to} ${values} ${names}`;
-  return sources.queries.get(key, () =>
-    traceRegion({
-      x: { from: x.axis.from, to: x.axis.to, n: REGION_SAMPLES },
-      y: { from: y.axis.from, to: y.axis.to, n: REGION_SAMPLES },
-      conditions: requests,
-    }),
-  );
-}
 
 interface BoundaryPart {
   readonly condition: Condition;
@@ -169,11 +189,11 @@ interface BoundaryPart {
 }
 
 /** A stability condition is labelled by the inequalities that it comes to, where they are short. */
-function boundaryParts(
+function boundaryPart(
   value: Extract<Value, { kind: 'condition' }>,
   expression: Expression,
   { derivations }: FigureSources,
-): BoundaryPart[] {
+): BoundaryPart {
   const whole: Condition =
     value.when.kind === 'truth'
       ? value.condition
@@ -182,10 +202,11 @@ function boundaryParts(
   if (value.condition.kind === 'stable') {
     const reduced = readable(expandStable(value.condition, writing.signOf));
     const text = conditionText(reduced, writing);
-    if (text.length <= LONGEST_LABEL)
-      return [{ condition: whole, text, latex: conditionLatex(reduced, writing) }];
+    if (text.length <= LONGEST_LABEL) {
+      return { condition: whole, text, latex: conditionLatex(reduced, writing) };
+    }
   }
-  return [{ condition: whole, text: formatExpression(expression), latex: null }];
+  return { condition: whole, text: formatExpression(expression), latex: null };
 }
 
 const LONGEST_LABEL = 40;
@@ -194,9 +215,12 @@ function regionCondition(
   part: BoundaryPart,
   x: GainSide,
   y: GainSide,
-  { numbers }: FigureSources,
+  node: DrawStatement,
+  numbers: Numbers,
 ): RegionCondition {
   const compiled = compileConditions([part.condition], numbers.resolve);
+  const others = compiled.inputs.filter((name) => name !== x.name && name !== y.name);
+  requireNumbers(others, { span: node.figureSpan }, numbers);
   const marginAt =
     (at: ReadonlyMap<string, number>): BatchMargin =>
     (xs, ys) => {

@@ -1,10 +1,10 @@
 import { laplace, type Generator, type Ratio } from '../algebra/index.ts';
 import type { Span } from '../base/index.ts';
 import type { Value } from '../control/index.ts';
-import { formatExpression, type Expression, type With } from '../language/index.ts';
+import type { Expression, With } from '../language/index.ts';
 import { kindInWords } from './arithmetic.ts';
 import type { Meanings } from './meanings.ts';
-import { narrowScope, valueKey, type ReplacementValue, type Scope } from './scope.ts';
+import { narrowScope, replacementKey, type ReplacementValue, type Scope } from './scope.ts';
 import { stopAt } from './stop.ts';
 
 /** The scope inside a `with`, and the values given to s in it. */
@@ -36,7 +36,7 @@ function replacementValue(
 ): ReplacementValue {
   const value = meanings.evaluate(expression, scope);
   const fraction = value.kind === 'formula' ? meanings.evaluateFraction(expression, scope) : null;
-  return { value, fraction, key: valueKey(value, `${formatExpression(expression)}@${scope.key}`) };
+  return { value, fraction, key: replacementKey(value, fraction) };
 }
 
 /** The ratio of a formula; stops where the value is something else. */

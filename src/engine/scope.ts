@@ -1,4 +1,4 @@
-import { ratioKey } from '../algebra/index.ts';
+import { polynomialKey } from '../algebra/index.ts';
 import type { Fraction } from '../algebra/index.ts';
 import type { Value } from '../control/index.ts';
 
@@ -42,7 +42,13 @@ export function relevantScope(scope: Scope, relevant: ReadonlySet<string>): Scop
   return kept.size === 0 ? BASE_SCOPE : narrowScope(BASE_SCOPE, kept);
 }
 
-/** The key of a value as a replacement. */
-export function valueKey(value: Value, fallback: string): string {
-  return value.kind === 'formula' ? ratioKey(value.ratio) : fallback;
+const identities = new WeakMap<Value, number>();
+let identityCount = 0;
+
+/** The key of a replacement: of a formula its uncancelled fraction, of any other value the object itself. */
+export function replacementKey(value: Value, fraction: Fraction | null): string {
+  if (fraction) return `${polynomialKey(fraction.num)}/${polynomialKey(fraction.den)}`;
+  const identity = identities.get(value) ?? ++identityCount;
+  identities.set(value, identity);
+  return `#${identity}`;
 }

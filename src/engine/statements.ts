@@ -272,17 +272,33 @@ export class Statements {
 
   /** A formula of a statement, as something that has a value. */
   subjectOf(node: Statement, formula: Expression, name: string | null): Subject {
-    const key = name === null ? `${this.keyOf(node)}:${formula.span.from}` : `definition ${name}`;
-    const reach = this.reachOfFormula(formula);
+    return name === null ? this.formulaSubject(node, formula) : this.definitionSubject(name);
+  }
+
+  private definitionSubject(name: string): Subject {
+    const { derivations } = this;
+    return {
+      key: `definition ${name}`,
+      // Asked for anew each time, so that every reader records what the names are derived from.
+      get reach() {
+        return derivations.reachOf(name);
+      },
+      derive: (scope) => derivations.definition(name, scope),
+    };
+  }
+
+  private formulaSubject(node: Statement, formula: Expression): Subject {
+    const key = `${this.keyOf(node)}:${formula.span.from}`;
+    const reach = () => this.reachOfFormula(formula);
     return {
       key,
-      reach,
+      get reach() {
+        return reach();
+      },
       derive: (scope) =>
-        name !== null
-          ? this.derivations.definition(name, scope)
-          : this.queries.get(`derived:${key}@${scope.key}`, () =>
-              outcomeOf(formula.span, () => this.derivations.evaluate(formula, scope)),
-            ),
+        this.queries.get(`derived:${key}@${scope.key}`, () =>
+          outcomeOf(formula.span, () => this.derivations.evaluate(formula, scope)),
+        ),
     };
   }
 
