@@ -1,8 +1,18 @@
-import { coverSpans, type Span } from '../base/index.ts';
-import type { Arrow, Expression, Name, RelationOperator, Replacement } from './ast.ts';
+import { coverSpans } from '../base/index.ts';
+import type { Arrow, Expression, RelationOperator, Replacement } from './ast.ts';
 import { bracketContent, bracketUse, type BracketUse } from './brackets.ts';
-import { insertion, replacement } from './fixes.ts';
-import { canonicalName, CONSTANT_MEANINGS } from './names.ts';
+import {
+  closeBracket,
+  failBareFraction,
+  isShortChain,
+  refuseBracketAfter,
+  refuseEvaluation,
+  refuseLooseBracket,
+  refusePlusMinus,
+  whyNoDerivative,
+} from './formula-refusals.ts';
+import { nameOf, readName } from './name-reading.ts';
+import { canonicalName } from './names.ts';
 import {
   readBracketedUnit,
   readQuantity,
@@ -11,16 +21,22 @@ import {
   refuseUnitInFormula,
 } from './quantities.ts';
 import type { LineReader } from './reader.ts';
-import { solidusFixes, solidusMessage } from './solidus.ts';
+import {
+  isOwnNumber,
+  numberOf,
+  productOf,
+  readCoefficient,
+  refuseNumberAfterNumber,
+  refuseUnclearSolidus,
+  startsFactor,
+  type Chain,
+} from './terms.ts';
 import type { Token } from './tokens.ts';
 
 const RELATIONS: ReadonlySet<string> = new Set(['<', '<=', '=', '>=', '>']);
 
 /** The functions that list names which nothing else needs to introduce. */
 const LISTS_UNKNOWNS: ReadonlySet<string> = new Set(['solve', 'match']);
-
-/** Chains of `.`, `with` or `in` longer than this are refused, since each link nests the one before. */
-const LONGEST_CHAIN = 20;
 
 /** Reads a whole formula, the loosest level: `in`. With `slot`, its first number may carry a unit. */
 export function readFormula(reader: LineReader, slot = false): Expression {
@@ -38,14 +54,6 @@ export function readCondition(reader: LineReader): Expression {
 /** Reads what a quantity slot holds: a number with a unit, a number, or a formula. */
 export function readSlot(reader: LineReader): Expression {
   return reader.nested(() => readSum(reader, true));
-}
-
-/** Whether a chain may go on; it fails where the chain has become too long. */
-function isShortChain(reader: LineReader, length: number): boolean {
-  if (length < LONGEST_CHAIN) return true;
-  const what = `This chain has more than ${LONGEST_CHAIN} links`;
-  reader.fail(reader.previous, 'too-deep', `${what}; give its parts names of their own.`);
-  return false;
 }
 
 function readIn(reader: LineReader, slot: boolean): Expression {
@@ -91,34 +99,6 @@ export function readAssumedValue(reader: LineReader): Expression {
   const number: Expression = { kind: 'number', span: quantity.span, text };
   if (text === quantity.text) return number;
   return { kind: 'negation', span: quantity.span, of: number };
-}
-
-/** Reads a name that is being mentioned rather than used. */
-export function readName(reader: LineReader, purpose: string): Name {
-  const token = reader.peek();
-  if (token?.kind === 'name') {
-    reader.take();
-    return nameOf(token);
-  }
-  const { span } = reader.failUnexpected(purpose);
-  return { kind: 'name', span, name: '' };
-}
-
-/** Reads a name that a statement introduces, which must not be one of the language's own. */
-export function readNewName(reader: LineReader, purpose: string): Name {
-  const token = reader.peek();
-  const meaning = token?.kind === 'name' ? CONSTANT_MEANINGS.get(canonicalName(token.text)) : null;
-  if (token && meaning)
-    reader.fail(token, 'reserved-name', `\`${token.text}\` is ${meaning}; choose another name.`);
-  return readName(reader, purpose);
-}
-
-function nameOf(token: Token): Name {
-  return {
-    kind: 'name',
-    span: { from: token.from, to: token.to },
-    name: canonicalName(token.text),
-  };
 }
 
 function readOr(reader: LineReader, slot: boolean): Expression {
@@ -171,22 +151,6 @@ export function readSum(reader: LineReader, slot: boolean): Expression {
   return { kind: 'sum', span: reader.spanFrom(terms[0]!.span.from), terms, signs };
 }
 
-function refusePlusMinus(reader: LineReader): void {
-  const token = reader.peek();
-  if (token?.kind !== 'symbol' || token.text !== '±') return;
-  reader.fail(
-    token,
-    'unexpected',
-    'A tolerance, `±`, belongs to an assumption, as in `J is 480 kg m^2 ± 8 %`.',
-  );
-}
-
-/** A product and quotient that is being read: runs of juxtaposed factors, with the operators between them. */
-interface Chain {
-  readonly runs: Expression[][];
-  readonly operators: ('*' | '/')[];
-}
-
 /** Reads a term: factors, multiplied by a space or `*`, and at most one solidus. */
 export function readTerm(reader: LineReader, slot: boolean): Expression {
   const quantity = slot ? readSlotQuantity(reader) : null;
@@ -204,31 +168,6 @@ export function readTerm(reader: LineReader, slot: boolean): Expression {
   return productOf(chain, coefficient !== null);
 }
 
-/**
- * A number over a number at the start of a term, before a name, call or bracket, is a coefficient: `1/2 s`. Gives the
- * two numbers, or null.
- */
-function readCoefficient(reader: LineReader): Expression[] | null {
-  const hasSign = reader.isAt('-');
-  const at = hasSign ? 1 : 0;
-  const [numerator, divisor, next] = [reader.peek(at), reader.peek(at + 2), reader.peek(at + 3)];
-  if (numerator?.kind !== 'number' || !reader.isAt('/', at + 1) || divisor?.kind !== 'number')
-    return null;
-  const isFactor = next?.kind === 'name' ? canonicalName(next.text) !== 'pi' : next?.text === '(';
-  if (!isFactor) return null;
-  const sign = hasSign ? reader.take() : null;
-  reader.position += 3;
-  const over = numberOf(numerator);
-  const signed: Expression = sign
-    ? { kind: 'negation', span: coverSpans(sign, numerator), of: over }
-    : over;
-  return [signed, numberOf(divisor)];
-}
-
-function numberOf(token: Token): Expression {
-  return { kind: 'number', span: { from: token.from, to: token.to }, text: token.text };
-}
-
 /** Reads juxtaposed factors onto those that were read before. */
 function readRun(reader: LineReader, factors: Expression[]): Expression[] {
   if (factors.length === 0) factors.push(readSigned(reader));
@@ -238,58 +177,6 @@ function readRun(reader: LineReader, factors: Expression[]): Expression[] {
     refuseNumberAfterNumber(reader);
     factors.push(readPower(reader));
   }
-}
-
-/** Whether a number was read last that is a factor by itself, not an exponent and not a divisor. */
-function isOwnNumber(reader: LineReader, factors: readonly Expression[]): boolean {
-  const last = factors.at(-1);
-  const number = last?.kind === 'negation' ? last.of : last;
-  return number?.kind === 'number' && reader.tokens[reader.position - 2]?.text !== '/';
-}
-
-function startsFactor(token: Token | undefined): boolean {
-  if (!token) return false;
-  if (token.kind === 'name' || token.kind === 'number') return true;
-  return token.kind === 'symbol' && token.text === '(';
-}
-
-function refuseNumberAfterNumber(reader: LineReader): void {
-  const [before, next] = [reader.previous, reader.peek()!];
-  if (before.kind !== 'number' || next.kind !== 'number') return;
-  const span = { from: before.from, to: next.to };
-  reader.fail(
-    span,
-    'split-number',
-    `\`${reader.text(span)}\` is two numbers side by side: write one number without spaces, or \`*\` between them.`,
-    [replacement(span, before.text + next.text), replacement(span, `${before.text}*${next.text}`)],
-  );
-}
-
-/** ISO 80000-2 has no multiplication or division after a solidus without brackets. */
-function refuseUnclearSolidus(reader: LineReader, { runs, operators }: Chain): void {
-  const at = operators.findIndex(
-    (operator, k) => operator === '/' && (runs[k + 1]!.length > 1 || k + 1 < operators.length),
-  );
-  if (at < 0) return;
-  const [run, numeratorEnd] = [runs[at + 1]!, runs[at]!.at(-1)!.span];
-  const rest = run.length > 1 ? run : [...run, ...runs[at + 2]!];
-  const readings = {
-    numerator: coverSpans(runs[0]![0]!.span, numeratorEnd),
-    divisor: run[0]!.span,
-    rest: coverSpans(rest[0]!.span, rest.at(-1)!.span),
-  };
-  const span = coverSpans(readings.numerator, readings.rest);
-  const { source } = reader;
-  reader.refuse(span, 'solidus', solidusMessage(readings, source), solidusFixes(readings, source));
-}
-
-function productOf({ runs, operators }: Chain, hasCoefficient: boolean): Expression {
-  const factors = runs.flat();
-  if (factors.length === 1) return factors[0]!;
-  const inverted = runs.flatMap((run, k) => run.map(() => k > 0 && operators[k - 1] === '/'));
-  if (hasCoefficient) inverted[1] = true;
-  const span = coverSpans(factors[0]!.span, factors.at(-1)!.span);
-  return { kind: 'product', span, factors, inverted };
 }
 
 function readSigned(reader: LineReader): Expression {
@@ -331,25 +218,8 @@ function readMember(reader: LineReader, of: Expression, from: number): Expressio
     name,
     nameSpan: span,
   };
-  const bracket = reader.peek();
-  if (bracket && reader.isAt('(') && !bracket.spaced)
-    reader.refuse(
-      coverSpans(member.span, bracket),
-      'member-before-bracket',
-      `\`${reader.text(member.span)}\` is not a function: to multiply write a space before the bracket, to evaluate write \`with s = …\` or \`with t = …\`.`,
-      [{ title: 'multiply', edits: [insertion(bracket.from, ' ')] }],
-    );
+  refuseBracketAfter(reader, member);
   return member;
-}
-
-function refuseLooseBracket(reader: LineReader): void {
-  const open = reader.peek();
-  if (!open || !reader.isAt('[')) return;
-  reader.fail(
-    open,
-    'loose-unit',
-    'Square brackets hold the unit of the number before them, as in `3 [rad/s]`.',
-  );
 }
 
 function readDerivative(
@@ -368,31 +238,6 @@ function readDerivative(
   return { kind: 'derivative', span, of, order };
 }
 
-/** Why a formula has no derivative written with `'`, or null. What a definition stands for, the engine knows. */
-function whyNoDerivative(reader: LineReader, of: Expression, isBracket: boolean): string | null {
-  const shown = reader.text(of.span);
-  if (isBracket)
-    return reader.scope.part === 'worksheet'
-      ? `A bracket has a derivative only in the equations of a loop; write \`'\` after the signal itself.`
-      : null;
-  if (of.kind === 'member' || of.kind === 'evaluation') return null;
-  if (of.kind !== 'name')
-    return `\`'\` is the time derivative of a signal, and \`${shown}\` is not one.`;
-  const kind = reader.kindOf(of.name);
-  if (
-    !CONSTANT_MEANINGS.has(of.name) &&
-    (kind === null || kind === 'signal' || kind === 'definition')
-  )
-    return null;
-  const what =
-    kind === null
-      ? 'a constant of the language'
-      : kind === 'assumption'
-        ? 'an assumption'
-        : `a ${kind}`;
-  return `\`'\` is the time derivative of a signal, and \`${shown}\` is ${what}.`;
-}
-
 function readAtom(reader: LineReader): Expression {
   const token = reader.peek();
   if (token?.kind === 'number') return readNumber(reader);
@@ -405,15 +250,6 @@ function readAtom(reader: LineReader): Expression {
       ? 'A formula is needed here'
       : `\`${reader.previous.text}\` needs a formula after it`,
   );
-}
-
-function failBareFraction(reader: LineReader): Expression {
-  const [dot, number] = [reader.peek()!, reader.peek(1)!];
-  const span = coverSpans(dot, number);
-  const whole = `0.${number.text}`;
-  return reader.fail(span, 'bare-fraction', `A number starts with a digit: write \`${whole}\`.`, [
-    replacement(span, whole),
-  ]);
 }
 
 function readNumber(reader: LineReader): Expression {
@@ -439,18 +275,6 @@ function readBracket(reader: LineReader): Expression {
   return { ...e, span: reader.spanFrom(open.from) };
 }
 
-function closeBracket(reader: LineReader, open: Token): void {
-  if (reader.accept(')')) return;
-  if (!reader.isAtEnd) {
-    reader.failUnexpected('This bracket needs `)` here');
-    return;
-  }
-  const end = reader.previous.to;
-  reader.fail(open, 'unclosed-bracket', 'This bracket is not closed.', [
-    { title: 'close the bracket', edits: [insertion(end, ')')] },
-  ]);
-}
-
 function readNamed(reader: LineReader): Expression {
   const token = reader.take();
   if (!reader.isAt('(')) return nameOf(token);
@@ -466,38 +290,13 @@ function readEvaluation(reader: LineReader, token: Token, use: BracketUse): Expr
   const name = nameOf(token);
   const content = bracketContent(reader);
   if (content === 'factor' || (content === 'unclear' && use === 'no-value')) return name;
-  const open = reader.peek()!;
-  const at = readBracket(reader);
+  const open = reader.take();
+  const at = readFormula(reader);
+  closeBracket(reader, open);
   const span = reader.spanFrom(token.from);
   if (use === 'no-value' || content === 'unclear')
     refuseEvaluation(reader, name, { span, open, at }, use);
   return { kind: 'evaluation', span, name: name.name, nameSpan: name.span, at };
-}
-
-function refuseEvaluation(
-  reader: LineReader,
-  name: Name,
-  bracket: { span: Span; open: Token; at: Expression },
-  use: BracketUse,
-): void {
-  const [shown, point] = [reader.text(name.span), reader.text(bracket.at.span)];
-  const multiply = {
-    title: `multiply: \`${shown} (${point})\``,
-    edits: [insertion(bracket.open.from, ' ')],
-  };
-  const other =
-    use === 'no-value'
-      ? replacement(bracket.span, shown, `the assumption itself: \`${shown}\``)
-      : replacement(
-          bracket.span,
-          `(${shown} with s = ${point})`,
-          `evaluate: \`${shown} with s = ${point}\``,
-        );
-  const message =
-    use === 'no-value'
-      ? `\`${shown}\` is ${reader.kindOf(name.name) === 'assumption' ? 'an assumption' : 'a symbol'}, not a function of anything, so \`${reader.text(bracket.span)}\` has no meaning.`
-      : `\`${reader.text(bracket.span)}\` can be a product or the value of \`${shown}\` at a point.`;
-  reader.refuse(bracket.span, 'name-before-bracket', message, [multiply, other]);
 }
 
 function readCall(reader: LineReader, token: Token): Expression {

@@ -6,8 +6,9 @@ import type {
   RequireStatement,
   TabulateStatement,
 } from './ast.ts';
-import { readAssumedValue, readCondition, readFormula, readName, readSlot } from './expressions.ts';
+import { readAssumedValue, readCondition, readFormula, readSlot } from './expressions.ts';
 import { replacement } from './fixes.ts';
+import { readName } from './name-reading.ts';
 import type { LineReader } from './reader.ts';
 import type { Token } from './tokens.ts';
 import { nearestName } from './spelling.ts';

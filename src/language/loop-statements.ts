@@ -8,8 +8,9 @@ import type {
   SourceTerm,
 } from './ast.ts';
 import { readTolerance } from './assumptions.ts';
-import { readFormula, readName, readNewName, readSlot, readSum, readTerm } from './expressions.ts';
+import { readFormula, readSlot, readSum, readTerm } from './expressions.ts';
 import { replacement } from './fixes.ts';
+import { readName, readNewName } from './name-reading.ts';
 import { canonicalName, CONSTANT_NAMES } from './names.ts';
 import { readQuantity } from './quantities.ts';
 import { LineReader, type Scope } from './reader.ts';

@@ -1,7 +1,7 @@
 import { warningAt, type Problem, type Span } from '../base/index.ts';
 import type { Expression, Sign, Statement } from './ast.ts';
 import { readBounds, readNominal, readTolerance } from './assumptions.ts';
-import { readFormula, readName, readNewName } from './expressions.ts';
+import { readFormula } from './expressions.ts';
 import { readFigure, readRequirement, readTable } from './figures.ts';
 import { replacement } from './fixes.ts';
 import {
@@ -17,6 +17,7 @@ import {
   readWholeFormula,
   type BlockReading,
 } from './loop-statements.ts';
+import { readName, readNewName } from './name-reading.ts';
 import { canonicalName, CONSTANT_MEANINGS, isReserved } from './names.ts';
 import { quantityInFormula, readQuantity, readUnit } from './quantities.ts';
 import { LineReader, WORKSHEET_SCOPE } from './reader.ts';

@@ -150,7 +150,7 @@ describe('a formula', () => {
       [
         'error name-before-bracket at ‹L(1 + j w)›: `L(1 + j w)` can be a product or the value of `L` at a point.',
         '→ L (1 + j w)',
-        '→ (L with s = (1 + j w))',
+        '→ (L with s = 1 + j w)',
       ],
     ],
     [
