@@ -1,8 +1,9 @@
 import { equalRatios, polynomialKey, ratioKey } from '../algebra/index.ts';
 import type { Ratio, Sign } from '../algebra/index.ts';
-import type { Comparison, Condition } from './values.ts';
+import { ALWAYS, type Comparison, type Condition } from './values.ts';
 
-export const TRUE: Condition = Object.freeze({ kind: 'truth', value: true });
+/** The one true condition, so that it is known by identity. */
+export const TRUE: Condition = ALWAYS;
 export const FALSE: Condition = Object.freeze({ kind: 'truth', value: false });
 
 /** The truth value as a condition. */
