@@ -1,4 +1,4 @@
-import type { Budget } from '../base/index.ts';
+import { Budget, currentBudget, spend } from '../base/index.ts';
 import { contentIn } from './gcd.ts';
 import {
   coefficientsIn,
@@ -33,15 +33,42 @@ export interface Factorization {
 export function factorPolynomial(p: Polynomial, budget?: Budget): Factorization {
   if (isZeroPolynomial(p)) return { unit: 0n, factors: [] };
   const unit = contentOf(p) * BigInt(leadingCoefficientSign(p));
+  return Object.freeze({ unit, factors: factorsKept(normalPart(p), budget) });
+}
+
+/** The factors found last, by key, with the work that they took: signs and conditions ask for the same ones again. */
+const kept = new Map<string, { readonly factors: readonly PowerFactor[]; readonly work: number }>();
+const KEPT = 400;
+const UNLIMITED = Number.MAX_SAFE_INTEGER;
+
+/** Factors from memory, or found and remembered; the work is spent either way, so that results do not depend on it. */
+function factorsKept(
+  p: Polynomial,
+  budget = currentBudget() ?? new Budget(UNLIMITED),
+): readonly PowerFactor[] {
+  const key = polynomialKey(p);
+  const known = kept.get(key);
+  if (known) {
+    spend(budget, known.work, 'factoring');
+    return known.factors;
+  }
+  const before = budget.spent;
+  const factors = findFactors(p, budget);
+  const oldest = kept.keys().next();
+  if (kept.size >= KEPT && !oldest.done) kept.delete(oldest.value);
+  kept.set(key, { factors, work: budget.spent - before });
+  return factors;
+}
+
+function findFactors(p: Polynomial, budget?: Budget): readonly PowerFactor[] {
   const found = new Map<string, PowerFactor>();
   const collect = ({ factor, multiplicity }: PowerFactor): void => {
     const key = polynomialKey(factor);
     const before = found.get(key)?.multiplicity ?? 0;
     found.set(key, { factor, multiplicity: before + multiplicity });
   };
-  for (const factor of factorsWithMonomial(normalPart(p), budget)) collect(factor);
-  const factors = [...found.values()].sort((a, b) => comparePolynomials(a.factor, b.factor));
-  return Object.freeze({ unit, factors: Object.freeze(factors) });
+  for (const factor of factorsWithMonomial(p, budget)) collect(factor);
+  return Object.freeze([...found.values()].sort((a, b) => comparePolynomials(a.factor, b.factor)));
 }
 
 function factorsWithMonomial(p: Polynomial, budget?: Budget): PowerFactor[] {

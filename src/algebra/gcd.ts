@@ -1,4 +1,5 @@
 import type { Budget } from '../base/index.ts';
+import { spend } from '../base/index.ts';
 import { unionOfGenerators } from './frame.ts';
 import { ElementSequence, fieldNumber } from './prime-field.ts';
 import { exponentsIn, gatherPowers, termValues } from './point-image.ts';
@@ -136,7 +137,7 @@ function degreeBounds(
   for (const g of generators) {
     const [m, n] = [degreeIn(a, g), degreeIn(b, g)];
     if (m === 0 || n === 0) continue;
-    budget?.spend(termCount(a) + termCount(b) + m * n, 'a greatest common divisor');
+    spend(budget, termCount(a) + termCount(b) + m * n, 'a greatest common divisor');
     // With the values of whole terms the images come out in z = g/point(g): the same degrees.
     const x = gatherPowers(left, exponentsIn(a, g), field);
     const y = gatherPowers(right, exponentsIn(b, g), field);

@@ -1,4 +1,4 @@
-import { invariant } from '../base/index.ts';
+import { invariant, spend } from '../base/index.ts';
 import type { Budget } from '../base/index.ts';
 import { frameForProduct, frameForSum, keysIn, placesIn, unionOfGenerators } from './frame.ts';
 import type { Frame } from './frame.ts';
@@ -226,7 +226,7 @@ export function mulPolynomials(a: Polynomial, b: Polynomial, budget?: Budget): P
   if (isConstantPolynomial(a)) return scalePolynomial(b, a.coefficients[0]);
   if (isConstantPolynomial(b)) return scalePolynomial(a, b.coefficients[0]);
   const pairs = termCount(a) * termCount(b);
-  budget?.spend(pairs, 'the product of two polynomials', () => `${pairs} terms`);
+  spend(budget, pairs, 'the product of two polynomials', () => `${pairs} terms`);
   const frame = frameForProduct(a, b);
   if (!frame) return mulByFirstGenerator(a, b, budget);
   const [short, long] = termCount(a) < termCount(b) ? [a, b] : [b, a];

@@ -1,4 +1,4 @@
-import { invariant } from '../base/index.ts';
+import { invariant, spend } from '../base/index.ts';
 import type { Budget } from '../base/index.ts';
 import { frameOf, keysIn, placesIn } from './frame.ts';
 import type { Frame } from './frame.ts';
@@ -124,7 +124,7 @@ function dividePacked(
     if (rest === 0n) continue;
     const quotient = quotientKey(key, b.keys[0], weights, bounds);
     if (quotient < 0 || rest % lead !== 0n) return null;
-    budget?.spend(b.keys.length, 'an exact division');
+    spend(budget, b.keys.length, 'an exact division');
     keys.push(quotient);
     coefficients.push(rest / lead);
     if (b.keys.length > 1) heap.push(quotient + b.keys[1], keys.length - 1, 1);

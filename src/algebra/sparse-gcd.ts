@@ -1,4 +1,5 @@
 import type { Budget } from '../base/index.ts';
+import { spend } from '../base/index.ts';
 import { placesIn } from './frame.ts';
 import { ElementSequence, fieldNumber, type PrimeField } from './prime-field.ts';
 import { degreeIn } from './polynomial.ts';
@@ -171,7 +172,7 @@ class ImageFinder {
       const groupNodes = group.map((i) => nodes[i]);
       if (new Set(groupNodes).size < group.length) return null;
       const sums = images.slice(0, group.length).map((image) => image[power] ?? 0);
-      this.budget?.spend(group.length ** 2, 'a greatest common divisor');
+      spend(this.budget, group.length ** 2, 'a greatest common divisor');
       solveVandermonde(groupNodes, sums, field).forEach((value, i) => (values[group[i]] = value));
     }
     return values;
@@ -231,7 +232,7 @@ class ImageFinder {
     field: PrimeField,
   ): PrimePolynomial | null {
     const work = this.a.powers.length + this.b.powers.length + a.length * b.length;
-    this.budget?.spend(work, 'a greatest common divisor');
+    spend(this.budget, work, 'a greatest common divisor');
     const { problem } = this;
     const kept = a.length - 1 === degreeIn(problem.a, problem.main);
     if (!kept || b.length - 1 !== degreeIn(problem.b, problem.main) || gamma.length === 0)

@@ -36,5 +36,34 @@ export class Budget {
   }
 }
 
-/** The budget of one symbolic result unless something else is said: about two seconds of work. */
-export const DEFAULT_BUDGET = 20_000_000;
+/** The budget of the result that is being computed; computations are synchronous, so there is one at a time. */
+let current: Budget | undefined;
+
+/** Runs a computation whose every step spends from the budget, however deep it is. */
+export function withinBudget<T>(budget: Budget, compute: () => T): T {
+  const outer = current;
+  current = budget;
+  try {
+    return compute();
+  } finally {
+    current = outer;
+  }
+}
+
+/** The budget of the result being computed, if there is one. */
+export function currentBudget(): Budget | undefined {
+  return current;
+}
+
+/** Spends from the budget given, or from that of the result being computed. */
+export function spend(
+  budget: Budget | undefined,
+  amount: number,
+  step: string,
+  size?: string | (() => string),
+): void {
+  (budget ?? current)?.spend(amount, step, size);
+}
+
+/** The budget of one symbolic result unless something else is said: a second or two of work. */
+export const DEFAULT_BUDGET = 5_000_000;

@@ -7,9 +7,10 @@ import {
   powPolynomial,
   productOfPolynomials,
   ratioFromPolynomial,
+  quotientOf,
 } from '../algebra/index.ts';
 import type { Polynomial, Ratio } from '../algebra/index.ts';
-import { refuse } from '../base/index.ts';
+import { refuse, spend } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
 import {
   digitsIn,
@@ -21,7 +22,7 @@ import {
   scaleField,
 } from './field-polynomial.ts';
 import type { FieldPolynomial } from './field-polynomial.ts';
-import { degreeInS, exactQuotient, hasFunctionsOfS, isFreeOfS } from './s-polynomial.ts';
+import { degreeInS, hasFunctionsOfS, isFreeOfS } from './s-polynomial.ts';
 
 /** numerator / factor^power, the numerator of lower degree in s than the factor. */
 export interface PartialFraction {
@@ -57,8 +58,8 @@ function shareOf(
 ): readonly PartialFraction[] {
   const power = powPolynomial(factor, multiplicity, budget);
   const modulus = overField(power);
-  const others = overField(exactQuotient(whole, power, budget));
-  budget?.spend(modulus.length * others.length * 16, 'partial fractions');
+  const others = overField(quotientOf(whole, power, budget));
+  spend(budget, modulus.length * others.length * 16, 'partial fractions');
   const inverse = inverseModulo(others, modulus);
   const numerator = divideField(mulField(rest, inverse), modulus).remainder;
   return digitsIn(numerator, overField(factor))
@@ -101,7 +102,7 @@ export function partialFractions(r: Ratio, budget?: Budget): PartialFractions | 
     dynamic.map((f) => powPolynomial(f.factor, f.multiplicity, budget)),
     budget,
   );
-  const constant = ratioFromPolynomial(exactQuotient(r.den, denominator, budget));
+  const constant = ratioFromPolynomial(quotientOf(r.den, denominator, budget));
   const numerator = scaleField(overField(r.num), divRatios(oneRatio, constant));
   const { quotient, remainder } = divideField(numerator, overField(denominator));
   const terms = dynamic.flatMap((f) => shareOf(remainder, denominator, f, budget));

@@ -12,6 +12,7 @@ import {
   mulRatios,
   onePolynomial,
   polynomialFromCoefficients,
+  ratio,
   ratioFromPolynomial,
   ratioFromRational,
   ratioOf,
@@ -21,14 +22,17 @@ import {
   symbol,
   zeroPolynomial,
   zeroRatio,
+  quotientOf,
 } from '../algebra/index.ts';
 import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
-import { refuse } from '../base/index.ts';
+import { refuse, spend } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { minorRows } from './hurwitz.ts';
+import type { MinorRow } from './hurwitz.ts';
 import { FALSE } from './conditions.ts';
 import type { SignOf } from '../algebra/index.ts';
 import { countRoots } from './root-count.ts';
-import { degreeInS, descendingInS, exactQuotient, functionsOfS } from './s-polynomial.ts';
+import { degreeInS, descendingInS, functionsOfS } from './s-polynomial.ts';
 import { stabilityConditions } from './stability.ts';
 import type { RouthArray, RouthRow } from './values.ts';
 
@@ -56,7 +60,7 @@ function rowBelow(above: readonly Ratio[], row: readonly Ratio[], length: number
 function auxiliaryPolynomial(row: RouthRow): Polynomial {
   const denominator = row.entries.reduce((d, c) => lcmPolynomials(d, c.den), onePolynomial);
   const coefficients = row.entries.map((c) =>
-    mulPolynomials(c.num, exactQuotient(denominator, c.den)),
+    mulPolynomials(c.num, quotientOf(denominator, c.den)),
   );
   const ascending = Array.from({ length: row.power + 1 }, () => zeroPolynomial);
   coefficients.forEach((c, i) => (ascending[row.power - 2 * i] = c));
@@ -102,20 +106,45 @@ function freshEpsilon(p: Polynomial): Generator {
   return symbol(name);
 }
 
+/** The elements of a row of minors, as fractions. */
+function exactEntries(row: MinorRow, budget?: Budget): Ratio[] {
+  return row.entries.map((entry) => ratio(entry, row.divisor, budget));
+}
+
+/** The rows up to the first that needs one of the special rules, by elimination without fractions. */
+function regularRows(descending: readonly Polynomial[], budget?: Budget): RouthRow[] {
+  const degree = descending.length - 1;
+  return minorRows(descending, budget)
+    .map((row, k): RouthRow => ({
+      power: degree - k,
+      entries: exactEntries(row, budget),
+      special: null,
+    }))
+    .filter((row, k) => k === 0 || row.power === 0 || !isZeroRatio(row.entries[0]));
+}
+
 function buildRows(p: Polynomial, budget?: Budget): Building {
   const descending = descendingInS(p);
   const degree = descending.length - 1;
-  const building: Building = { rows: [], auxiliaries: [], notes: [], epsilon: freshEpsilon(p) };
-  const { rows } = building;
-  rows.push({ power: degree, entries: everySecond(descending, 0), special: null });
-  if (degree > 0) rows.push(settledRow(building, degree - 1, everySecond(descending, 1)));
-  for (let power = degree - 2; power >= 0; power--) {
-    const [above, row] = rows.slice(-2);
+  const rows = regularRows(descending, budget);
+  const building: Building = { rows, auxiliaries: [], notes: [], epsilon: freshEpsilon(p) };
+  for (let power = degree - rows.length; power >= 0; power--) {
     const length = Math.floor(power / 2) + 1;
-    budget?.spend(length, 'the Routh array', `the row of s^${power}`);
-    rows.push(settledRow(building, power, rowBelow(above.entries, row.entries, length)));
+    spend(budget, length, 'the Routh array', `the row of s^${power}`);
+    rows.push(settledRow(building, power, entriesAt(building, descending, length)));
   }
   return building;
+}
+
+/** The elements of the next row before its special rule, from the two rows above or, for the second, as given. */
+function entriesAt(
+  { rows }: Building,
+  descending: readonly Polynomial[],
+  length: number,
+): readonly Ratio[] {
+  if (rows.length === 1) return everySecond(descending, 1);
+  const [above, row] = rows.slice(-2);
+  return rowBelow(above.entries, row.entries, length);
 }
 
 function countsOf(p: Polynomial): RouthArray['counts'] {

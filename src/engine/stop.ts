@@ -1,5 +1,8 @@
 import {
+  Budget,
   BudgetExceeded,
+  DEFAULT_BUDGET,
+  withinBudget,
   errorAt,
   isRefusal,
   type Fix,
@@ -62,7 +65,7 @@ export type Outcome<T> =
  */
 export function outcomeOf<T>(span: Span, evaluate: () => T): Outcome<T> {
   try {
-    return { ok: true, value: evaluate() };
+    return { ok: true, value: withinBudget(new Budget(DEFAULT_BUDGET), evaluate) };
   } catch (error) {
     if (error instanceof Stop)
       return { ok: false, problem: error.problem, waitsFor: error.waitsFor };
