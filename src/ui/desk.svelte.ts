@@ -13,6 +13,8 @@ import { createFileService, isFailure, type FileService, type Folder } from './f
 
 /** Milliseconds after which results that are still being recomputed are greyed. */
 const GREY_AFTER = 200;
+/** Milliseconds after an edit in which the outline follows. */
+const OUTLINE_WITHIN = 150;
 /** Milliseconds after an edit in which its draft is kept. */
 const DRAFT_WITHIN = 400;
 const LAST_OPENED = 'loopwright last opened';
@@ -34,6 +36,7 @@ export class Desk {
   private readonly keeper: FileKeeper;
   private readonly client: EvaluatorClient;
   private readonly stopListening: () => void;
+  private outlining: ReturnType<typeof setTimeout> | null = null;
   private drafting: ReturnType<typeof setTimeout> | null = null;
   private greying: ReturnType<typeof setTimeout> | null = null;
 
@@ -150,6 +153,7 @@ export class Desk {
   }
 
   close(): void {
+    if (this.outlining !== null) clearTimeout(this.outlining);
     this.keepDraft();
     this.stopListening();
     this.client.close();
@@ -161,7 +165,7 @@ export class Desk {
     const opened = (text: string, keepPlace: boolean) => {
       editor.open(text, keepPlace);
       if (!keepPlace) this.sheet = freshSheet();
-      this.headings = editor.headings;
+      this.outline();
       this.client.update(editor.text, true);
     };
     return {
@@ -179,9 +183,15 @@ export class Desk {
 
   private textChanged(text: string): void {
     this.client.update(text);
-    this.headings = this.editor.headings;
+    this.outlining ??= setTimeout(() => this.outline(), OUTLINE_WITHIN);
     this.keeper.textChanged();
     this.drafting ??= setTimeout(() => this.keepDraft(), DRAFT_WITHIN);
+  }
+
+  private outline(): void {
+    if (this.outlining !== null) clearTimeout(this.outlining);
+    this.outlining = null;
+    this.headings = this.editor.headings;
   }
 
   private take(sheet: Sheet): void {

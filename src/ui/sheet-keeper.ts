@@ -15,7 +15,6 @@ export function nextSheet(before: Sheet, report: Report, text: string): Sheet {
     requirementKeys: requirements,
     baseline: before.baseline,
     moved: before.report ? movedKeys(before, report, results, requirements) : new Set(),
-    references: new Map(report.references.map(({ name, shown }) => [name, shown])),
   };
 }
 

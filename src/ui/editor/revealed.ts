@@ -22,7 +22,7 @@ export interface Revealed {
   readonly ranges: readonly { readonly from: number; readonly to: number }[];
 }
 
-const setFocused = StateEffect.define<boolean>();
+export const setFocused = StateEffect.define<boolean>();
 const setHeld = StateEffect.define<boolean>();
 
 export const revealedField = StateField.define<Revealed>({

@@ -11,8 +11,6 @@ export interface Sheet {
   readonly baseline: Baseline | null;
   /** Keys of rows that moved with the newest report. */
   readonly moved: ReadonlySet<string>;
-  /** Present values of the names that prose refers to. */
-  readonly references: ReadonlyMap<string, string | null>;
 }
 
 export const EMPTY_SHEET: Sheet = {
@@ -21,7 +19,6 @@ export const EMPTY_SHEET: Sheet = {
   requirementKeys: [],
   baseline: null,
   moved: new Set(),
-  references: new Map(),
 };
 
 interface NumberPlace {
@@ -45,7 +42,7 @@ const sheetState = StateField.define<SheetState>({
   update(state, transaction) {
     const shown = transaction.effects.find((effect) => effect.is(showSheet));
     if (shown) {
-      const sheet = keepReferences(state.sheet, shown.value);
+      const sheet = shown.value;
       return { sheet, current: true, numbers: numbersOf(sheet.report) };
     }
     if (!transaction.docChanged) return state;
@@ -72,11 +69,6 @@ export function numberPlace(state: EditorState, name: string): NumberPlace | nul
   return state.field(sheetState).numbers.get(name) ?? null;
 }
 
-/** Present values by name: the same object as long as none of them changed. */
-export function referenceValues(state: EditorState): Sheet['references'] {
-  return sheetOf(state).references;
-}
-
 function numbersOf(report: Report | null): ReadonlyMap<string, NumberPlace> {
   const numbers = new Map<string, NumberPlace>();
   for (const { content } of report?.assumptions ?? []) {
@@ -92,11 +84,4 @@ function mapNumbers(numbers: ReadonlyMap<string, NumberPlace>, changes: ChangeDe
       { from: changes.mapPos(from, -1), to: changes.mapPos(to, 1) },
     ]),
   );
-}
-
-function keepReferences(before: Sheet, after: Sheet): Sheet {
-  const same =
-    before.references.size === after.references.size &&
-    [...after.references].every(([name, shown]) => before.references.get(name) === shown);
-  return same ? { ...after, references: before.references } : after;
 }

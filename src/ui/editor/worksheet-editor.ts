@@ -10,6 +10,7 @@ import { headingsOf } from './headings.ts';
 import { highlighting } from './highlighting.ts';
 import { splitText } from './line-endings.ts';
 import { NumberDrag, writeNumbers } from './number-drag.ts';
+import { references } from './references-field.ts';
 import { resultsField } from './results-field.ts';
 import { revealing } from './revealed.ts';
 import { isCurrent, sheetKeeping, showSheet, type Sheet } from './sheet-field.ts';
@@ -153,6 +154,7 @@ export class WorksheetEditor {
         revealing,
         sheetKeeping,
         typesetting,
+        references,
         resultsField,
         completing,
         functionHelp,
