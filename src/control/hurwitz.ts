@@ -4,14 +4,17 @@ import {
   onePolynomial,
   subPolynomials,
   zeroPolynomial,
+  quotientOf,
 } from '../algebra/index.ts';
 import type { Polynomial } from '../algebra/index.ts';
 import type { Budget } from '../base/index.ts';
-import { exactQuotient } from './s-polynomial.ts';
 
-interface MinorRow {
-  /** Entries of the Routh row times the determinant before it: minors of the Hurwitz matrix. */
+/** A row of the Routh array without fractions: its entries are minors of the Hurwitz matrix. */
+export interface MinorRow {
+  /** The elements of the row times `divisor`; the first one is a Hurwitz determinant. */
   readonly entries: readonly Polynomial[];
+  /** The Hurwitz determinant of the row above. */
+  readonly divisor: Polynomial;
 }
 
 function everySecond(descending: readonly Polynomial[], from: number): Polynomial[] {
@@ -24,41 +27,45 @@ const entryAt = (row: MinorRow, i: number): Polynomial => row.entries[i] ?? zero
 function nextRow(
   above: MinorRow,
   row: MinorRow,
-  divisors: { readonly pivotAbove: Polynomial; readonly divisor: Polynomial },
+  lead: Polynomial | null,
   budget?: Budget,
 ): MinorRow {
   const pivot = row.entries[0];
   const entries = above.entries.slice(1).map((entry, i) => {
     const first = mulPolynomials(entry, pivot, budget);
-    const second = mulPolynomials(divisors.pivotAbove, entryAt(row, i + 1), budget);
-    return exactQuotient(subPolynomials(first, second), divisors.divisor, budget);
+    const second = mulPolynomials(lead ?? row.divisor, entryAt(row, i + 1), budget);
+    return quotientOf(subPolynomials(first, second), above.divisor, budget);
   });
-  return { entries };
+  return { entries, divisor: pivot };
 }
 
 /**
- * The determinants Δ₁ … Δₙ of the Hurwitz matrix of a₀sⁿ + a₁sⁿ⁻¹ + …, without fractions.
+ * The rows of the Routh array of a₀sⁿ + a₁sⁿ⁻¹ + …, without fractions: element i of row k is entries[i] / divisor.
  *
- * `descending`: the coefficients, a₀ first. The list ends early with the first determinant that vanishes identically;
- * the polynomial then is never stable. Source: F. R. Gantmacher, The Theory of Matrices, vol. 2, Chelsea, 1959,
- * ch. XV, § 6, with the elimination of E. H. Bareiss (1968) so that every division is exact.
+ * `descending`: the coefficients, a₀ first. The rows end early, with the first one whose first element vanishes
+ * identically. Source: F. R. Gantmacher, The Theory of Matrices, vol. 2, Chelsea, 1959, ch. XV, § 6, with the elimination of
+ * E. H. Bareiss (1968) so that every division is exact.
+ */
+export function minorRows(descending: readonly Polynomial[], budget?: Budget): readonly MinorRow[] {
+  const degree = descending.length - 1;
+  const rows: MinorRow[] = [{ entries: everySecond(descending, 0), divisor: onePolynomial }];
+  if (degree > 0) rows.push({ entries: everySecond(descending, 1), divisor: onePolynomial });
+  while (rows.length <= degree && !isZeroPolynomial(rows[rows.length - 1].entries[0])) {
+    const [above, row] = rows.slice(-2);
+    rows.push(nextRow(above, row, rows.length === 2 ? descending[0] : null, budget));
+  }
+  return rows;
+}
+
+/**
+ * The determinants Δ₁ … Δₙ of the Hurwitz matrix of a₀sⁿ + a₁sⁿ⁻¹ + …; the list ends early with the first one that
+ * vanishes identically: the polynomial then is never stable.
  */
 export function hurwitzDeterminants(
   descending: readonly Polynomial[],
   budget?: Budget,
 ): readonly Polynomial[] {
-  const degree = descending.length - 1;
-  let above: MinorRow = { entries: everySecond(descending, 0) };
-  let row: MinorRow = { entries: everySecond(descending, 1) };
-  const determinants: Polynomial[] = [];
-  for (let k = 1; k <= degree; k++) {
-    const pivot = row.entries[0] ?? zeroPolynomial;
-    determinants.push(pivot);
-    if (k === degree || isZeroPolynomial(pivot)) return determinants;
-    const pivotAbove = k === 1 ? above.entries[0] : determinants[k - 2];
-    const divisor = k <= 2 ? onePolynomial : determinants[k - 3];
-    const next = nextRow(above, row, { pivotAbove, divisor }, budget);
-    [above, row] = [row, next];
-  }
-  return determinants;
+  return minorRows(descending, budget)
+    .slice(1)
+    .map((row) => row.entries[0]);
 }

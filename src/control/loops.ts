@@ -12,6 +12,7 @@ import {
   productOfPolynomials,
   ratioFromPolynomial,
   zeroPolynomial,
+  quotientOf,
 } from '../algebra/index.ts';
 import type { Fraction, Polynomial } from '../algebra/index.ts';
 import { refuse } from '../base/index.ts';
@@ -23,7 +24,7 @@ import {
   underdetermined,
 } from './loop-structure.ts';
 import type { Fault, Incidence, Matching } from './loop-structure.ts';
-import { contentFreeOfS, exactQuotient } from './s-polynomial.ts';
+import { contentFreeOfS } from './s-polynomial.ts';
 import type { StabilityBlock } from './values.ts';
 
 /** One equation of a loop: Σ coefficient · signal = 0, fractions uncancelled; signals that do not occur are left out. */
@@ -65,7 +66,7 @@ function clearRow(row: LoopRow, budget?: Budget): ClearedRow {
   );
   const coefficients = present.map(([name, c]): [string, Polynomial] => [
     name,
-    mulPolynomials(c.num, exactQuotient(multiplier, c.den, budget), budget),
+    mulPolynomials(c.num, quotientOf(multiplier, c.den, budget), budget),
   ]);
   return Object.freeze({ coefficients: new Map(coefficients), multiplier });
 }
@@ -82,8 +83,7 @@ const listed = (items: readonly string[]): string =>
 const equationList = (fault: Fault): string =>
   `${fault.equations.length === 1 ? 'equation' : 'equations'} ${listed(fault.equations.map((e) => String(e + 1)))}`;
 
-const verb = (equations: readonly number[]): string =>
-  equations.length === 1 ? 'holds' : 'hold';
+const verb = (equations: readonly number[]): string => (equations.length === 1 ? 'holds' : 'hold');
 
 function structuralFault(
   incidence: Incidence,

@@ -10,7 +10,6 @@ import {
   polynomialOfTermList,
   ratioFromPolynomial,
   ratioOf,
-  signOfPolynomial,
   termsOf,
 } from '../algebra/index.ts';
 import type { Generator, Polynomial } from '../algebra/index.ts';
@@ -19,6 +18,7 @@ import { allOf, anyOf, compare, mirrored, negation } from './conditions.ts';
 import { partsOf, reduceCondition, relationOf, signsUnder } from './reduced-condition.ts';
 import type { SignOf } from '../algebra/index.ts';
 import type { Relation } from './reduced-condition.ts';
+import { simpleSign } from './simple-factors.ts';
 import type { Condition } from './values.ts';
 
 /**
@@ -33,7 +33,7 @@ export function solveForGain(
 ): Condition | null {
   if (degreeIn(relation.polynomial, gain) !== 1 || hiddenIn(relation.polynomial, gain)) return null;
   const [rest, coefficient] = coefficientsIn(relation.polynomial, gain);
-  const sign = signOfPolynomial(coefficient, signOf);
+  const sign = simpleSign(coefficient, signOf);
   if (sign !== 'positive' && sign !== 'negative') return null;
   const bound = negRatio(divRatios(ratioFromPolynomial(rest), ratioFromPolynomial(coefficient)));
   const { operator } = relation;

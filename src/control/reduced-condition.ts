@@ -1,6 +1,5 @@
 import {
   equalPolynomials,
-  factorPolynomial,
   generatorPolynomial,
   generatorsOf,
   isConstantPolynomial,
@@ -9,11 +8,10 @@ import {
   onePolynomial,
   powPolynomial,
   ratioFromPolynomial,
-  signOfPolynomial,
   subRatios,
   zeroRatio,
 } from '../algebra/index.ts';
-import type { Generator, Polynomial, Sign, SignOf } from '../algebra/index.ts';
+import type { Generator, Polynomial, PowerFactor, Sign, SignOf } from '../algebra/index.ts';
 import type { Budget } from '../base/index.ts';
 import {
   allOf,
@@ -24,6 +22,7 @@ import {
   negation,
   truth,
 } from './conditions.ts';
+import { simpleFactors, simpleSign } from './simple-factors.ts';
 import type { Comparison, Condition } from './values.ts';
 
 /** `polynomial > 0`, `>= 0`, `= 0` or `!= 0`. */
@@ -45,7 +44,7 @@ export function relationOf(condition: Compare, signOf: SignOf): Relation {
   const { num, den } = subRatios(condition.left, condition.right);
   const { operator } = condition;
   if (operator === '=' || operator === '!=') return { polynomial: num, operator };
-  const sign = signOfPolynomial(den, signOf);
+  const sign = simpleSign(den, signOf);
   if (sign === 'positive') return turned(num, operator);
   if (sign === 'negative') return turned(negPolynomial(num), operator);
   return turned(mulPolynomials(num, den), operator);
@@ -64,8 +63,7 @@ interface Split {
   readonly also: Condition[];
 }
 
-function splitStrict(split: Split, factor: Polynomial, multiplicity: number, signOf: SignOf): void {
-  const sign = signOfPolynomial(factor, signOf);
+function splitStrict(split: Split, { factor, multiplicity }: PowerFactor, sign: Sign): void {
   const odd = multiplicity % 2 === 1;
   if (sign === 'negative' || sign === 'nonpositive') split.negative = split.negative !== odd;
   if (sign === 'positive' || sign === 'negative') return;
@@ -76,33 +74,35 @@ function splitStrict(split: Split, factor: Polynomial, multiplicity: number, sig
   }
 }
 
-function splitWeak(split: Split, factor: Polynomial, multiplicity: number, signOf: SignOf): void {
-  const sign = signOfPolynomial(factor, signOf);
+function splitWeak(split: Split, { factor, multiplicity }: PowerFactor, sign: Sign): void {
   const odd = multiplicity % 2 === 1;
   if (sign === 'negative') split.negative = split.negative !== odd;
   if (sign === 'positive' || sign === 'negative') return;
   split.rest = mulPolynomials(split.rest, powPolynomial(factor, odd ? 1 : 2));
 }
 
-function decided(relation: Relation, signOf: SignOf): Condition | null {
-  const truthValue = decideBySign(signOfPolynomial(relation.polynomial, signOf), relation.operator);
+function decided(relation: Relation, signOf: SignOf, budget?: Budget): Condition | null {
+  const truthValue = decideBySign(
+    simpleSign(relation.polynomial, signOf, budget),
+    relation.operator,
+  );
   return truthValue === null ? null : truth(truthValue);
 }
 
 function reduceInequality(relation: Relation, signOf: SignOf, budget?: Budget): Condition {
-  const { unit, factors } = factorPolynomial(relation.polynomial, budget);
+  const { unit, factors } = simpleFactors(relation.polynomial, budget);
   const split: Split = { rest: onePolynomial, negative: unit < 0n, also: [] };
   const take = relation.operator === '>' ? splitStrict : splitWeak;
-  for (const { factor, multiplicity } of factors) take(split, factor, multiplicity, signOf);
+  for (const power of factors) take(split, power, simpleSign(power.factor, signOf, budget));
   const polynomial = split.negative ? negPolynomial(split.rest) : split.rest;
   const rest = { polynomial, operator: relation.operator };
-  return allOf([decided(rest, signOf) ?? conditionOf(rest), ...split.also]);
+  return allOf([decided(rest, signOf, budget) ?? conditionOf(rest), ...split.also]);
 }
 
 function reduceEquation(relation: Relation, signOf: SignOf, budget?: Budget): Condition {
-  const zeros = factorPolynomial(relation.polynomial, budget).factors.map(({ factor }) => {
+  const zeros = simpleFactors(relation.polynomial, budget).factors.map(({ factor }) => {
     const equation: Relation = { polynomial: factor, operator: '=' };
-    return decided(equation, signOf) ?? conditionOf(equation);
+    return decided(equation, signOf, budget) ?? conditionOf(equation);
   });
   const vanishes = anyOf(zeros);
   return relation.operator === '=' ? vanishes : negation(vanishes);
@@ -110,7 +110,7 @@ function reduceEquation(relation: Relation, signOf: SignOf, budget?: Budget): Co
 
 /** A relation without the factors of known sign; true or false where the signs decide it. */
 export function reduceRelation(relation: Relation, signOf: SignOf, budget?: Budget): Condition {
-  const known = decided(relation, signOf);
+  const known = decided(relation, signOf, budget);
   if (known) return known;
   if (relation.operator === '>' || relation.operator === '>=') {
     return reduceInequality(relation, signOf, budget);
@@ -143,7 +143,7 @@ function fixedSign(condition: Condition): { generator: Generator; sign: Sign } |
   if (condition.kind !== 'compare') return null;
   const { polynomial, operator } = relationOf(condition, () => 'unknown');
   if (operator !== '>') return null;
-  const { unit, factors } = factorPolynomial(polynomial);
+  const { unit, factors } = simpleFactors(polynomial);
   if (factors.length !== 1 || factors[0].multiplicity !== 1) return null;
   const generator = soleGenerator(factors[0].factor);
   return generator && { generator, sign: unit > 0n ? 'positive' : 'negative' };

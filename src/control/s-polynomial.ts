@@ -3,13 +3,13 @@ import {
   contentOver,
   degreeIn,
   dependsOnLaplace,
-  divideExactly,
   generatorPolynomial,
   generatorsOf,
   isZeroPolynomial,
   laplace,
   normalPart,
   powPolynomial,
+  quotientOf,
   zeroPolynomial,
 } from '../algebra/index.ts';
 import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
@@ -51,14 +51,7 @@ export function powerOfS(p: Polynomial): number {
 
 /** A nonzero polynomial divided by s as often as s divides it. */
 export function withoutPowerOfS(p: Polynomial): Polynomial {
-  return exactQuotient(p, powPolynomial(generatorPolynomial(laplace), powerOfS(p)));
-}
-
-/** a/b where b is known to divide a. */
-export function exactQuotient(a: Polynomial, b: Polynomial, budget?: Budget): Polynomial {
-  const quotient = divideExactly(a, b, budget);
-  invariant(quotient, 'a division that had to be exact left a rest');
-  return quotient;
+  return quotientOf(p, powPolynomial(generatorPolynomial(laplace), powerOfS(p)));
 }
 
 /** The greatest factor of a nonzero polynomial that is free of s and of functions of s, integer content left out. */
@@ -68,5 +61,5 @@ export function contentFreeOfS(p: Polynomial, budget?: Budget): Polynomial {
 
 /** A nonzero polynomial without the factors that are free of s. */
 export function primitiveInS(p: Polynomial, budget?: Budget): Polynomial {
-  return normalPart(exactQuotient(p, contentFreeOfS(p, budget), budget));
+  return normalPart(quotientOf(p, contentFreeOfS(p, budget), budget));
 }

@@ -3,7 +3,6 @@ import {
   isZeroPolynomial,
   mulPolynomials,
   negPolynomial,
-  signOfPolynomial,
   termCount,
 } from '../algebra/index.ts';
 import type { Polynomial } from '../algebra/index.ts';
@@ -13,6 +12,7 @@ import { hurwitzDeterminants } from './hurwitz.ts';
 import { partsOf, reduceRelation, reduceTogether } from './reduced-condition.ts';
 import type { SignOf } from '../algebra/index.ts';
 import { degreeInS, descendingInS, functionsOfS, isFreeOfS } from './s-polynomial.ts';
+import { simpleSign } from './simple-factors.ts';
 import type { Condition, StabilityBlock } from './values.ts';
 
 /** What must be positive: a coefficient or a Hurwitz determinant, `odd` if it changes sign with the polynomial. */
@@ -50,7 +50,7 @@ function positivity(
   signOf: SignOf,
   budget?: Budget,
 ): readonly Condition[] {
-  const sign = signOfPolynomial(lead, signOf);
+  const sign = simpleSign(lead, signOf);
   const conditions = set.map(({ polynomial, odd }) => {
     const signed = sign === 'negative' && odd ? negPolynomial(polynomial) : polynomial;
     const known = sign === 'positive' || sign === 'negative' || !odd;

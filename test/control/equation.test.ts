@@ -9,16 +9,8 @@ import {
   solveLinearFor,
   stableIntervals,
 } from '../../src/control/index.ts';
-import {
-  found,
-  polynomial,
-  polynomialOf,
-  positive,
-  published,
-  read,
-  signs,
-  unknown,
-} from './formulas.ts';
+import { found, polynomial, polynomialOf, positive, read, signs, unknown } from './formulas.ts';
+import { published } from './published-cases.ts';
 
 const comparison = (left: string, operator: '>' | '<' | '<=' | '>=', right: string) =>
   compare(read(left), operator, read(right)) as Extract<

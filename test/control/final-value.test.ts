@@ -35,12 +35,12 @@ import {
   numbersOf,
   polynomialOf,
   positive,
-  published,
   quotient,
   read,
   signal,
   unknown,
 } from './formulas.ts';
+import { published } from './published-cases.ts';
 
 interface Polynomials {
   readonly num: readonly number[];

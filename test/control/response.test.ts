@@ -6,16 +6,8 @@ import {
   type Response,
 } from '../../src/control/index.ts';
 import { randomInteger, seededRandom, timeResponse } from '../../src/numeric/index.ts';
-import {
-  found,
-  numberAt,
-  numbersOf,
-  positive,
-  published,
-  read,
-  signal,
-  unknown,
-} from './formulas.ts';
+import { found, numberAt, numbersOf, positive, read, signal, unknown } from './formulas.ts';
+import { published } from './published-cases.ts';
 import type { Ratio, SignOf } from '../../src/algebra/index.ts';
 
 function responseTo(transform: string, signOf: SignOf = positive): Response {

@@ -25,11 +25,11 @@ import {
   numberAt,
   polynomial,
   positive,
-  published,
   read,
   signs,
   unknown,
 } from './formulas.ts';
+import { published } from './published-cases.ts';
 
 const asEpsilon = (text: string): string => text.replaceAll('eps', 'ε');
 
