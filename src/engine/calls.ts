@@ -1,15 +1,31 @@
-import { asRational, dependsOn, laplace, symbol, zeroRatio, type Ratio } from '../algebra/index.ts';
+import {
+  asRational,
+  dependsOn,
+  fractionOfRatio,
+  laplace,
+  ratioOf,
+  symbol,
+  zeroRatio,
+  type Ratio,
+} from '../algebra/index.ts';
 import { isRefusal } from '../base/index.ts';
-import { ALWAYS, type SignalValue, type Value } from '../control/index.ts';
-import type { Argument, Parameter, WorksheetFunction } from '../functions/index.ts';
+import { ALWAYS, allOf, type SignalValue, type Value } from '../control/index.ts';
+import {
+  sourceNamed,
+  type Argument,
+  type Parameter,
+  type WorksheetFunction,
+} from '../functions/index.ts';
 import { formatExpression, nearestName, type Call, type Expression } from '../language/index.ts';
-import { kindInWords } from './arithmetic.ts';
+import { formulaValue, kindInWords } from './arithmetic.ts';
+import { constantOf } from './constants.ts';
 import { parameterOf, replacementsOf } from './replacements.ts';
 
 import type { LoopRecord, Meanings } from './meanings.ts';
 import { namedSignal } from './signals.ts';
-import type { Scope } from './scope.ts';
+import { narrowScope, replacementKey, type ReplacementValue, type Scope } from './scope.ts';
 import { sentence, stopAt } from './stop.ts';
+import { stopAtUnknownName } from './unknown-name.ts';
 
 /** Calls a worksheet function on arguments that are still text. */
 export function callFunction(call: Call, scope: Scope, meanings: Meanings): Value {
@@ -26,16 +42,31 @@ export function callFunction(call: Call, scope: Scope, meanings: Meanings): Valu
   return withInherited(value, args);
 }
 
-/** Notes and conditions of the arguments travel along. */
+/** Notes of the arguments travel along, and so do the conditions under which the arguments have a value. */
 function withInherited(value: Value, args: readonly Argument[]): Value {
-  const notes = args.flatMap((arg) =>
-    arg.kind === 'value' ? arg.value.notes : arg.kind === 'signal' ? arg.signal.notes : [],
-  );
-  if (notes.length === 0) return value;
-  return { ...value, notes: [...new Set([...notes, ...value.notes])] };
+  const inner = args.flatMap(valuesIn);
+  const notes = [...new Set([...inner.flatMap((arg) => arg.notes), ...value.notes])];
+  return { ...value, when: allOf([...inner.map((arg) => arg.when), value.when]), notes };
+}
+
+function valuesIn(arg: Argument): readonly Value[] {
+  switch (arg.kind) {
+    case 'value':
+      return [arg.value];
+    case 'signal':
+      return [arg.signal];
+    case 'relation':
+      return arg.sides;
+    case 'limit':
+      return [arg.of];
+    case 'loop':
+    case 'name':
+      return [];
+  }
 }
 
 function unknownFunction(call: Call, meanings: Meanings): never {
+  if (sourceNamed(call.callee)) stopAtUnknownName(call.callee, call.calleeSpan, meanings);
   const near = nearestName(call.callee, [...meanings.functionNames(), ...meanings.knownNames()]);
   stopAt(
     call.calleeSpan,
@@ -52,9 +83,35 @@ function readArguments(
   meanings: Meanings,
 ): Argument[] {
   checkCount(call, spec);
+  const inside = withUnknowns(call, spec, scope, meanings);
   return call.args.map((arg, index) =>
-    readArgument(parameterAt(spec, index), arg, spec, scope, meanings),
+    readArgument(parameterAt(spec, index), arg, spec, inside, meanings),
   );
+}
+
+/** The names that `solve` and `match` list as unknowns need nothing else to introduce them. */
+function withUnknowns(
+  call: Call,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): Scope {
+  const unknowns = call.args.flatMap((arg, index) =>
+    parameterAt(spec, index).takes === 'unknown' && arg.kind === 'name' && isNew(arg.name, meanings)
+      ? [[arg.name, selfReplacement(arg.name)] as const]
+      : [],
+  );
+  return unknowns.length === 0 ? scope : narrowScope(scope, new Map(unknowns));
+}
+
+function isNew(name: string, meanings: Meanings): boolean {
+  return meanings.kindOf(name) === null && constantOf(name) === null;
+}
+
+function selfReplacement(name: string): ReplacementValue {
+  const value = formulaValue(ratioOf(symbol(name)));
+  const fraction = fractionOfRatio(value.ratio);
+  return { value, fraction, key: replacementKey(value, fraction) };
 }
 
 /** The parameter that the argument at `index` is for; the last one repeats where it is a 'rest'. */
@@ -102,7 +159,8 @@ function readArgument(
         generator: symbol(namedSignal(arg).name),
       };
     case 'name':
-      return nameArgument(arg, meanings);
+    case 'unknown':
+      return nameArgument(arg, scope, meanings);
     case 'relation':
       return relationArgument(arg, scope, meanings);
     case 'limit':
@@ -178,7 +236,7 @@ function loopArgument(
   );
 }
 
-function nameArgument(arg: Expression, meanings: Meanings): Argument {
+function nameArgument(arg: Expression, scope: Scope, meanings: Meanings): Argument {
   if (arg.kind !== 'name') {
     stopAt(arg.span, 'not-a-name', `A name is needed here, not \`${formatExpression(arg)}\`.`);
   }
@@ -186,6 +244,7 @@ function nameArgument(arg: Expression, meanings: Meanings): Argument {
   if (kind === 'loop' || kind === 'case') {
     stopAt(arg.span, 'not-a-name', `${arg.name} is a ${kind}; a symbol is needed here.`);
   }
+  if (kind === null) meanings.valueOf(arg.name, arg.span, scope);
   return { kind: 'name', name: arg.name, generator: arg.name === 's' ? laplace : symbol(arg.name) };
 }
 

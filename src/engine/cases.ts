@@ -121,11 +121,23 @@ function splitSource(source: Expression): {
       return { factor, call };
     }
   }
+  refuseHiddenSource(source);
   stopAt(
     source.span,
     'not-a-source',
     `\`${formatExpression(source)}\` is not a source; for a constant load write \`step(…)\`.`,
   );
+}
+
+/** A worksheet name hides a source as it hides a function; `step(3)` is a product then. */
+function refuseHiddenSource(source: Expression): void {
+  if (source.kind !== 'product') return;
+  const hidden = source.factors.find(
+    (factor) => factor.kind === 'name' && sourceNamed(factor.name),
+  );
+  if (hidden?.kind !== 'name') return;
+  const message = `The name ${hidden.name} of this worksheet hides the source; rename it.`;
+  stopAt(hidden.span, 'source-hidden', message);
 }
 
 function unknownSource(call: Extract<Expression, { kind: 'call' }>): never {

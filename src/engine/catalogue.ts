@@ -16,6 +16,8 @@ import {
   type UnitStatement,
 } from '../language/index.ts';
 import type { Span } from '../base/index.ts';
+import { FUNCTIONS, sourceNamed } from '../functions/index.ts';
+import { takenSignals } from './taken-signals.ts';
 
 /** What introduces a name. */
 export type Entry =
@@ -55,8 +57,8 @@ export interface Catalogue {
   }[];
   /** Order in which names are introduced. */
   readonly order: ReadonlyMap<string, number>;
-  /** Names that take part in a circle of definitions or have one behind them. */
-  readonly circular: ReadonlySet<string>;
+  /** Names that stand for nothing: in a circle of definitions, defined twice, loops with a signal that is none. */
+  readonly faulty: ReadonlySet<string>;
   readonly problems: readonly Problem[];
 }
 
@@ -137,25 +139,17 @@ class CatalogueBuilder {
     this.checkDuplicates();
     this.checkTypesetting();
     this.checkTunes();
-    const circular = this.checkCircles();
+    this.checkHiding();
+    const faulty = new Set([...this.checkCircles(), ...this.ambiguous, ...this.checkSignals()]);
     const { entries, signs, units, tunes, customUnits, order, problems } = this;
-    return { entries, signs, units, tunes, customUnits, order, circular, problems };
+    return { entries, signs, units, tunes, customUnits, order, faulty, problems };
   }
 
   private introduce(name: string, span: Span, entry: Entry): void {
+    if (isReserved(name)) return;
     this.note(name);
     const place = { name, span, entry };
     this.places.set(name, [...(this.places.get(name) ?? []), place]);
-    if (isReserved(name)) {
-      this.problems.push(
-        errorAt(
-          offsetSpan(span, entry.placed.from),
-          'reserved-name',
-          `${name} is reserved by the language; choose another name.`,
-        ),
-      );
-      return;
-    }
     if (!this.entries.has(name)) this.entries.set(name, entry);
   }
 
@@ -199,11 +193,17 @@ class CatalogueBuilder {
     );
   }
 
-  private checkTypesetting(): void {
-    const introductions = [...this.places.values()].map((places) => places[0]);
+  /** Where each name is first introduced. */
+  private get introductions(): Introduction[] {
+    const first = new Map([...this.places].map(([name, places]) => [name, places[0]] as const));
     for (const symbol of this.symbols) {
-      if (!this.places.has(symbol.name)) introductions.push(symbol);
+      if (!first.has(symbol.name)) first.set(symbol.name, symbol);
     }
+    return [...first.values()];
+  }
+
+  private checkTypesetting(): void {
+    const { introductions } = this;
     introductions.forEach((later, index) => {
       const earlier = introductions
         .slice(0, index)
@@ -236,7 +236,29 @@ class CatalogueBuilder {
     }
   }
 
-  private checkCircles(): Set<string> {
+  /** A worksheet name that hides a function of that name is noted. */
+  private checkHiding(): void {
+    for (const { name, span, entry } of this.introductions) {
+      if (!FUNCTIONS.has(name) && !sourceNamed(name)) continue;
+      const message = `${name} hides the function of that name in this worksheet.`;
+      this.problems.push(warningAt(offsetSpan(span, entry.placed.from), 'hides-function', message));
+    }
+  }
+
+  /** The loops that use as a signal what has a value outside; they say nothing. */
+  private checkSignals(): string[] {
+    const givenAt = (name: string): number | null => {
+      const entry = this.entries.get(name);
+      return entry ? this.lineOf(entry.placed.from) : null;
+    };
+    const taken = [...this.entries.values()].flatMap((entry) =>
+      entry.kind === 'loop' ? takenSignals(entry.node, entry.placed, givenAt, this.lineOf) : [],
+    );
+    this.problems.push(...taken.map(({ problem }) => problem));
+    return taken.map(({ loop }) => loop);
+  }
+
+  private checkCircles(): string[] {
     const circles = findCircles(this.entries);
     for (const circle of circles) {
       const lines = circle.map((name) => this.lineOf(this.entries.get(name)!.placed.from));
@@ -254,7 +276,7 @@ class CatalogueBuilder {
         );
       }
     }
-    return new Set([...circles.flat(), ...this.ambiguous]);
+    return circles.flat();
   }
 }
 
@@ -320,13 +342,4 @@ function findCircles(entries: ReadonlyMap<string, Entry>): string[][] {
   };
   for (const name of entries.keys()) if (!index.has(name)) visit(name);
   return circles;
-}
-
-/** A warning for a worksheet name that hides a function. */
-export function hidingWarning(name: string, span: Span): Problem {
-  return warningAt(
-    span,
-    'hides-function',
-    `${name} hides the function of that name in this worksheet.`,
-  );
 }

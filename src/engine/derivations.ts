@@ -35,7 +35,7 @@ import {
   type Statement,
 } from '../language/index.ts';
 import { conditionText, formulaText, type Writing } from '../present/index.ts';
-import { customUnit, parseUnit, type CustomUnits, type Unit } from '../units/index.ts';
+import type { CustomUnits, Unit } from '../units/index.ts';
 import { formulaValue } from './arithmetic.ts';
 import { readCase, signalIn, type CaseRecord } from './cases.ts';
 import { referencesOf, type Catalogue, type Entry } from './catalogue.ts';
@@ -47,6 +47,8 @@ import type { LoopRecord, Meanings } from './meanings.ts';
 import type { Queries } from './queries.ts';
 import { BASE_SCOPE, relevantScope, type Scope } from './scope.ts';
 import { outcomeOf, Stop, stopAt, waitFor, type Outcome } from './stop.ts';
+import { readOwnUnits } from './unit-statements.ts';
+import { stopAtUnknownName } from './unknown-name.ts';
 
 /**
  * The symbolic stage: what every name stands for in symbols, derived on demand and kept until something that it was
@@ -69,8 +71,8 @@ export class Derivations implements Meanings {
 
   kindOf(name: string): Entry['kind'] | null {
     return this.queries.get(`kind:${name}`, () => {
-      const { entries, circular } = this.catalogue;
-      return circular.has(name) ? 'unavailable' : (entries.get(name)?.kind ?? null);
+      const { entries, faulty } = this.catalogue;
+      return faulty.has(name) ? 'unavailable' : (entries.get(name)?.kind ?? null);
     });
   }
 
@@ -86,10 +88,10 @@ export class Derivations implements Meanings {
 
   private collectReach(name: string): ReadonlySet<string> {
     const reach = new Set([name]);
-    const { entries, circular } = this.catalogue;
+    const { entries, faulty } = this.catalogue;
     const visit = (next: string): void => {
       const entry = entries.get(next);
-      if (!entry || circular.has(next)) return;
+      if (!entry || faulty.has(next)) return;
       for (const reference of referencesOf(entry, entries)) {
         if (reach.has(reference)) continue;
         reach.add(reference);
@@ -127,32 +129,8 @@ export class Derivations implements Meanings {
           `${name} is a load case; name one of its signals, \`${name}.signal\`.`,
         );
       case null:
-        return this.unknownName(name, span);
+        return stopAtUnknownName(name, span, this);
     }
-  }
-
-  private unknownName(name: string, span: Span): never {
-    const loops = this.loopsWithSignal(name);
-    if (loops.length > 0) {
-      stopAt(
-        span,
-        'signal-outside-loop',
-        `${name} is a signal of ${loops.join(' and ')}; outside the loop it is reached through a load case, \`case.${name}\`.`,
-      );
-    }
-    if (name === 't')
-      stopAt(
-        span,
-        'time-in-formula',
-        'Formulas stand in s; use `response(x)` for a function of t.',
-      );
-    const near = nearestName(name, this.knownNames());
-    stopAt(
-      span,
-      'unknown-name',
-      `Nothing introduces ${name}.${near ? ` Is ${near} meant?` : ` Give it a value (\`${name} is …\`), a definition or a sign.`}`,
-      near ? [{ title: `Write ${near}`, edits: [{ span, insert: near }] }] : [],
-    );
   }
 
   private definitionValue(name: string, span: Span, scope: Scope): Value {
@@ -325,7 +303,7 @@ export class Derivations implements Meanings {
     const kind = this.kindOf(name);
     if (kind === 'assumption' || kind === 'definition' || kind === 'symbol') return;
     if (kind === 'unavailable') waitFor(name);
-    if (kind === null) this.unknownName(name, span);
+    if (kind === null) stopAtUnknownName(name, span, this);
     stopAt(
       span,
       'not-replaceable',
@@ -410,11 +388,17 @@ export class Derivations implements Meanings {
   }
 
   customUnits(): CustomUnits {
-    return this.queries.get('custom-units', () => readCustomUnits(this.catalogue), sameUnits);
+    return this.queries.get('custom-units', () => readOwnUnits(this.catalogue), sameUnits);
   }
 
   knownNames(): readonly string[] {
     return this.queries.get('names', () => [...this.catalogue.entries.keys()], sameList);
+  }
+
+  casesOf(loop: string): readonly string[] {
+    return [...this.catalogue.entries]
+      .filter(([, entry]) => entry.kind === 'case' && entry.node.loop.name === loop)
+      .map(([name]) => name);
   }
 
   loopsWithSignal(name: string): readonly string[] {
@@ -457,17 +441,6 @@ function introductions(catalogue: Catalogue): Introductions {
 
 function sameIntroductions(a: Introductions, b: Introductions): boolean {
   return sameList(a.order, b.order) && sameList(a.tunes, b.tunes);
-}
-
-function readCustomUnits(catalogue: Catalogue): CustomUnits {
-  const units = new Map<string, Unit>();
-  for (const { node } of catalogue.customUnits) {
-    const base = parseUnit(node.value.unit, units);
-    if (isRefusal(base)) continue;
-    const unit = customUnit(node.name, node.value.text, base);
-    if (!isRefusal(unit)) units.set(node.name, unit);
-  }
-  return units;
 }
 
 function sameUnits(a: CustomUnits, b: CustomUnits): boolean {

@@ -42,4 +42,6 @@ export interface Meanings {
   knownNames(): readonly string[];
   /** Loops that have a signal of this name, for hints. */
   loopsWithSignal(name: string): readonly string[];
+  /** Load cases of a loop, for hints. */
+  casesOf(loop: string): readonly string[];
 }

@@ -18,6 +18,7 @@ import { Queries } from './queries.ts';
 import { referenceRows } from './reference-rows.ts';
 import type { Placed, Report, RequirementContent, ResultContent } from './report.ts';
 import { Statements } from './statements.ts';
+import { unitProblems } from './unit-statements.ts';
 
 /** A worksheet that is being worked on: text in, report out, incrementally. */
 export interface Session {
@@ -83,7 +84,11 @@ class WorksheetSession implements Session {
   ): Report {
     const results: Placed<ResultContent>[] = [];
     const requirements: Placed<RequirementContent>[] = [];
-    const problems: Problem[] = [...document.problems, ...catalogue.problems];
+    const problems: Problem[] = [
+      ...document.problems,
+      ...catalogue.problems,
+      ...unitProblems(catalogue, this.derivations.customUnits(), lineOf),
+    ];
     for (const placed of document.statements) {
       this.statements.remember(placed.node, document.text.slice(placed.from, placed.to));
       const reported = this.statements.reportOn(placed.node, lineOfName(catalogue, lineOf));

@@ -11,7 +11,7 @@ import {
 import { formatValue, parseUnit, type Unit } from '../units/index.ts';
 import { isRefusal } from '../base/index.ts';
 import { typedNominal } from './assumptions.ts';
-import { hidingWarning, type Catalogue } from './catalogue.ts';
+import type { Catalogue } from './catalogue.ts';
 import type { Derivations } from './derivations.ts';
 import { checkDimensions, type DimensionReport } from './dimensions.ts';
 import { displayOf } from './display.ts';
@@ -136,8 +136,7 @@ export class Statements {
       this.derivations.kindOf(node.name) === 'definition'
         ? this.resultReport(node, node.name, node.formula)
         : { ...NOTHING, result: erroneousContent(node.name, 'value') };
-    const hiding = FUNCTIONS.has(node.name) ? [hidingWarning(node.name, node.nameSpan)] : [];
-    return this.withProblems(node, { ...report, problems: [...hiding, ...report.problems] });
+    return this.withProblems(node, report);
   }
 
   private resultReport(node: Statement, name: string | null, formula: Expression): StatementReport {
@@ -367,9 +366,11 @@ export class Statements {
 
   /** The statements that the check of dimensions reads; assumptions are read by their unit alone. */
   private structure(): readonly Statement[] {
+    const { faulty } = this.catalogue;
     return this.queries
       .input<readonly Statement[]>('statements')
-      .filter((node) => node.kind !== 'assumption' && node.kind !== 'broken');
+      .filter((node) => node.kind !== 'assumption' && node.kind !== 'broken')
+      .filter((node) => node.kind !== 'loop' || !faulty.has(node.name));
   }
 
   private entryStatement(name: string): Statement | null {

@@ -9,7 +9,12 @@ export const match: WorksheetFunction = {
     'The gains that make one polynomial in s equal another up to a factor: pole placement by coefficient matching.',
   source: 'K. Ogata, Modern Control Engineering, 5th ed., Prentice Hall, 2010, section 10-2.',
   example: 'J is 2 kg m^2\nw is 3 rad/s\nmatch(J s^2 + Kd s + Kp, s^2 + 2 w s + w^2, Kp, Kd)',
-  parameters: [one('p', 'formula'), one('q', 'formula'), one('gain', 'name'), rest('gain', 'name')],
+  parameters: [
+    one('p', 'formula'),
+    one('q', 'formula'),
+    one('gain', 'unknown'),
+    rest('gain', 'unknown'),
+  ],
   unit: 'unchecked',
   availability: 'now',
   evaluate: ([p, q, ...gains], { budget }) => {

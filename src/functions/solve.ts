@@ -30,7 +30,7 @@ export const solve: WorksheetFunction = {
     'An equation or an inequality solved for a symbol, with the direction that the signs allow; for `stable(…)` the intervals of a gain.',
   source: null,
   example: 'a, b are positive\nsolve(a x + b = 0, x)',
-  parameters: [one('relation', 'relation'), one('K', 'name')],
+  parameters: [one('relation', 'relation'), one('K', 'unknown')],
   unit: 'second',
   availability: 'now',
   evaluate: ([relation, unknown], context) => {

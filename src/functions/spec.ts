@@ -45,6 +45,8 @@ export type ParameterKind =
   | 'loop or polynomial'
   | 'signal name'
   | 'name'
+  /** A name that the call itself introduces, as `solve` does its unknown. */
+  | 'unknown'
   | 'relation'
   | 'limit'
   | 'matrix'

@@ -74,7 +74,10 @@ export function refuseBracketAfter(reader: LineReader, member: Expression): void
     );
 }
 
-/** Why a formula has no derivative written with `'`, or null. What a definition stands for, the engine knows. */
+/**
+ * Why a formula has no derivative written with `'`, or null. What a definition stands for, and what takes the name of a
+ * signal in a loop, the engine knows.
+ */
 export function whyNoDerivative(
   reader: LineReader,
   of: Expression,
@@ -89,17 +92,15 @@ export function whyNoDerivative(
   if (of.kind !== 'name')
     return `\`'\` is the time derivative of a signal, and \`${shown}\` is not one.`;
   const kind = reader.kindOf(of.name);
-  if (
-    !CONSTANT_MEANINGS.has(of.name) &&
-    (kind === null || kind === 'signal' || kind === 'definition')
-  )
-    return null;
-  const what =
-    kind === null
-      ? 'a constant of the language'
-      : kind === 'assumption'
-        ? 'an assumption'
-        : `a ${kind}`;
+  const isConstant = CONSTANT_MEANINGS.has(of.name);
+  const mayBeSignal =
+    reader.scope.part === 'loop' || kind === null || kind === 'signal' || kind === 'definition';
+  if (!isConstant && mayBeSignal) return null;
+  const what = isConstant
+    ? 'a constant of the language'
+    : kind === 'assumption'
+      ? 'an assumption'
+      : `a ${kind}`;
   return `\`'\` is the time derivative of a signal, and \`${shown}\` is ${what}.`;
 }
 

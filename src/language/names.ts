@@ -86,3 +86,13 @@ export function canonicalName(text: string): string {
 export function isReserved(name: string): boolean {
   return RESERVED.has(canonicalName(name));
 }
+
+const SPELLINGS: ReadonlyMap<string, string> = new Map(
+  [...GREEK_LETTERS].map(([word, letter]) => [letter, word]),
+);
+const LEADING_GREEK = new RegExp(`^(${[...SPELLINGS.keys()].join('|')})(?=$|_|\\d)`);
+
+/** The name in letters that every keyboard has: `θ_m` as `theta_m`. */
+export function spelledName(name: string): string {
+  return name.replace(LEADING_GREEK, (letter) => SPELLINGS.get(letter)!);
+}

@@ -1,3 +1,5 @@
+import { spelledName } from './names.ts';
+
 /**
  * Number of insertions, deletions, replacements and swaps of neighbours between two words (optimal string alignment).
  *
@@ -27,22 +29,26 @@ function tolerableDistance(length: number): number {
 
 /**
  * The candidate that was most likely meant, or null if none is near: a word that differs only in case counts as one slip.
+ * Greek letters are compared as they are spelled out, too, and are given in the spelling that is near.
  */
 export function nearestName(name: string, candidates: Iterable<string>): string | null {
   const limit = Math.max(1, tolerableDistance(name.length));
   let nearest: string | null = null;
   let best = limit + 1;
   for (const candidate of candidates) {
-    if (candidate === name || Math.abs(candidate.length - name.length) > limit) continue;
-    const distance = distanceWithin(name, candidate);
-    if (distance < best) [nearest, best] = [candidate, distance];
+    if (candidate === name) continue;
+    for (const spelling of new Set([candidate, spelledName(candidate)])) {
+      const distance = distanceWithin(name, spelling, limit);
+      if (distance < best) [nearest, best] = [spelling, distance];
+    }
   }
   return nearest;
 }
 
-function distanceWithin(name: string, candidate: string): number {
+/** The distance between two words, infinite where it is beyond the limit for certain. */
+function distanceWithin(name: string, candidate: string, limit: number): number {
+  if (Math.abs(candidate.length - name.length) > limit) return Infinity;
   if (candidate.toLowerCase() === name.toLowerCase()) return 0.5;
-  const shorter = Math.min(name.length, candidate.length);
-  const distance = spellingDistance(name, candidate);
-  return shorter <= 1 ? Infinity : distance;
+  if (Math.min(name.length, candidate.length) <= 1) return Infinity;
+  return spellingDistance(name, candidate);
 }

@@ -149,15 +149,14 @@ function warnOfUnit(reader: LineReader, equals: Span): void {
   const quantity = quantityInFormula(reader);
   if (!quantity) return;
   const { text, symbols } = quantity;
-  const stray = symbols.find((token) => !reader.kindOf(canonicalName(token.text)));
-  if (!stray) return;
+  // Where any of the symbols is a name of the worksheet, a formula is meant: `2 C s`.
+  const [stray] = symbols;
+  if (!stray || symbols.some((token) => reader.kindOf(canonicalName(token.text)))) return;
   const given = `${reader.tokens[0]!.text} is ${text}`;
   const span = { from: reader.peek()!.from, to: reader.tokens.at(-1)!.to };
   const fixes = [replacement(equals, 'is', `write \`${given}\``)];
   const message = unitInFormulaMessage(text, stray.text, given);
-  const isFormula = symbols.every(
-    (token) => CONSTANT_MEANINGS.has(token.text) || reader.kindOf(canonicalName(token.text)),
-  );
+  const isFormula = symbols.every((token) => CONSTANT_MEANINGS.has(token.text));
   if (isFormula) reader.problems.push(warningAt(span, 'unit-in-formula', message, fixes));
   else reader.fail(span, 'unit-in-formula', message, fixes);
 }
