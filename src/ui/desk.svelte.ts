@@ -4,6 +4,7 @@ import {
   type EvaluatorClient,
   type EvaluatorState,
 } from '../worker/index.ts';
+import type { Report } from '../engine/index.ts';
 import type { Heading } from './outline.ts';
 import { freshSheet, nextSheet, withBaseline } from './sheet-keeper.ts';
 import type { Sheet } from './editor/sheet-field.ts';
@@ -50,7 +51,7 @@ export class Desk {
     });
     this.client = createClient({
       startWorker: startEvaluator,
-      onReport: (report) => this.take(nextSheet(this.sheet, report, this.editor.text)),
+      onReport: (report) => this.reported(report),
       onState: (state) => this.evaluatorIs(state),
       onVocabulary: (words) => this.editor.setVocabulary(words),
     });
@@ -87,6 +88,8 @@ export class Desk {
     localStorage.setItem(LAST_OPENED, name);
     this.keepDraft();
     this.onOpened(name);
+    this.sheet = freshSheet();
+    this.headings = [];
     await this.keeper.open(name);
   }
 
@@ -186,6 +189,11 @@ export class Desk {
     this.outlining ??= setTimeout(() => this.outline(), OUTLINE_WITHIN);
     this.keeper.textChanged();
     this.drafting ??= setTimeout(() => this.keepDraft(), DRAFT_WITHIN);
+  }
+
+  private reported(report: Report): void {
+    // While another worksheet is being opened, the report of the one before is of no use any more.
+    if (this.file?.phase === 'open') this.take(nextSheet(this.sheet, report, this.editor.text));
   }
 
   private outline(): void {

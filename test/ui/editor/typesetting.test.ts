@@ -1,5 +1,5 @@
 import { EditorState } from '@codemirror/state';
-import { Decoration } from '@codemirror/view';
+import type { Decoration } from '@codemirror/view';
 import { ensureSyntaxTree, syntaxTree } from '@codemirror/language';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
