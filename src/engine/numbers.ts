@@ -128,7 +128,8 @@ export class Numbers {
     const ratios = list.length > 0 ? compileRatios(list, this.resolve) : null;
     const own: Condition =
       value.kind === 'condition' ? value.condition : { kind: 'truth', value: true };
-    const conditions = compileConditions([own, value.when], this.resolve);
+    const exists: Condition = value.kind === 'none' ? { kind: 'truth', value: false } : value.when;
+    const conditions = compileConditions([own, exists], this.resolve);
     const inputs = [...new Set([...(ratios?.inputs ?? []), ...conditions.inputs])];
     return { value, ratios, conditions, inputs };
   }
@@ -234,6 +235,12 @@ export class Numbers {
       if (whole) return parts[0].evaluated;
     }
     return scatter(parts, points.count);
+  }
+
+  /** The subject as it is derived at one of several points; null where it cannot be derived. */
+  compiledAt(subject: Subject, points: Points, index: number): Compiled | null {
+    const [group] = this.groupByZeros(subject, pick(points, [index]));
+    return this.compiled(subject, this.zeroScope(group.zeros));
   }
 
   private groupByZeros(subject: Subject, points: Points): { zeros: string[]; indices: number[] }[] {

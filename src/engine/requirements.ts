@@ -1,16 +1,16 @@
 import { YES, type Condition, type Value } from '../control/index.ts';
 import type { Expression, Relation, RequireStatement } from '../language/index.ts';
 import { formatExpression } from '../language/index.ts';
-import { conditionText, expressionLatex } from '../present/index.ts';
+import { conditionText, expressionLatex, valueText } from '../present/index.ts';
 import { formatNumber, formatValue, unitText, valueIn, type Unit } from '../units/index.ts';
 import type { Derivations } from './derivations.ts';
 import { unitFor, type Display } from './display.ts';
 import { failureOf } from './failures.ts';
 import type { Evaluated, Numbers, Points, Subject } from './numbers.ts';
 import type { RequirementContent, Verdict } from './report.ts';
-import { tolerancedNames } from './results.ts';
 import { BASE_SCOPE } from './scope.ts';
-import { isMonotoneCondition, sampleBox, type ToleranceSample } from './tolerance.ts';
+import { sampleBox, type ToleranceSample } from './tolerance.ts';
+import { isMonotoneSubject, movingNames, variantsOf } from './variants.ts';
 
 /** What a verdict is made from. */
 export interface RequirementRequest {
@@ -102,11 +102,9 @@ function judge(
   numbers: Numbers,
 ): Content {
   const { subject } = request;
-  const base = numbers.compiled(subject, BASE_SCOPE);
-  const names = base ? tolerancedNames(base, numbers) : [];
-  const monotone =
-    isMonotoneCondition(value.condition, names, numbers, derivations) &&
-    isMonotoneCondition(value.when, names, numbers, derivations);
+  const variants = variantsOf(subject, numbers);
+  const names = movingNames(variants, numbers);
+  const monotone = isMonotoneSubject(variants, names, numbers, derivations);
   const sample = sampleBox(names, monotone, numbers);
   const evaluated = numbers.evaluateSubject(subject, sample);
   if (!evaluated)
@@ -124,7 +122,7 @@ function judge(
     how: sample.method,
     n: sample.method === 'sampled' ? sample.n : null,
     at: names.length > 0 ? placeOf(sample, worst) : null,
-    notes: notesOf(value, verdict, sample, worst, derivations, numbers),
+    notes: notesOf(request, value, { verdict, sample, worst }, derivations, numbers),
     shown: numbersShown.shown ?? verdict,
     dependsOn: [...subject.reach],
   };
@@ -203,31 +201,50 @@ function shownMargin(
   return `${values} of ${end}`;
 }
 
+interface Judgement {
+  readonly verdict: Verdict;
+  readonly sample: ToleranceSample;
+  readonly worst: number;
+}
+
 function notesOf(
+  { subject }: RequirementRequest,
   value: Extract<Value, { kind: 'condition' }>,
-  verdict: Verdict,
-  sample: ToleranceSample,
-  worst: number,
+  { verdict, sample, worst }: Judgement,
   derivations: Derivations,
   numbers: Numbers,
 ): string[] {
   const notes = [...value.notes];
-  if (verdict !== 'met') {
-    const at = pointAt(sample, worst);
-    const absent = failureOf(value.when, numbers, derivations.writing(), at);
-    const why = absent
-      ? `there is no value: ${absent}`
-      : failureOf(stableParts(value.condition), numbers, derivations.writing(), at);
-    if (why)
-      notes.push(
-        verdict === 'not met'
-          ? `At the nominal or at the worst point ${why}.`
-          : `At the worst point ${why}.`,
-      );
-  }
+  const there = numbers.compiledAt(subject, sample, worst)?.value;
+  const why =
+    verdict === 'met' || !there ? null : failureAt(there, sample, worst, derivations, numbers);
+  if (why)
+    notes.push(
+      verdict === 'not met'
+        ? `At the nominal or at the worst point ${why}.`
+        : `At the worst point ${why}.`,
+    );
   if (verdict === 'met' && sample.method === 'sampled')
     notes.push(`met (sampled, n = ${sample.n}): looked at, not proved.`);
   return notes;
+}
+
+/** Why a requirement fails at a point, in words: there is no value, or a block is not stable. */
+function failureAt(
+  value: Value,
+  sample: ToleranceSample,
+  index: number,
+  derivations: Derivations,
+  numbers: Numbers,
+): string | null {
+  const writing = derivations.writing();
+  if (value.kind === 'none') return `there is no value: ${valueText(value, writing)}`;
+  const at = pointAt(sample, index);
+  const absent = failureOf(value.when, numbers, writing, at);
+  if (absent) return `there is no value: ${absent}`;
+  return value.kind === 'condition'
+    ? failureOf(stableParts(value.condition), numbers, writing, at)
+    : null;
 }
 
 /** Only failures of stability are put in words; those of a relation are seen in its numbers. */

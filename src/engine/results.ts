@@ -39,8 +39,9 @@ import {
   type Subject,
 } from './numbers.ts';
 import type { ResultContent, ResultKind, SpanContent } from './report.ts';
-import { BASE_SCOPE } from './scope.ts';
-import { isMonotone, sampleBox } from './tolerance.ts';
+import { vanishingNotes } from './vanishing.ts';
+import { sampleBox } from './tolerance.ts';
+import { isMonotoneSubject, movingNames, variantsOf } from './variants.ts';
 
 const NOMINAL: Points = { count: 1, columns: new Map() };
 
@@ -83,6 +84,7 @@ export function resultContent(
         ...value.notes,
         ...request.notes,
         ...display.notes,
+        ...vanishingNotes(request.subject, numbers, writing),
         ...nominal.notes,
       ]),
     ],
@@ -233,41 +235,30 @@ function shownText(
   return `${showValue(re, display, hints)} ${im < 0 ? '-' : '+'} j ${showValue(Math.abs(im), display, hints)}`;
 }
 
-/** The toleranced names among the inputs of a subject. */
-export function tolerancedNames(compiled: Compiled, numbers: Numbers): string[] {
-  const moving = compiled.inputs.filter((input) => plainName(input) === input);
-  return moving.filter((name) => numbers.bounds(name) !== null);
-}
-
 function spanOf(
   request: ResultRequest,
   numbers: Numbers,
   derivations: Derivations,
 ): SpanContent | null {
-  const compiled = numbers.compiled(request.subject, BASE_SCOPE);
-  if (!compiled || compiled.value.kind !== 'formula' || !compiled.ratios) return null;
-  const names = tolerancedNames(compiled, numbers);
-  if (names.length === 0 || compiled.ratios.outputs[0].im !== null) return null;
-  const magnitude = asMagnitude(compiled.value.ratio);
-  const monotone = isMonotone(
-    magnitude?.inner ?? compiled.value.ratio,
-    names,
-    numbers,
-    derivations,
-  );
+  const variants = variantsOf(request.subject, numbers);
+  const names = movingNames(variants, numbers);
+  if (names.length === 0 || variants.some(({ compiled }) => !hasRealValue(compiled))) return null;
+  const monotone = isMonotoneSubject(variants, names, numbers, derivations);
   const sample = sampleBox(names, monotone, numbers);
   const evaluated = numbers.evaluateSubject(request.subject, sample);
   if (!evaluated || evaluated.exists.includes(0)) return null;
-  const column = evaluated.columns[0];
   let [low, high] = [Infinity, -Infinity];
-  for (const value of column) {
+  for (const value of evaluated.columns[0]) {
     low = Math.min(low, value);
     high = Math.max(high, value);
   }
-  if (magnitude && sample.method === 'corners' && changesSign(magnitude.inner, sample, numbers)) {
-    if (magnitude.factor > 0) low = 0;
-    else high = 0;
-  }
+  const magnitude = variants
+    .map(({ compiled }) => asMagnitude((compiled!.value as FormulaValue).ratio))
+    .find(
+      (part) => part && sample.method === 'corners' && changesSign(part.inner, sample, numbers),
+    );
+  if (magnitude && magnitude.factor > 0) low = 0;
+  else if (magnitude) high = 0;
   const n = sample.method === 'sampled' ? sample.n : null;
   return {
     low,
@@ -276,6 +267,14 @@ function spanOf(
     n,
     shown: showSpan(low, high, request.display, request.hints),
   };
+}
+
+function hasRealValue(compiled: Compiled | null): boolean {
+  return (
+    compiled?.value.kind === 'formula' &&
+    compiled.ratios !== null &&
+    compiled.ratios.outputs[0].im === null
+  );
 }
 
 /** A magnitude is 0 somewhere between corners of opposite sign. */
@@ -290,9 +289,7 @@ export function absentPlace(
   request: ResultRequest,
   numbers: Numbers,
 ): Readonly<Record<string, number>> | null {
-  const compiled = numbers.compiled(request.subject, BASE_SCOPE);
-  if (!compiled) return null;
-  const names = tolerancedNames(compiled, numbers);
+  const names = movingNames(variantsOf(request.subject, numbers), numbers);
   if (names.length === 0) return null;
   const sample = sampleBox(names, false, numbers);
   const evaluated = numbers.evaluateSubject(request.subject, sample);

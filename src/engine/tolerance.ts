@@ -14,7 +14,7 @@ import {
   type Sign,
 } from '../algebra/index.ts';
 import { Budget, BudgetExceeded, isRefusal } from '../base/index.ts';
-import { stabilityConditions, type Condition } from '../control/index.ts';
+import { negation, stabilityConditions, type Condition } from '../control/index.ts';
 import { latinHypercube, seededRandom } from '../numeric/index.ts';
 import type { Derivations } from './derivations.ts';
 import { asMagnitude, type Numbers, type Points } from './numbers.ts';
@@ -30,8 +30,8 @@ export interface ToleranceSample extends Points {
   readonly n: number | null;
 }
 
-/** All corners are visited up to this many toleranced names; beyond it, corners are drawn at random too. */
-const MOST_CORNER_NAMES = 10;
+/** All corners are visited up to this many; of more, as many are drawn at random. */
+const MOST_CORNERS = 1024;
 const SAMPLES = 2000;
 const SEED = 20260101;
 /** Work that may be spent on proving that a formula is monotone. */
@@ -47,29 +47,35 @@ export function sampleBox(
   numbers: Numbers,
 ): ToleranceSample {
   if (names.length === 0) return { names, count: 1, columns: new Map(), method: 'proved', n: null };
-  const corners = cornerCount(names.length);
-  const method: Method = monotone && names.length <= MOST_CORNER_NAMES ? 'corners' : 'sampled';
+  const random = seededRandom(SEED);
+  const levels = names.map((name) => levelsOf(numbers.bounds(name)!));
+  const all = levels.reduce((product, { length }) => product * length, 1);
+  const corners = Math.min(all, MOST_CORNERS);
+  const method: Method = monotone && all <= MOST_CORNERS ? 'corners' : 'sampled';
   const samples = method === 'corners' ? 0 : SAMPLES;
   const count = 1 + corners + samples;
-  const random = seededRandom(SEED);
   const cube = latinHypercube(random, names.length, samples);
   const columns = new Map<string, Float64Array>();
+  let stride = 1;
   names.forEach((name, k) => {
     const [low, high] = numbers.bounds(name)!;
+    const { length } = levels[k];
     const column = new Float64Array(count);
     column[0] = numbers.nominal(name)!;
     for (let i = 0; i < corners; i++) {
-      const upper = names.length <= MOST_CORNER_NAMES ? ((i >> k) & 1) === 1 : random() < 0.5;
-      column[1 + i] = upper ? high : low;
+      const level = all <= MOST_CORNERS ? Math.floor(i / stride) : Math.floor(random() * length);
+      column[1 + i] = levels[k][level % length];
     }
     for (let i = 0; i < samples; i++) column[1 + corners + i] = low + (high - low) * cube[k][i];
     columns.set(name, column);
+    stride *= length;
   });
   return { names, count, columns, method, n: count - 1 };
 }
 
-function cornerCount(names: number): number {
-  return 2 ** Math.min(names, MOST_CORNER_NAMES);
+/** The values of a name at corners: both bounds, and 0 between them, where a derivation may change. */
+function levelsOf([low, high]: readonly [number, number]): readonly number[] {
+  return low < 0 && high > 0 ? [low, high, 0] : [low, high];
 }
 
 /** The sign of a symbol over the whole tolerance box. */
@@ -149,7 +155,10 @@ export function isMonotoneCondition(
         ),
       );
     case 'not':
-      return isMonotoneCondition(condition.of, names, numbers, derivations);
+      return (
+        condition.of.kind !== 'stable' &&
+        isMonotoneCondition(negation(condition.of), names, numbers, derivations)
+      );
     // A corner of each relation being enough does not make the corners enough for an alternative.
     case 'any':
       return (
@@ -169,6 +178,8 @@ function isMonotoneRelation(
   derivations: Derivations,
 ): boolean {
   const { left, operator, right } = condition;
+  // Between corners of either side a monotone quantity passes through the value that it must not have.
+  if (operator === '!=') return false;
   const isUpper = operator === '<' || operator === '<=';
   const magnitude = asMagnitude(left);
   const rightFixed = names.every((name) => !dependsOn(derivations.open(right), symbol(name)));
