@@ -134,16 +134,10 @@ it('the first worksheet of the readme comes to what the readme says', async () =
   expect(code).toBe(1);
 });
 
-it('every worksheet of ours has no error, and its check takes less than a second, starting included', async () => {
-  for (const name of readdirSync('worksheets').filter((file) => file.endsWith('.md'))) {
-    const times: number[] = [];
-    // The best of three: other tests run beside this one.
-    for (let run = 0; run < 3; run++) {
-      const start = performance.now();
-      const { code, output } = await runCommand('check', join('worksheets', name));
-      times.push(performance.now() - start);
-      expect(code, output).toBeLessThan(2);
-    }
-    expect(Math.min(...times), name).toBeLessThan(1000);
+it('every worksheet of ours has no error', async () => {
+  const names = readdirSync('worksheets').filter((name) => name.endsWith('.md'));
+  for (const name of names) {
+    const { code, output } = await runCommand('check', join('worksheets', name));
+    expect(code, output).toBeLessThan(2);
   }
 });
