@@ -2,13 +2,18 @@ import { hurwitzVerdicts, TapeBuilder } from '../numeric/index.ts';
 import type { BatchInput, Slot, Tape } from '../numeric/index.ts';
 import { RatioCompiler } from './compile.ts';
 import type { Resolve } from './compile.ts';
-import { descendingInS, functionsOfS } from './s-polynomial.ts';
+import { delayTerms, isDelayStable } from './dead-time.ts';
+import type { DelayTerm } from './dead-time.ts';
+import { descendingInS } from './s-polynomial.ts';
 import type { Comparison, Condition } from './values.ts';
 
 /** Verdict of a condition at a point. */
 export const NO = 0;
 export const YES = 1;
 export const UNDECIDED = 2;
+
+/** The terms of a block's characteristic function, one without dead time, as outputs of a tape. */
+type CompiledBlock = readonly DelayTerm<readonly number[], number>[];
 
 /** A condition whose ratios are outputs of a tape. */
 type Compiled =
@@ -19,7 +24,7 @@ type Compiled =
       readonly left: number;
       readonly right: number;
     }
-  | { readonly kind: 'stable'; readonly blocks: readonly (readonly number[])[] }
+  | { readonly kind: 'stable'; readonly blocks: readonly CompiledBlock[] }
   | { readonly kind: 'all' | 'any'; readonly of: readonly Compiled[] }
   | { readonly kind: 'not'; readonly of: Compiled };
 
@@ -66,13 +71,19 @@ class ConditionCompiler {
   }
 
   private stable(condition: Extract<Condition, { kind: 'stable' }>): Compiled {
-    const polynomials = condition.blocks.map((b) => b.polynomial);
-    if (polynomials.some((p) => functionsOfS(p).length > 0)) {
-      return { kind: 'constant', verdict: UNDECIDED };
+    const blocks: CompiledBlock[] = [];
+    for (const { polynomial } of condition.blocks) {
+      const terms = delayTerms(polynomial);
+      if (!terms) return { kind: 'constant', verdict: UNDECIDED };
+      blocks.push(
+        terms.map(({ coefficients, delay }) => ({
+          coefficients: descendingInS(coefficients).map((c) =>
+            this.place(this.compiler.polynomial(c).re),
+          ),
+          delay: this.place(this.compiler.ratio(delay).re),
+        })),
+      );
     }
-    const blocks = polynomials.map((p) =>
-      descendingInS(p).map((c) => this.place(this.compiler.polynomial(c).re)),
-    );
     return { kind: 'stable', blocks };
   }
 
@@ -116,7 +127,7 @@ function compareVerdicts(
   return verdicts;
 }
 
-function stableVerdicts(coefficients: Columns, count: number): Uint8Array {
+function routhVerdicts(coefficients: Columns, count: number): Uint8Array {
   const verdicts = hurwitzVerdicts(coefficients, count);
   for (let i = 0; i < count; i++) {
     // A coefficient that is not a number never counts as stable, but neither is it known to be unstable.
@@ -124,6 +135,26 @@ function stableVerdicts(coefficients: Columns, count: number): Uint8Array {
       verdicts[i] = UNDECIDED;
   }
   return verdicts;
+}
+
+function delayVerdicts(block: CompiledBlock, columns: Columns, count: number): Uint8Array {
+  return Uint8Array.from({ length: count }, (_, i) => {
+    const terms = block.map(({ coefficients, delay }) => ({
+      coefficients: coefficients.map((k) => columns[k][i]),
+      delay: columns[delay][i],
+    }));
+    const stable = isDelayStable(terms);
+    return stable === null ? UNDECIDED : stable ? YES : NO;
+  });
+}
+
+function stableVerdicts(block: CompiledBlock, columns: Columns, count: number): Uint8Array {
+  if (block.length > 1) return delayVerdicts(block, columns, count);
+  const [{ coefficients }] = block;
+  return routhVerdicts(
+    coefficients.map((k) => columns[k]),
+    count,
+  );
 }
 
 const conjoin = (a: number, b: number): number =>
@@ -142,13 +173,11 @@ function evaluateNode(node: Compiled, columns: Columns, count: number): Uint8Arr
       return new Uint8Array(count).fill(node.verdict);
     case 'compare':
       return compareVerdicts(node, columns, count);
-    case 'stable': {
-      const blocks = node.blocks.map((block) => block.map((k) => columns[k]));
+    case 'stable':
       return joined(
         'all',
-        blocks.map((coefficients) => stableVerdicts(coefficients, count)),
+        node.blocks.map((block) => stableVerdicts(block, columns, count)),
       );
-    }
     case 'not':
       return evaluateNode(node.of, columns, count).map((v) => (v === UNDECIDED ? v : 1 - v));
     default:
@@ -163,7 +192,8 @@ function evaluateNode(node: Compiled, columns: Columns, count: number): Uint8Arr
  * Compiles conditions to one tape for evaluation over batches of points.
  *
  * Stability is judged by Routh's test on the coefficients of every block; leading coefficients that are exactly 0 are
- * dropped, so that stability is that of the equations as they are there.
+ * dropped, so that stability is that of the equations as they are there. Blocks with dead time are judged for the dead
+ * time itself, point by point, see `isDelayStable`; that takes about a hundred times as long.
  */
 export function compileConditions(
   conditions: readonly Condition[],

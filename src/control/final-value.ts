@@ -4,7 +4,7 @@ import { isRefusal } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
 import { allOf } from './conditions.ts';
 import type { SignOf } from '../algebra/index.ts';
-import { functionsOfS, powerOfS } from './s-polynomial.ts';
+import { powerOfS } from './s-polynomial.ts';
 import { delaySeries, laurentAtZero, laurentCoefficient } from './series.ts';
 import { stable } from './stability.ts';
 import { judgeStability, settlingOf } from './steadiness.ts';
@@ -86,20 +86,17 @@ const SOURCE_POLES: Readonly<Record<SignalTerm['source'], number>> = {
   impulsive: 0,
   periodic: 0,
   random: 0,
+  initial: 0,
 };
 
 /** How many poles at s = 0 of the loop show in a term: those beyond its source's own. */
 function visibleAtOrigin(term: SignalTerm): number {
-  const { den } = term.transform;
-  if (functionsOfS(den).length > 0) return 0;
-  return Math.max(0, powerOfS(den) - SOURCE_POLES[term.source]);
+  return Math.max(0, powerOfS(term.transform.den) - SOURCE_POLES[term.source]);
 }
 
 /** The block that holds a mode at s = 0 which the signal does not show; null if there is none. */
 function hiddenAtOrigin(x: SignalValue): StabilityBlock | null {
-  const atOrigin = x.blocks.filter(
-    (b) => functionsOfS(b.polynomial).length === 0 && powerOfS(b.polynomial) > 0,
-  );
+  const atOrigin = x.blocks.filter((b) => powerOfS(b.polynomial) > 0);
   const present = atOrigin.reduce((sum, b) => sum + powerOfS(b.polynomial), 0);
   const visible = x.terms.reduce((most, term) => Math.max(most, visibleAtOrigin(term)), 0);
   return present > visible ? atOrigin[atOrigin.length - 1] : null;

@@ -15,7 +15,6 @@ import {
   descendingInS,
   functionsOfS,
   isFreeOfS,
-  powerOfS,
   withoutPowerOfS,
 } from './s-polynomial.ts';
 import { stabilityConditions } from './stability.ts';
@@ -84,10 +83,6 @@ export interface Settling extends StabilityBlock {
   readonly term: SignalTerm | null;
 }
 
-function withoutOrigin(p: Polynomial): Polynomial {
-  return functionsOfS(p).length === 0 && powerOfS(p) > 0 ? withoutPowerOfS(p) : p;
-}
-
 /** A polynomial divided by everything it shares with another. */
 function coprimeTo(p: Polynomial, other: Polynomial, budget?: Budget): Polynomial {
   for (let rest = p; ;) {
@@ -102,7 +97,7 @@ function coprimeTo(p: Polynomial, other: Polynomial, budget?: Budget): Polynomia
 export function settlingOf(x: SignalValue, budget?: Budget): readonly Settling[] {
   const blocks = x.blocks.map((b) => ({
     ...b,
-    polynomial: withoutOrigin(b.polynomial),
+    polynomial: withoutPowerOfS(b.polynomial),
     term: null,
   }));
   const all = productOfPolynomials(
@@ -111,7 +106,7 @@ export function settlingOf(x: SignalValue, budget?: Budget): readonly Settling[]
   );
   const own = x.terms.map((term) => ({
     signals: [],
-    polynomial: coprimeTo(withoutOrigin(term.transform.den), all, budget),
+    polynomial: coprimeTo(withoutPowerOfS(term.transform.den), all, budget),
     term,
   }));
   return [...blocks, ...own].filter(
