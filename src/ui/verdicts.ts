@@ -1,8 +1,5 @@
 import type { RequirementContent, Verdict } from '../engine/index.ts';
 
-/** The verdicts from good to bad, in the order in which a summary names them. */
-export const VERDICTS: readonly Verdict[] = ['met', 'met at nominal only', 'not met', 'undecided'];
-
 const SEVERITY: Readonly<Record<Verdict, number>> = {
   met: 0,
   undecided: 1,

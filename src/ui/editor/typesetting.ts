@@ -1,5 +1,5 @@
 import { syntaxTree } from '@codemirror/language';
-import { StateField, type EditorState, type Extension, type Transaction } from '@codemirror/state';
+import { StateField, type EditorState, type Transaction } from '@codemirror/state';
 import { Decoration, EditorView, type DecorationSet } from '@codemirror/view';
 import { changedBlocks, readBlocks, touchedBlocks, type BlockRange } from './block-ranges.ts';
 import { revealedField } from './revealed.ts';
@@ -10,7 +10,7 @@ import { typesetBlocks } from './typesetter.ts';
  * character stays at its place in the text; where the cursor is, the source is shown. Cells get their line classes.
  * Only the blocks that changed, were read anew, or hold the cursor now or held it before are typeset again.
  */
-export const typesetField = StateField.define<DecorationSet>({
+export const typesetting = StateField.define<DecorationSet>({
   create: (state) => typesetRange(state, Decoration.none, { from: 0, to: state.doc.length }),
   update(decorations, transaction) {
     const { state, changes } = transaction;
@@ -19,9 +19,6 @@ export const typesetField = StateField.define<DecorationSet>({
   },
   provide: (field) => EditorView.decorations.from(field),
 });
-
-/** Typesets the prose and sets apart the cells. */
-export const typesetting: Extension = typesetField;
 
 function staleRanges({ startState, state, changes, docChanged }: Transaction): BlockRange[] {
   const before = syntaxTree(startState);

@@ -5,7 +5,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { revealedField, setFocused } from '../../../src/ui/editor/revealed.ts';
 import { typesetBlocks } from '../../../src/ui/editor/typesetter.ts';
-import { typesetField, typesetting } from '../../../src/ui/editor/typesetting.ts';
+import { typesetting } from '../../../src/ui/editor/typesetting.ts';
 import { worksheetLanguage } from '../../../src/ui/editor/worksheet-language.ts';
 
 const SEED = 20261201;
@@ -29,7 +29,7 @@ function shown(ranges: readonly { from: number; to: number; value: Decoration }[
 
 function held(state: EditorState): string[] {
   const ranges: { from: number; to: number; value: Decoration }[] = [];
-  state.field(typesetField).between(0, state.doc.length, (from, to, value) => {
+  state.field(typesetting).between(0, state.doc.length, (from, to, value) => {
     ranges.push({ from, to, value });
   });
   return shown(ranges);
