@@ -1,11 +1,11 @@
 import {
   coefficientsIn,
-  constantValue,
+  asRational,
   divRatios,
   generatorsOf,
-  isConstantPolynomial,
   isZeroPolynomial,
   isZeroRatio,
+  isZeroRational,
   laplace,
   lcmPolynomials,
   mulPolynomials,
@@ -18,19 +18,21 @@ import {
   ratioOf,
   rational,
   signOfPolynomial,
+  signRational,
   subRatios,
   symbol,
   zeroPolynomial,
   zeroRatio,
   quotientOf,
 } from '../algebra/index.ts';
-import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
-import { refuse, spend } from '../base/index.ts';
+import type { Generator, Polynomial, Ratio, Rational } from '../algebra/index.ts';
+import { invariant, refuse, spend } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
 import { minorRows } from './hurwitz.ts';
 import type { MinorRow } from './hurwitz.ts';
 import { FALSE } from './conditions.ts';
 import type { SignOf } from '../algebra/index.ts';
+import { integersInS } from './pole-place.ts';
 import { countRoots } from './root-count.ts';
 import { degreeInS, descendingInS, functionsOfS } from './s-polynomial.ts';
 import { stabilityConditions } from './stability.ts';
@@ -147,9 +149,26 @@ function entriesAt(
   return rowBelow(above.entries, row.entries, length);
 }
 
-function countsOf(p: Polynomial): RouthArray['counts'] {
-  const ascending = coefficientsIn(p, laplace);
-  return ascending.every(isConstantPolynomial) ? countRoots(ascending.map(constantValue)) : null;
+/** Exact root counts of a polynomial of numbers, checked against the sign changes of a regular array. */
+function countsOf(p: Polynomial, rows: readonly RouthRow[]): RouthArray['counts'] {
+  const ascending = integersInS(p);
+  if (!ascending) return null;
+  const counts = countRoots(ascending);
+  const column = rows.map((row) => asRational(row.entries[0]));
+  const isRegular = column.every((x) => x && !isZeroRational(x)) && isWithoutSpecials(rows);
+  invariant(
+    !isRegular || signChanges(column) === counts.right,
+    'the sign changes of a Routh array contradict the root count',
+  );
+  return counts;
+}
+
+const isWithoutSpecials = (rows: readonly RouthRow[]): boolean =>
+  rows.every((row) => row.special === null);
+
+function signChanges(column: readonly (Rational | null)[]): number {
+  const signs = column.map((x) => (x ? signRational(x) : 0));
+  return signs.filter((sign, i) => i > 0 && sign !== signs[i - 1]).length;
 }
 
 function leadNotes(p: Polynomial, signOf: SignOf): string[] {
@@ -191,12 +210,11 @@ export function routhArray(p: Polynomial, signOf: SignOf, budget?: Budget): Rout
     );
   }
   const { rows, auxiliaries, notes } = buildRows(p, budget);
-  const special = rows.some((row) => row.special !== null);
   return Object.freeze({
     rows: Object.freeze(rows),
     auxiliaries: Object.freeze(auxiliaries),
-    conditions: special ? [FALSE] : stabilityConditions(p, signOf, budget),
-    counts: countsOf(p),
+    conditions: isWithoutSpecials(rows) ? stabilityConditions(p, signOf, budget) : [FALSE],
+    counts: countsOf(p, rows),
     notes: [...leadNotes(p, signOf), ...notes, ...originNotes(p)],
   });
 }

@@ -21,6 +21,7 @@ import {
 import type { Fraction, Polynomial, Ratio } from '../algebra/index.ts';
 import { invariant, isRefusal, refuse } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certify } from './certificate.ts';
 import { blockIndex, closeLoop, upstreamBlocks } from './loops.ts';
 import type { ClosedLoop, LoopBlock, LoopRow } from './loops.ts';
 import { degreeInS, primitiveInS } from './s-polynomial.ts';
@@ -73,6 +74,7 @@ function solveBlock(
       shares.reduce((sum, share) => addRatios(sum, share), zeroRatio),
     );
   });
+  for (const e of block.equations) certify(loop.rows[e], known);
   return null;
 }
 

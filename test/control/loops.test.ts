@@ -20,7 +20,8 @@ import {
   zeroRatio,
   type Ratio,
 } from '../../src/algebra/index.ts';
-import { isRefusal } from '../../src/base/index.ts';
+import { InvariantError, isRefusal } from '../../src/base/index.ts';
+import { certify } from '../../src/control/certificate.ts';
 import {
   blocksOf,
   closeLoop,
@@ -305,6 +306,26 @@ describe('against the raw equations', () => {
     }
     expect(checked).toBe(80);
   });
+});
+
+test('a solution that does not satisfy its equation is taken for our bug', () => {
+  const row = equation({ y: 's + a', r: '0-b' });
+  certify(
+    row,
+    new Map([
+      ['r', read(1)],
+      ['y', read('b/(s + a)')],
+    ]),
+  );
+  expect(() =>
+    certify(
+      row,
+      new Map([
+        ['r', read(1)],
+        ['y', read('b/(s - a)')],
+      ]),
+    ),
+  ).toThrow(InvariantError);
 });
 
 test('dead time in a loop stays an exact function of s', () => {
