@@ -1,18 +1,21 @@
 import { isRefusal, refuse, type Budget, type Refusal } from '../base/index.ts';
+import { placesIn } from './frame.ts';
 import { generatorDependsOn } from './generator.ts';
 import { applyFunction } from './function-value.ts';
 import {
-  coefficientsIn,
-  isZeroPolynomial,
+  constantValue,
+  isConstantPolynomial,
   mulPolynomials,
   onePolynomial,
   productOfPolynomials,
+  scalePolynomial,
   sumPolynomials,
 } from './polynomial.ts';
 import { divRational, isZeroRational, rational, type Rational } from './rational.ts';
 import { divRatios, generatorsOfRatio, isZeroRatio, ratio } from './ratio.ts';
 import type { Quotient } from './relation.ts';
 import type { Generator, Polynomial, Ratio } from './ring.ts';
+import { polynomialOfTerms } from './terms.ts';
 
 /** A polynomial's coefficient of one monomial in the generators that are being replaced. */
 interface Part {
@@ -21,15 +24,25 @@ interface Part {
 }
 
 function partsOver(p: Polynomial, replaced: readonly Generator[]): readonly Part[] {
-  return replaced.reduce<readonly Part[]>(
-    (parts, g) =>
-      parts.flatMap(({ powers, coefficient }) =>
-        coefficientsIn(coefficient, g).flatMap((inner, power) =>
-          isZeroPolynomial(inner) ? [] : [{ powers: [...powers, power], coefficient: inner }],
-        ),
-      ),
-    [{ powers: [], coefficient: p }],
-  );
+  const width = p.generators.length;
+  const columns = placesIn(replaced, p.generators);
+  const kept = [...p.generators.keys()].filter((k) => !columns.includes(k));
+  const groups = new Map<string, { powers: number[]; rows: number[]; coefficients: bigint[] }>();
+  p.coefficients.forEach((coefficient, i) => {
+    const row = p.exponents.subarray(i * width, (i + 1) * width);
+    const powers = columns.map((k) => row[k]);
+    const key = powers.join(' ');
+    const group = groups.get(key) ?? { powers, rows: [], coefficients: [] };
+    groups.set(key, group);
+    for (const k of kept) group.rows.push(row[k]);
+    group.coefficients.push(coefficient);
+  });
+  const others = kept.map((k) => p.generators[k]);
+  // Within a group the replaced columns are equal, so that the rest of the rows is still in order.
+  return [...groups.values()].map(({ powers, rows, coefficients }) => ({
+    powers,
+    coefficient: polynomialOfTerms(others, Int32Array.from(rows), coefficients),
+  }));
 }
 
 function powersOf(p: Polynomial, highest: number, budget?: Budget): readonly Polynomial[] {
@@ -37,6 +50,14 @@ function powersOf(p: Polynomial, highest: number, budget?: Budget): readonly Pol
   while (powers.length <= highest)
     powers.push(mulPolynomials(powers[powers.length - 1], p, budget));
   return powers;
+}
+
+/** The product, its integer factors first: a replacement by numbers is one multiplication. */
+function productOfFactors(factors: readonly Polynomial[], budget?: Budget): Polynomial {
+  const numbers = factors.filter(isConstantPolynomial);
+  const scale = numbers.reduce((product, p) => product * constantValue(p), 1n);
+  const others = factors.filter((p) => !isConstantPolynomial(p));
+  return scalePolynomial(productOfPolynomials(others, budget), scale);
 }
 
 /** p with generators replaced, all at once, over the product of the denominators: not in lowest terms. */
@@ -52,14 +73,13 @@ function replaceIn(
   const nums = degrees.map((degree, k) => powersOf(value(k).num, degree, budget));
   const dens = degrees.map((degree, k) => powersOf(value(k).den, degree, budget));
   const terms = partsOver(p, replaced).map(({ powers, coefficient }) =>
-    powers.reduce(
-      (product, power, k) =>
-        mulPolynomials(
-          mulPolynomials(product, nums[k][power], budget),
-          dens[k][degrees[k] - power],
-          budget,
-        ),
-      coefficient,
+    productOfFactors(
+      [
+        coefficient,
+        ...powers.map((power, k) => nums[k][power]),
+        ...powers.map((power, k) => dens[k][degrees[k] - power]),
+      ],
+      budget,
     ),
   );
   const den = productOfPolynomials(

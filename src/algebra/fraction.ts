@@ -127,7 +127,6 @@ export function powFraction(a: Fraction, power: number, budget?: Budget): Fracti
 }
 
 export const oneFraction: Fraction = Object.freeze({ num: onePolynomial, den: onePolynomial });
-export const zeroFraction: Fraction = Object.freeze({ num: zeroPolynomial, den: onePolynomial });
 
 export function isZeroFraction(f: Fraction): boolean {
   return isZeroPolynomial(f.num);

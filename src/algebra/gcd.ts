@@ -12,6 +12,7 @@ import {
   isOnePolynomial,
   isZeroPolynomial,
   leadingCoefficientIn,
+  leadingTermCount,
   mulPolynomials,
   normalPart,
   onePolynomial,
@@ -172,8 +173,8 @@ function gcdWithout(
 /** The shared generator with the simplest leading coefficients, which the sparse method has to scale by. */
 function chooseMain(a: Polynomial, b: Polynomial): Generator {
   const cost = (g: Generator): number =>
-    termCount(leadingCoefficientIn(a, g)) +
-    termCount(leadingCoefficientIn(b, g)) +
+    leadingTermCount(a, g) +
+    leadingTermCount(b, g) +
     0.1 * Math.min(degreeIn(a, g), degreeIn(b, g));
   const shared = a.generators.filter((g) => b.generators.includes(g));
   return shared.reduce((best, g) => (cost(g) < cost(best) ? g : best));

@@ -4,7 +4,7 @@ export { polynomialKey, ratioKey } from './key.ts';
 export * from './generator.ts';
 export * from './polynomial.ts';
 export { divideExactly, monomialContent, pseudoRemainder, quotientOf } from './quotient.ts';
-export { contentIn, contentOver, gcdOfMany, gcdPolynomials, lcmPolynomials } from './gcd.ts';
+export { contentIn, contentOver, gcdPolynomials, lcmPolynomials } from './gcd.ts';
 export { discriminant, resultant } from './remainder-sequence.ts';
 export * from './square-free.ts';
 export * from './factor.ts';

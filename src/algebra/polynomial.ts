@@ -251,25 +251,48 @@ export function productOfPolynomials(list: readonly Polynomial[], budget?: Budge
   return list.reduce((product, p) => mulPolynomials(product, p, budget), onePolynomial);
 }
 
-function withoutColumn(row: Int32Array, column: number): number[] {
-  return [...row.subarray(0, column), ...row.subarray(column + 1)];
+/** The terms of p with one power in a column, that column left out; `count` of them. */
+function termsWithPower(p: Polynomial, column: number, power: number, count: number): Polynomial {
+  const width = p.generators.length;
+  const rows = new Int32Array(count * (width - 1));
+  const coefficients: bigint[] = [];
+  for (let i = 0, start = 0, to = 0; coefficients.length < count; i += 1, start += width) {
+    if (p.exponents[start + column] !== power) continue;
+    for (let k = 0; k < width; k += 1) if (k !== column) rows[to++] = p.exponents[start + k];
+    coefficients.push(p.coefficients[i]);
+  }
+  const others = p.generators.filter((_, k) => k !== column);
+  return polynomialOfTerms(others, rows, coefficients);
+}
+
+/** How many terms have each power of a column. */
+function powerCounts(p: Polynomial, column: number): Int32Array {
+  const counts = new Int32Array(p.degrees[column] + 1);
+  const width = p.generators.length;
+  for (let at = column; at < p.exponents.length; at += width) counts[p.exponents[at]] += 1;
+  return counts;
 }
 
 /** The coefficients of ascending powers of g, degree + 1 of them; none for the zero polynomial. */
 export function coefficientsIn(p: Polynomial, g: Generator): readonly Polynomial[] {
   const column = p.generators.indexOf(g);
   if (column < 0) return isZeroPolynomial(p) ? [] : [p];
-  const width = p.generators.length;
-  const length = p.degrees[column] + 1;
-  const rows = Array.from({ length }, () => [] as number[]);
-  const coefficients = Array.from({ length }, () => [] as bigint[]);
-  p.coefficients.forEach((coefficient, i) => {
-    const row = p.exponents.subarray(i * width, (i + 1) * width);
-    rows[row[column]].push(...withoutColumn(row, column));
-    coefficients[row[column]].push(coefficient);
-  });
-  const others = p.generators.filter((other) => other !== g);
-  return rows.map((row, k) => polynomialOfTerms(others, Int32Array.from(row), coefficients[k]));
+  return Array.from(powerCounts(p, column), (count, power) =>
+    count === 0 ? zeroPolynomial : termsWithPower(p, column, power, count),
+  );
+}
+
+/** The coefficient of the highest power of g. */
+export function leadingCoefficientIn(p: Polynomial, g: Generator): Polynomial {
+  const column = p.generators.indexOf(g);
+  if (column < 0) return p;
+  return termsWithPower(p, column, p.degrees[column], leadingTermCount(p, g));
+}
+
+/** The number of terms of the coefficient of the highest power of g. */
+export function leadingTermCount(p: Polynomial, g: Generator): number {
+  const column = p.generators.indexOf(g);
+  return column < 0 ? termCount(p) : powerCounts(p, column)[p.degrees[column]];
 }
 
 /** Σ coefs[k] g^k; the coefficients do not contain g. */
@@ -340,11 +363,6 @@ export function leadingCoefficientSign(p: Polynomial): -1 | 0 | 1 {
 export function normalPart(p: Polynomial): Polynomial {
   const primitive = primitivePart(p);
   return leadingCoefficientSign(primitive) < 0 ? negPolynomial(primitive) : primitive;
-}
-
-/** The coefficient of the highest power of g. */
-export function leadingCoefficientIn(p: Polynomial, g: Generator): Polynomial {
-  return coefficientsIn(p, g).at(-1) ?? zeroPolynomial;
 }
 
 /** An order of polynomials that does not depend on how they were found: fewer terms first, then by key. */

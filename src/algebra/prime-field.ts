@@ -1,3 +1,5 @@
+import { invariant } from '../base/index.ts';
+
 /**
  * Arithmetic modulo a prime below 2^26, in doubles: a product is below 2^52 and therefore exact, and the rounded
  * quotient is off by at most one.
@@ -40,6 +42,7 @@ export class PrimeField {
 
   /** The inverse of a ≠ 0, by the extended Euclidean algorithm. */
   inverse(a: number): number {
+    invariant(a !== 0, 'the inverse of zero modulo a prime');
     let [older, newer] = [this.prime, a];
     let [olderFactor, newerFactor] = [0, 1];
     while (newer !== 1) {

@@ -1,5 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { Budget, BudgetExceeded } from '../../src/base/index.ts';
 import {
   contentIn,
   contentOf,
@@ -112,6 +113,20 @@ describe('the greatest common divisor', () => {
       mulPolynomials(negPolynomial(c), readPolynomial('s*a - b^2 + 1')),
     );
     expect(polynomialKey(g)).toBe(polynomialKey(normalPart(c)));
+  });
+});
+
+describe('a budget', () => {
+  it('stops a gcd and a product that cost too much, and says where', () => {
+    const a = readPolynomial('(s + a + b + c + d)^4*(s*a + b*c + d)');
+    const b = readPolynomial('(s + a + b + c + d)^4*(s*b + a*d + c)');
+    expect(() => gcdPolynomials(a, b, new Budget(100))).toThrow(BudgetExceeded);
+    expect(() => mulPolynomials(a, b, new Budget(100))).toThrow(
+      'the product of two polynomials was stopped at',
+    );
+    const budget = new Budget(10_000_000);
+    gcdPolynomials(a, b, budget);
+    expect(budget.spent).toBeGreaterThan(0);
   });
 });
 
