@@ -1,12 +1,11 @@
 import {
   divRatios,
   factorPolynomial,
-  generatorsOf,
-  laplace,
   oneRatio,
   powPolynomial,
   productOfPolynomials,
   ratioFromPolynomial,
+  symbolsOfRatio,
   quotientOf,
 } from '../algebra/index.ts';
 import type { Polynomial, Ratio } from '../algebra/index.ts';
@@ -46,7 +45,7 @@ interface PowerOfFactor {
 }
 
 function hasSymbols(p: Polynomial): boolean {
-  return generatorsOf(p).some((g) => g !== laplace);
+  return symbolsOfRatio(ratioFromPolynomial(p)).length > 0;
 }
 
 /** The share of rest/whole that belongs to one factor: its numerator modulo factor^multiplicity, in digits. */

@@ -100,6 +100,15 @@ describe('the form of a response', () => {
     );
   });
 
+  test('pi and roots of numbers do not keep a larger factor from decimals', () => {
+    const response = responseTo('1/(s^3 + 2*pi*s^2 + 40*s + sqrt(2))');
+    expect(response.exact).toBe(false);
+    const wanted = found(
+      timeResponse([1], [1, 2 * Math.PI, 40, Math.SQRT2], { kind: 'impulse', size: 1 }, 0.5, 3),
+    );
+    expect(sampled(response, {}, [1])[0]).toBeCloseTo(wanted[2], 12);
+  });
+
   test('an improper transform has impulses', () => {
     const response = responseTo('(s^2 + 3*s + 1)/(s + 1)');
     expect(response.impulses).toEqual([
