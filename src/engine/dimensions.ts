@@ -20,6 +20,7 @@ import {
   ANGULAR,
   ANGULAR_FREQUENCY,
   angleOf,
+  angleToCycles,
   cyclesOf,
   cyclesToAngle,
   DERIVATIVE,
@@ -35,6 +36,7 @@ import {
   NUMBER,
   powMeasure,
   PURE,
+  saidAngle,
   TIME,
   unknownMeasure,
   type Measure,
@@ -516,7 +518,8 @@ class DimensionCheck {
 
   private shownIn(expression: Extract<Expression, { kind: 'in-unit' }>, of: Measure): Measure {
     const unit = this.unitMeasure(expression.unit);
-    if (this.inference.unify(of, unit)) return fitsAnywhere(of) ? unit : of;
+    if (this.inference.unify(of, unit))
+      return fitsAnywhere(of) ? unit : saidAngle(this.inference.settle(of), unit);
     this.complain(
       errorAt(
         expression.unitSpan,
@@ -596,24 +599,36 @@ function constantMeasure(name: string): Measure {
   return name === 'j' || name === 'pi' || name === 'π' ? PURE : FREE;
 }
 
-/** `2 pi f1`: π turns cycles into an angle. */
+/** `2 pi f1` and `omega/(2 pi)`: π turns cycles into an angle, and dividing by it an angular frequency into a frequency. */
 function productMeasure(product: Product, inner: (part: Expression) => Measure): Measure {
   const measure = product.factors
     .map(inner)
     .reduce((total, factor, index) =>
       product.inverted[index] ? divMeasures(total, factor) : mulMeasures(total, factor),
     );
-  const hasPi = product.factors.some(
-    (factor) => factor.kind === 'name' && /^(pi|π)$/.test(factor.name),
+  const power = piPower(product);
+  if (power !== 0 && isNumeral(product)) return { ...measure, bare: true, rigid: false };
+  if (power > 0) return cyclesToAngle(measure);
+  return power === -1 ? angleToCycles(measure) : measure;
+}
+
+function isPi(e: Expression): boolean {
+  return e.kind === 'name' && /^(pi|π)$/.test(e.name);
+}
+
+/** How often π is a factor of a product; negative where it divides. */
+function piPower(e: Expression): number {
+  if (isPi(e)) return 1;
+  if (e.kind !== 'product') return 0;
+  return e.factors.reduce(
+    (sum, factor, index) => sum + (e.inverted[index] ? -1 : 1) * piPower(factor),
+    0,
   );
-  const onlyPi =
-    hasPi &&
-    !product.factors.some(
-      (factor) =>
-        factor.kind !== 'number' && !(factor.kind === 'name' && /^(pi|π)$/.test(factor.name)),
-    );
-  if (onlyPi) return { ...measure, bare: true, rigid: false };
-  return hasPi ? cyclesToAngle(measure) : measure;
+}
+
+/** Whether it is made of numbers and π alone. */
+function isNumeral(e: Expression): boolean {
+  return isPi(e) || e.kind === 'number' || (e.kind === 'product' && e.factors.every(isNumeral));
 }
 
 function exponentValue(exponent: Expression): number | null {

@@ -116,6 +116,27 @@ export function cyclesToAngle(a: Measure): Measure {
   return { ...a, exponents };
 }
 
+/** ω/(2π): a rate becomes a frequency in cycles; anything else stays what it is. */
+export function angleToCycles(a: Measure): Measure {
+  if (!isRate(a) || cyclesOf(a) !== 0 || fitsAnywhere(a)) return a;
+  return withCounted(a, 0, 1);
+}
+
+/**
+ * What is said of angles by the unit that a measure is shown in: `sqrt(k/m) in rad/s` is an angular frequency. Hertz is
+ * not taken so, since it needs the factor 2π.
+ */
+export function saidAngle(a: Measure, unit: Measure): Measure {
+  return cyclesOf(a) === 0 && cyclesOf(unit) === 0 ? withCounted(a, angleOf(unit), 0) : a;
+}
+
+function withCounted(a: Measure, angle: number, cycles: number): Measure {
+  const exponents = a.exponents.map((own, index) =>
+    index === ANGLE ? angle : index === CYCLE ? cycles : own,
+  );
+  return { ...a, exponents };
+}
+
 /** Whether it fits wherever it stands: a name without a unit, or a bare number with nothing rigid beside it. */
 export function fitsAnywhere(a: Measure): boolean {
   return a.free || (a.bare && !a.rigid);

@@ -181,7 +181,8 @@ export class Statements {
   private movingGains(subject: Subject): string[] {
     const loops = [...subject.reach].filter((name) => this.derivations.kindOf(name) === 'loop');
     if (loops.length === 0) return [];
-    const gains = [...subject.reach].filter(
+    const inLoops = new Set(loops.flatMap((loop) => [...this.derivations.reachOf(loop)]));
+    const gains = [...inLoops].filter(
       (name) =>
         this.derivations.abbreviated(name) !== null && this.numbers.movesWithTolerance(name),
     );
