@@ -94,12 +94,14 @@ type StablePart = Condition | { readonly kind: 'hurwitz'; readonly polynomial: P
 const OPENING_BUDGET = 2_000_000;
 
 function stableParts(blocks: readonly StabilityBlock[], writing: Writing): readonly StablePart[] {
-  return blocks.flatMap(({ polynomial }): readonly StablePart[] => {
+  const parts = blocks.flatMap(({ polynomial }): readonly StablePart[] => {
     const conditions = openedConditions(polynomial, writing);
     if (conditions === null) return [{ kind: 'hurwitz', polynomial }];
     const whole = readable({ kind: 'all', of: conditions }, writing.signOf, writing.tuned);
     return flattened([whole], 'all');
   });
+  const never = parts.find((part) => part.kind === 'truth' && !part.value);
+  return never ? [never] : parts.filter((part) => part.kind !== 'truth');
 }
 
 function openedConditions(p: Polynomial, writing: Writing): readonly Condition[] | null {
@@ -127,12 +129,11 @@ function partLatex(part: StablePart, writing: Writing): string {
 function joined(parts: readonly StablePart[], word: 'and' | 'or', writing: Writing): string {
   if (parts.length === 0) return word === 'and' ? '1 > 0' : '1 < 0';
   if (parts.length === 1) return partText(parts[0], writing);
-  return parts
-    .map((part) => {
-      const text = partText(part, writing);
-      return word === 'and' && part.kind === 'any' ? `(${text})` : text;
-    })
-    .join(` ${word} `);
+  const texts = parts.map((part) => {
+    const text = partText(part, writing);
+    return word === 'and' && part.kind === 'any' ? `(${text})` : text;
+  });
+  return [...new Set(texts)].join(` ${word} `);
 }
 
 function joinedLatex(parts: readonly StablePart[], kind: 'all' | 'any', writing: Writing): string {

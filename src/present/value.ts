@@ -117,7 +117,9 @@ function delayed({ transform, after }: SignalTerm): Ratio {
 
 function noValueText(value: NoValue, writing: Writing): string {
   if (value.growth === null) return value.reason;
-  return `${value.reason} (rate ${formulaText(value.growth.rate, writing)})`;
+  const { rate, power } = value.growth;
+  const what = power === 1 ? 'rate' : `its derivative of order ${power} goes to`;
+  return `${value.reason} (${what} ${formulaText(rate, writing)})`;
 }
 
 function noValueLatex(value: NoValue, writing: Writing): string {
