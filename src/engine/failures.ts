@@ -1,13 +1,9 @@
-import {
-  coefficientsIn,
-  dependsOnLaplace,
-  generatorsOf,
-  laplace,
-  ratioFromPolynomial,
-} from '../algebra/index.ts';
+import { coefficientsIn, laplace, ratioFromPolynomial } from '../algebra/index.ts';
 import {
   compileConditions,
   compileRatios,
+  functionsOfS,
+  UNDECIDED,
   YES,
   type Condition,
   type StabilityBlock,
@@ -63,15 +59,12 @@ function verdictAt(condition: Condition, numbers: Numbers, at: Points): number {
 }
 
 function blockFailure(block: StabilityBlock, numbers: Numbers, at: Points): string {
-  const signals = block.signals.join(', ');
-  const name =
-    block.signals.length === 0
-      ? 'it'
-      : block.signals.length === 1
-        ? `the block of ${signals}`
-        : `the block of ${signals}`;
-  if (generatorsOf(block.polynomial).some((g) => g !== laplace && dependsOnLaplace(g))) {
-    return `${name} has a dead time, for which stability is not decided yet; use rational_delay`;
+  const name = block.signals.length === 0 ? 'it' : `the block of ${block.signals.join(', ')}`;
+  if (functionsOfS(block.polynomial).length > 0) {
+    const verdict = verdictAt({ kind: 'stable', blocks: [block] }, numbers, at);
+    return verdict === UNDECIDED
+      ? `the stability of ${name} with its dead time cannot be told; use rational_delay`
+      : `${name} is not stable with its dead time`;
   }
   const roots = rootsAt(block, numbers, at).filter(
     (root) => root.re > -1e-9 * (1 + Math.hypot(root.re, root.im)),

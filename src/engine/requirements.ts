@@ -1,4 +1,4 @@
-import { YES, type Condition, type Value } from '../control/index.ts';
+import { NO, YES, type Condition, type Value } from '../control/index.ts';
 import type { Expression, Relation, RequireStatement } from '../language/index.ts';
 import { formatExpression } from '../language/index.ts';
 import { conditionText, expressionLatex, valueText } from '../present/index.ts';
@@ -113,7 +113,7 @@ function judge(
     verdict === YES && evaluated.exists[i] ? 1 : 0,
   );
   const worst = worstPoint(value.condition, evaluated, holds);
-  const verdict = verdictOf(holds);
+  const verdict = verdictOf(holds, evaluated);
   const numbersShown = relationNumbers(request, value.condition, evaluated, worst);
   return {
     ...blank(request.statement),
@@ -128,8 +128,11 @@ function judge(
   };
 }
 
-function verdictOf(holds: Uint8Array): Verdict {
+/** What is undecided anywhere, and refuted nowhere, is undecided. */
+function verdictOf(holds: Uint8Array, { verdicts, exists }: Evaluated): Verdict {
   if (!holds.includes(0)) return 'met';
+  const isRefuted = verdicts.some((verdict, i) => verdict === NO || !exists[i]);
+  if (!isRefuted) return 'undecided';
   return holds[0] ? 'met at nominal only' : 'not met';
 }
 

@@ -8,7 +8,7 @@ import {
   asRational,
 } from '../algebra/index.ts';
 import type { ArrayValue, FormulaValue, PartsValue, RootsValue, Value } from '../control/index.ts';
-import { compileRatios, YES } from '../control/index.ts';
+import { compileRatios, UNDECIDED, YES } from '../control/index.ts';
 import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
 import { polynomialRoots } from '../numeric/index.ts';
 import {
@@ -75,7 +75,7 @@ export function resultContent(
     formula,
     latex: latexOf(value, numbers, writing),
     value: nominal.value,
-    unit: typeof nominal.value === 'boolean' ? null : coherentText(display.measure),
+    unit: value.kind === 'condition' ? null : coherentText(display.measure),
     shown,
     span: typeof nominal.value === 'number' ? spanOf(request, numbers, derivations) : null,
     notes: [
@@ -183,12 +183,26 @@ function nominalValue(subject: Subject, numbers: Numbers, writing: Writing): Nom
       ],
     };
   const evaluated = numbers.evaluate(compiled, NOMINAL);
-  if (evaluated.exists[0]) return { value: numberIn(compiled, evaluated), notes: [] };
-  return absentAtNominal(subject, compiled, numbers, writing);
+  if (!evaluated.exists[0]) return absentAtNominal(subject, compiled, numbers, writing);
+  const undecided = undecidedReason(compiled, evaluated, numbers, writing);
+  if (undecided) return { value: null, notes: [`Undecided: ${undecided}.`] };
+  return { value: numberIn(compiled, evaluated), notes: [] };
+}
+
+/** Why a condition can be told neither true nor false at the nominal; null for all else. */
+function undecidedReason(
+  { value }: Compiled,
+  { verdicts }: Evaluated,
+  numbers: Numbers,
+  writing: Writing,
+): string | null {
+  if (value.kind !== 'condition' || verdicts[0] !== UNDECIDED) return null;
+  return failureOf(value.condition, numbers, writing);
 }
 
 function numberIn(compiled: Compiled, evaluated: Evaluated): ResultContent['value'] {
-  if (compiled.value.kind === 'condition') return evaluated.verdicts[0] === YES;
+  if (compiled.value.kind === 'condition')
+    return evaluated.verdicts[0] === UNDECIDED ? null : evaluated.verdicts[0] === YES;
   const [output] = compiled.ratios!.outputs;
   const re = evaluated.columns[output.re][0];
   return output.im === null
@@ -211,7 +225,8 @@ function absentAtNominal(
     return { value: null, notes: [`No value at the nominal: ${valueText(exact.value, writing)}`] };
   if (exact?.value.kind === 'formula' && exact.ratios && numbers.missing(exact).length === 0) {
     const evaluated = numbers.evaluate(exact, NOMINAL);
-    if (evaluated.exists[0])
+    const leavesTheReals = isComplex(exact) && !isComplex(compiled);
+    if (evaluated.exists[0] && !leavesTheReals)
       return {
         value: numberIn(exact, evaluated),
         notes: ['Derived anew at the nominal values, where the formula divides by 0.'],
@@ -221,6 +236,10 @@ function absentAtNominal(
     value: null,
     notes: ['No value at the nominal: the formula divides by 0 there, or is not real.'],
   };
+}
+
+function isComplex(compiled: Compiled): boolean {
+  return compiled.ratios !== null && compiled.ratios.outputs.some((output) => output.im !== null);
 }
 
 function shownText(

@@ -144,8 +144,9 @@ export function isMonotoneCondition(
 ): boolean {
   switch (condition.kind) {
     case 'truth':
-    case 'undecided':
       return true;
+    case 'undecided':
+      return false;
     case 'compare':
       return isMonotoneRelation(condition, names, numbers, derivations);
     case 'stable':

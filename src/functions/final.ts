@@ -1,4 +1,3 @@
-import { refuse } from '../base/index.ts';
 import { finalValue } from '../control/index.ts';
 import { signalOf } from './answer.ts';
 import { one, type WorksheetFunction } from './spec.ts';
@@ -12,14 +11,5 @@ export const final: WorksheetFunction = {
   parameters: [one('x', 'signal')],
   unit: 'signal',
   availability: 'now',
-  evaluate: ([x], { signOf, budget }) => {
-    const signal = signalOf(x);
-    if (signal.hasDelay) {
-      return refuse(
-        'dead-time',
-        'with a dead time in the loop the existence of a final value is not decided yet; use rational_delay(Td, n)',
-      );
-    }
-    return finalValue(signal, signOf, budget);
-  },
+  evaluate: ([x], { signOf, budget }) => finalValue(signalOf(x), signOf, budget),
 };

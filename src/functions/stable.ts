@@ -1,3 +1,4 @@
+import { isZeroPolynomial } from '../algebra/index.ts';
 import { isRefusal, refuse, type Refusal } from '../base/index.ts';
 import { stable as allStable, type StabilityBlock } from '../control/index.ts';
 import { conditionAnswer, loopOf, nameOf, polynomialOf, ratioOfArgument } from './answer.ts';
@@ -29,7 +30,10 @@ function blocksOf(
   }
   if (signal) return refuse('no-loop', 'a signal is named only together with its loop');
   const polynomial = polynomialOf(ratioOfArgument(subject), 'stable');
-  return isRefusal(polynomial) ? polynomial : [{ signals: [], polynomial }];
+  if (isRefusal(polynomial)) return polynomial;
+  if (isZeroPolynomial(polynomial))
+    return refuse('zero-polynomial', 'the polynomial is zero: every s is a root');
+  return [{ signals: [], polynomial }];
 }
 
 function blocksOfSignal(loop: LoopMeaning, signal: string): readonly StabilityBlock[] | Refusal {

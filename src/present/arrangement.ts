@@ -1,12 +1,16 @@
 import {
   coefficientsIn,
+  dependsOn,
   dependsOnLaplace,
+  divRatios,
   generatorsOf,
   isOnePolynomial,
   isZeroPolynomial,
   laplace,
   mulRatios,
+  negRatio,
   ratioFromRational,
+  ratioOf,
   rational,
   termsOf,
   type Generator,
@@ -131,16 +135,20 @@ function compareTexts(a: string, b: string): number {
   return a.length - b.length || (a < b ? -1 : 1);
 }
 
-/** A generator to a power; a power of an exponential is that of the multiplied exponent. */
+/** A generator to a power; a power of an exponential is that of the multiplied exponent, a dead time is `delay(Td)`. */
 function powerForm(g: Generator, power: number, layout: Layout): Written {
   if (!g.args) return raised({ kind: 'name', name: g.name }, power);
   if (g.name !== 'exp') return raised(callForm(g.name, g.args, layout), power);
-  const times = ratioFromRational(rational(power));
-  return callForm(
-    g.name,
-    g.args.map((arg) => mulRatios(arg, times)),
-    layout,
-  );
+  const exponent = mulRatios(g.args[0], ratioFromRational(rational(power)));
+  const deadTime = deadTimeIn(exponent);
+  return deadTime ? callForm('delay', [deadTime], layout) : callForm('exp', [exponent], layout);
+}
+
+/** T where the exponent is -s T; null for any other. */
+function deadTimeIn(exponent: Ratio): Ratio | null {
+  if (!dependsOn(exponent, laplace)) return null;
+  const time = negRatio(divRatios(exponent, ratioOf(laplace)));
+  return dependsOn(time, laplace) ? null : time;
 }
 
 function callForm(name: string, args: readonly Ratio[], layout: Layout): Written {

@@ -1,5 +1,7 @@
 import { nameToLatex } from '../language/index.ts';
-import type { SignedTerm, Written } from './written.ts';
+import { signed, timesForms, type SignedTerm, type Written } from './written.ts';
+
+const LAPLACE: Written = Object.freeze({ kind: 'name', name: 's' });
 
 /** A written formula as LaTeX for KaTeX: fractions, thin spaces between factors, no units. */
 export function latexOf(form: Written): string {
@@ -9,7 +11,9 @@ export function latexOf(form: Written): string {
     case 'name':
       return nameToLatex(form.name);
     case 'call':
-      return callLatex(form.name, form.args.map(latexOf));
+      return form.name === 'delay'
+        ? callLatex('exp', [latexOf(signed(true, timesForms(form.args[0], [LAPLACE])))])
+        : callLatex(form.name, form.args.map(latexOf));
     case 'power':
       return `${powerBaseLatex(form.base)}^{${form.exponent}}`;
     case 'product':

@@ -51,7 +51,7 @@ describe('stability', () => {
 
   it('with dead time is left closed', () => {
     const stable: Condition = { kind: 'stable', blocks: [block('J s + Kp exp(-a s)')] };
-    expect(conditionText(stable, writing)).toBe('stable(J s + Kp exp(-a s))');
+    expect(conditionText(stable, writing)).toBe('stable(J s + Kp delay(a))');
   });
 
   it('that always holds says so', () => {

@@ -29,7 +29,18 @@ import {
 import type { Writing } from '../../src/present/writing.ts';
 import { isUnitSymbol } from '../../src/units/index.ts';
 
-const FUNCTIONS = new Set(['sqrt', 'exp', 'log', 'sin', 'cos', 'tan', 'atan', 'abs', 'nominal']);
+const FUNCTIONS = new Set([
+  'delay',
+  'sqrt',
+  'exp',
+  'log',
+  'sin',
+  'cos',
+  'tan',
+  'atan',
+  'abs',
+  'nominal',
+]);
 
 const vocabulary = {
   isUnit: isUnitSymbol,
@@ -87,6 +98,7 @@ function valueOf(e: Expression): Ratio {
 }
 
 function called(name: string, args: readonly Ratio[]): Ratio {
+  if (name === 'delay') return called('exp', [negRatio(mulRatios(args[0], ratioOf(laplace)))]);
   const value = applyFunction(name, args);
   if (isRefusal(value)) throw new Error(value.reason);
   return value;

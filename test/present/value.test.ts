@@ -131,7 +131,7 @@ describe('values of every kind', () => {
           },
         ],
       },
-      'Tw exp(-5 s)/s',
+      'Tw delay(5)/s',
     ],
     [
       'roots are those of a polynomial',
