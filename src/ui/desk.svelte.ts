@@ -27,6 +27,8 @@ export class Desk {
   connected = $state(true);
   file = $state.raw<FileState | null>(null);
   sheet = $state.raw<Sheet>(freshSheet());
+  /** Where the cursor is in the text; null while it is only read. */
+  place = $state<number | null>(null);
   headings = $state.raw<readonly Heading[]>([]);
   evaluator = $state.raw<EvaluatorState>({ kind: 'current' });
   /** Whether the results shown are older than a moment: they are greyed. */
@@ -48,6 +50,7 @@ export class Desk {
     this.editor = new WorksheetEditor(column, {
       onChange: (text) => this.textChanged(text),
       onSave: () => void this.save(),
+      onPlace: (place) => (this.place = place),
     });
     this.client = createClient({
       startWorker: startEvaluator,

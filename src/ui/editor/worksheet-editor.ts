@@ -21,6 +21,8 @@ export interface EditorEvents {
   /** The text changed; `text` is as edited, with `\n` between lines. */
   readonly onChange: (text: string) => void;
   readonly onSave: () => void;
+  /** The cursor is at a place, or nowhere while the text is only read. */
+  readonly onPlace: (place: number | null) => void;
 }
 
 /** The one document of the page: the worksheet's text, typeset, with its results in it. */
@@ -161,6 +163,10 @@ export class WorksheetEditor {
         editorKeys(this.events.onSave),
         EditorView.updateListener.of((update) => {
           if (update.docChanged) this.events.onChange(this.text);
+          if (update.selectionSet || update.focusChanged || update.docChanged) {
+            const { hasFocus, state } = update.view;
+            this.events.onPlace(hasFocus ? state.selection.main.head : null);
+          }
         }),
       ],
     });

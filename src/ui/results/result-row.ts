@@ -1,6 +1,7 @@
 import type { ResultContent } from '../../engine/index.ts';
 import type { Movement } from '../baseline.ts';
 import { element } from './element.ts';
+import { scrollable } from './scrollable.ts';
 import { spoken } from './spoken.ts';
 import { typeset } from './mathematics.ts';
 import { resultTable } from './value-table.ts';
@@ -34,7 +35,7 @@ export function waitingLine(waitsFor: { readonly name: string; readonly line: nu
 
 function mainLine(content: ResultContent, movement: Movement | null): HTMLElement {
   const line = element('div', 'result-line');
-  const formula = element('div', 'formula');
+  const formula = scrollable(element('div', 'formula'), 'Formula');
   if (content.state === 'ready' && content.latex) formula.append(formulaElement(content));
   line.append(formula, figures(content, movement));
   return line;

@@ -1,5 +1,6 @@
 import type { ResultContent } from '../../engine/index.ts';
 import { element } from './element.ts';
+import { scrollable } from './scrollable.ts';
 
 interface PlainTable {
   readonly columns: readonly string[];
@@ -20,7 +21,7 @@ export function tableElement({ columns, rows }: PlainTable): HTMLElement {
   );
   const table = element('table', 'values', element('thead', '', head));
   table.append(element('tbody', '', ...body));
-  return element('div', 'table-frame', table);
+  return scrollable(element('div', 'table-frame', table), 'Table');
 }
 
 function headCell(text: string): HTMLElement {
