@@ -34,21 +34,7 @@ import type { SignOf } from '../algebra/index.ts';
 import { degreeInS, hasFunctionsOfS } from './s-polynomial.ts';
 import { gathered, gatheredResponse, originalsOfPower } from './time-function.ts';
 import type { PlainTerm, ResponseImpulse, ResponseTerm } from './time-function.ts';
-import type { Condition, SignalTerm, SignalValue } from './values.ts';
-
-interface ResponseBase {
-  readonly kind: 'response';
-  readonly impulses: readonly ResponseImpulse[];
-  readonly when: Condition;
-  readonly notes: readonly string[];
-}
-
-/** A signal as a function of t ≥ 0: the sum of its terms, exact, or in decimals where roots had to be found numerically. */
-export type Response = ResponseBase &
-  (
-    | { readonly exact: true; readonly terms: readonly ResponseTerm<Ratio>[] }
-    | { readonly exact: false; readonly terms: readonly ResponseTerm<number>[] }
-  );
+import type { Condition, Response, SignalTerm, SignalValue } from './values.ts';
 
 const number = (n: number): Ratio => ratioFromRational(rational(n));
 

@@ -1,4 +1,5 @@
 import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
+import type { ResponseImpulse, ResponseTerm } from './time-function.ts';
 
 /**
  * What a formula of a worksheet stands for, in symbols.
@@ -80,14 +81,29 @@ export interface PartsValue extends ValueBase {
   readonly joined: 'sum' | 'list';
 }
 
-/** Something said in words or typeset, without a number of its own (a closed-form response). */
+interface ResponseBase {
+  readonly kind: 'response';
+  readonly impulses: readonly ResponseImpulse[];
+  readonly when: Condition;
+  readonly notes: readonly string[];
+}
+
+/** A signal as a function of t ≥ 0: the sum of its terms, exact, or in decimals where roots had to be found numerically. */
+export type Response = ResponseBase &
+  (
+    | { readonly exact: true; readonly terms: readonly ResponseTerm<Ratio>[] }
+    | { readonly exact: false; readonly terms: readonly ResponseTerm<number>[] }
+  );
+
+/** A closed-form response, as it is written and as what it is. */
 export interface TextValue extends ValueBase {
   readonly kind: 'text';
+  readonly response: Response;
   readonly text: string;
   readonly latex: string;
 }
 
-export type SourceKind = 'constant' | 'drifting' | 'impulsive' | 'periodic' | 'random';
+export type SourceKind = 'constant' | 'drifting' | 'impulsive' | 'periodic' | 'random' | 'initial';
 
 /** One source's share of a signal: X(s) = transform · e^(−s·after). */
 export interface SignalTerm {

@@ -110,6 +110,7 @@ export function mulValues(a: Value, b: Value, span: Span): Value {
   if (a.kind === 'formula') return scaleValue(b, a, span);
   if (b.kind === 'formula') return scaleValue(a, b, span);
   if (a.kind === 'matrix' && b.kind === 'matrix') {
+    refuseUnfitting(a, b, span);
     return unwrapSingle({
       ...a,
       ...inherited(a, b),
@@ -117,6 +118,13 @@ export function mulValues(a: Value, b: Value, span: Span): Value {
     });
   }
   stopAt(span, 'cannot-multiply', `${kindInWords(a)} and ${kindInWords(b)} cannot be multiplied.`);
+}
+
+function refuseUnfitting(a: MatrixValue, b: MatrixValue, span: Span): void {
+  if (a.rows[0].length === b.rows.length) return;
+  const [left, right] = [a, b].map((matrix) => kindInWords(matrix));
+  const message = `${left} cannot be multiplied by ${right}: a row of the first needs as many entries as a column of the second.`;
+  stopAt(span, 'matrices-do-not-fit', message);
 }
 
 /** A 1×1 matrix is a number. */

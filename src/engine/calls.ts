@@ -126,11 +126,12 @@ function checkCount(call: Call, spec: WorksheetFunction): void {
     : spec.parameters.length;
   if (call.args.length >= least && call.args.length <= most) return;
   const names = spec.parameters.map(parameterText).join(', ');
+  const last = most === Infinity ? least : most;
   stopAt(
     call.span,
     'argument-count',
     `${spec.name}(${names}) takes ${least === most ? least : most === Infinity ? `at least ${least}` : `${least} to ${most}`} ` +
-      `argument${most === 1 ? '' : 's'}, not ${call.args.length}.`,
+      `argument${last === 1 ? '' : 's'}, not ${call.args.length}.`,
   );
 }
 

@@ -3,6 +3,7 @@ import {
   equalPolynomials,
   equalRatios,
   fractionOfRatio,
+  generatorsOfRatio,
   imaginary,
   laplace,
   ratioOf,
@@ -199,12 +200,24 @@ export class Derivations implements Meanings {
 
   /** The formula with derived parameters replaced by what they stand for, down to assumptions. */
   open(ratio: Ratio): Ratio {
+    return this.openWhere(ratio, () => true);
+  }
+
+  /** The same, but opening only the parameters that a symbol stands behind other than through `nominal`. */
+  private openFor(ratio: Ratio, behind: Generator): Ratio {
+    return this.openWhere(
+      ratio,
+      (g, meaning) => g !== behind && standsIn(behind, this.open(meaning)),
+    );
+  }
+
+  private openWhere(ratio: Ratio, isOpened: (g: Generator, meaning: Ratio) => boolean): Ratio {
     let opened = ratio;
     for (;;) {
       const map = new Map<Generator, Ratio>();
       for (const g of symbolsOfRatio(opened)) {
         const meaning = this.abbreviated(g.name);
-        if (meaning) map.set(g, meaning);
+        if (meaning && isOpened(g, meaning)) map.set(g, meaning);
       }
       if (map.size === 0) return opened;
       const next = substituteRatio(opened, map);
@@ -329,6 +342,7 @@ export class Derivations implements Meanings {
       signOf: (g) => (scope.replacements.has(g.name) ? 'unknown' : this.signOf(g)),
       budget: new Budget(DEFAULT_BUDGET),
       open: (ratio) => this.open(ratio),
+      openFor: (ratio, behind) => this.openFor(ratio, behind),
       tuned: writing.tuned,
       readable: (condition) => readable(condition, writing.signOf, writing.tuned),
       write: (ratio) => formulaText(ratio, writing),
@@ -421,6 +435,15 @@ function signOfFunction(g: Generator, signOf: (g: Generator) => Sign): Sign {
   if (g.name === 'abs') return signOfRatio(g.args![0], signOf) === 'zero' ? 'zero' : 'nonnegative';
   if (g.name === 'nominal') return signOfRatio(g.args![0], signOf);
   return 'unknown';
+}
+
+/** Whether a symbol stands in a formula, `nominal(…)` counting as a symbol of its own. */
+function standsIn(symbolOf: Generator, ratio: Ratio): boolean {
+  return generatorsOfRatio(ratio).some(
+    (g) =>
+      g === symbolOf ||
+      (g.name !== 'nominal' && (g.args ?? []).some((arg) => standsIn(symbolOf, arg))),
+  );
 }
 
 function dependsOnS(g: Generator): boolean {

@@ -5,14 +5,17 @@ import {
   powRatio,
   ratioFromRational,
   ratioOf,
+  type Ratio,
 } from '../algebra/index.ts';
 import type { Span } from '../base/index.ts';
 import {
   allOf,
   compare,
+  derivativeFromStart,
   type Comparison,
   type Condition,
   type MatrixValue,
+  type SignalTerm,
   type SignalValue,
   type Value,
 } from '../control/index.ts';
@@ -35,12 +38,13 @@ import {
   negateValue,
   powValues,
 } from './arithmetic.ts';
+import { atLaplacePoint, valueAt } from './at-point.ts';
 import { callFunction } from './calls.ts';
 import type { Meanings } from './meanings.ts';
 import { quantityRatio } from './quantities.ts';
 import { replacementsOf } from './replacements.ts';
 import type { Scope } from './scope.ts';
-import { demand, stopAt, waitFor } from './stop.ts';
+import { stopAt, waitFor } from './stop.ts';
 import { signalPath, transferOf } from './signals.ts';
 
 /** The value of a formula in a scope; stops with a problem at its place where it has none. */
@@ -52,7 +56,7 @@ export function evaluate(expression: Expression, scope: Scope, meanings: Meaning
     case 'quantity':
       return formulaValue(quantityRatio(expression, meanings));
     case 'name':
-      return meanings.valueOf(expression.name, expression.span, scope);
+      return meanings.valueOf(expression.name, expression.wordSpan ?? expression.span, scope);
     case 'member':
       return memberValue(expression, scope, meanings);
     case 'derivative':
@@ -157,14 +161,18 @@ function derivativeValue(derivative: Derivative, of: Value): Value {
   return differentiateSignal(of, derivative.order);
 }
 
-/** x^(n) has the transform sⁿ X(s), all signals being zero before t = 0 but for stated initial values. */
+/** x^(n) has the transform sⁿ X(s), all signals being zero before t = 0 but for what initial values set in motion. */
 function differentiateSignal(signal: SignalValue, order: number): SignalValue {
-  const factor = powRatio(ratioOf(laplace), order);
   const terms = signal.terms.map((term) => ({
     ...term,
-    transform: mulRatios(term.transform, factor),
+    transform: differentiated(term, order),
   }));
   return { ...signal, name: signal.name + "'".repeat(order), terms };
+}
+
+function differentiated({ source, transform }: SignalTerm, order: number): Ratio {
+  if (source !== 'initial') return mulRatios(transform, powRatio(ratioOf(laplace), order));
+  return Array.from({ length: order }).reduce<Ratio>(derivativeFromStart, transform);
 }
 
 function callValue(call: Call, scope: Scope, meanings: Meanings): Value {
@@ -207,19 +215,10 @@ function evaluateAt(
 ): Value {
   const value = meanings.valueOf(name, nameSpan, scope);
   if (at.kind === 'name' && at.name === 's') return value;
-  if (value.kind === 'none') return value;
-  if (value.kind !== 'formula')
-    stopAt(nameSpan, 'not-a-formula', `${kindInWords(value)} cannot be evaluated at a point.`);
   const place = evaluate(at, scope, meanings);
   if (place.kind !== 'formula')
     stopAt(at.span, 'not-a-point', `A point of s is a number, not ${kindInWords(place)}.`);
-  return formulaValue(
-    demand(meanings.substitute(value.ratio, new Map([[laplace, place.ratio]])), at.span),
-    {
-      when: value.when,
-      notes: value.notes,
-    },
-  );
+  return atLaplacePoint(value, place.ratio, { kind: 'name', name, span: nameSpan }, meanings);
 }
 
 /** `a < b <= c` is (a < b) and (b <= c). */
@@ -280,6 +279,5 @@ function notValue(of: Value, span: Span): Value {
 function withValue(expression: With, scope: Scope, meanings: Meanings): Value {
   const { inside, point } = replacementsOf(expression, scope, meanings);
   const value = evaluate(expression.of, inside, meanings);
-  if (point.size === 0 || value.kind !== 'formula') return value;
-  return { ...value, ratio: demand(meanings.substitute(value.ratio, point), expression.span) };
+  return point.size === 0 ? value : valueAt(value, point, expression.of, inside, meanings);
 }

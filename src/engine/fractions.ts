@@ -27,7 +27,7 @@ export function evaluateFraction(
   const inner = (part: Expression) => evaluateFraction(part, scope, meanings);
   switch (expression.kind) {
     case 'name':
-      return meanings.fractionOf(expression.name, expression.span, scope);
+      return meanings.fractionOf(expression.name, expression.wordSpan ?? expression.span, scope);
     case 'evaluation':
       if (expression.at.kind === 'name' && expression.at.name === 's') {
         return meanings.fractionOf(expression.name, expression.nameSpan, scope);

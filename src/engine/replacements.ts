@@ -1,24 +1,25 @@
-import { laplace, type Generator, type Ratio } from '../algebra/index.ts';
+import type { Ratio } from '../algebra/index.ts';
 import type { Span } from '../base/index.ts';
 import type { Value } from '../control/index.ts';
 import type { Expression, With } from '../language/index.ts';
 import { kindInWords } from './arithmetic.ts';
+import type { Point } from './at-point.ts';
 import type { Meanings } from './meanings.ts';
 import { narrowScope, replacementKey, type ReplacementValue, type Scope } from './scope.ts';
 import { stopAt } from './stop.ts';
 
-/** The scope inside a `with`, and the values given to s in it. */
+/** The scope inside a `with`, and the values given to s and t in it. */
 export function replacementsOf(
   expression: With,
   scope: Scope,
   meanings: Meanings,
-): { inside: Scope; point: ReadonlyMap<Generator, Ratio> } {
+): { inside: Scope; point: Point } {
   const replacements = new Map<string, ReplacementValue>();
-  const point = new Map<Generator, Ratio>();
+  const point = new Map<'s' | 't', Ratio>();
   for (const replacement of expression.replacements) {
-    if (replacement.name === 's') {
+    if (replacement.name === 's' || replacement.name === 't') {
       point.set(
-        laplace,
+        replacement.name,
         parameterOf(meanings.evaluate(replacement.value, scope), replacement.value.span),
       );
       continue;

@@ -84,7 +84,7 @@ export function resultContent(
         ...value.notes,
         ...request.notes,
         ...display.notes,
-        ...vanishingNotes(request.subject, numbers, writing),
+        ...vanishingNotes(request.subject, numbers, derivations),
         ...nominal.notes,
       ]),
     ],

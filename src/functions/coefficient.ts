@@ -11,11 +11,12 @@ export const coefficient: WorksheetFunction = {
   parameters: [one('p', 'formula'), one('s', 'name'), one('k', 'parameter')],
   unit: 'unchecked',
   availability: 'now',
-  evaluate: ([p, variable, power]) => {
+  evaluate: ([p, variable, power], { openFor }) => {
     const k = integerOf(ratioOfArgument(power), 0, 'the power in coefficient');
     if (isRefusal(k)) return k;
     const { generator, name } = nameOf(variable);
-    return onFormula(p, (ratio) => {
+    return onFormula(p, (formula) => {
+      const ratio = openFor(formula, generator);
       if (ratio.den.generators.includes(generator)) {
         return refuse(
           'not-a-polynomial',

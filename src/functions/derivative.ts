@@ -10,6 +10,8 @@ export const derivative: WorksheetFunction = {
   parameters: [one('x', 'formula'), one('K', 'name')],
   unit: 'quotient',
   availability: 'now',
-  evaluate: ([x, by], { budget }) =>
-    onFormula(x, (ratio) => derivativeRatio(ratio, nameOf(by).generator, budget)),
+  evaluate: ([x, by], { budget, openFor }) => {
+    const { generator } = nameOf(by);
+    return onFormula(x, (ratio) => derivativeRatio(openFor(ratio, generator), generator, budget));
+  },
 };

@@ -18,7 +18,12 @@ function written(
     parameters: [one('x', 'formula'), ...more],
     unit: 'first',
     availability: 'now',
-    evaluate: (args) => onFormula(args[0], (ratio) => formulaAnswer(ratio, { form: form(args) })),
+    evaluate: (args, { openFor }) =>
+      onFormula(args[0], (ratio) => {
+        const asked = form(args);
+        const shown = asked.kind === 'collected' ? openFor(ratio, asked.by) : ratio;
+        return formulaAnswer(shown, { form: asked });
+      }),
   };
 }
 

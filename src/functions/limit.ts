@@ -12,11 +12,12 @@ export const limit: WorksheetFunction = {
   parameters: [one('x as s to 0', 'limit')],
   unit: 'first',
   availability: 'now',
-  evaluate: ([argument], { budget }) => {
+  evaluate: ([argument], { budget, openFor }) => {
     const { of, variable, to } = argument as Extract<Argument, { kind: 'limit' }>;
     if (of.kind !== 'formula')
       return of.kind === 'none' ? of : absentAnswer('only a formula has a limit');
-    const answer = limitRatio((of as FormulaValue).ratio, variable, to, budget);
+    const opened = openFor((of as FormulaValue).ratio, variable);
+    const answer = limitRatio(opened, variable, to, budget);
     if (!isRefusal(answer)) return formulaAnswer(answer, { when: of.when });
     return answer.code === 'infinite' || answer.code === 'undefined'
       ? absentAnswer(answer.reason)

@@ -1,3 +1,4 @@
+import type { Ratio } from '../algebra/index.ts';
 import { isRefusal } from '../base/index.ts';
 import { ALWAYS, matchCoefficients } from '../control/index.ts';
 import { formulaAnswer, nameOf, polynomialOf, ratioOfArgument } from './answer.ts';
@@ -17,10 +18,12 @@ export const match: WorksheetFunction = {
   ],
   unit: 'unchecked',
   availability: 'now',
-  evaluate: ([p, q, ...gains], { budget }) => {
-    const from = polynomialOf(ratioOfArgument(p), 'match');
+  evaluate: ([p, q, ...gains], { budget, openFor }) => {
+    const opened = (ratio: Ratio) =>
+      gains.reduce((whole, gain) => openFor(whole, nameOf(gain).generator), ratio);
+    const from = polynomialOf(opened(ratioOfArgument(p)), 'match');
     if (isRefusal(from)) return from;
-    const to = polynomialOf(ratioOfArgument(q), 'match');
+    const to = polynomialOf(opened(ratioOfArgument(q)), 'match');
     if (isRefusal(to)) return to;
     const matched = matchCoefficients(
       from,

@@ -11,7 +11,7 @@ export const response: WorksheetFunction = {
     'M. Abramowitz, I. A. Stegun (eds.), Handbook of Mathematical Functions, NBS AMS 55, 1964, section 29.3.',
   example: 'a is 2 1/s\nresponse(1/(s (s + a)))',
   parameters: [one('x', 'signal')],
-  unit: 'unchecked',
+  unit: 'signal',
   availability: 'now',
   evaluate: ([x], { signOf, budget, writing }) => {
     const signal = signalOf(x);
@@ -19,6 +19,7 @@ export const response: WorksheetFunction = {
     if (isRefusal(closed)) return closed;
     return {
       kind: 'text',
+      response: closed,
       text: responseText(closed, writing),
       latex: responseLatex(closed, writing),
       when: signal.when,

@@ -1,5 +1,6 @@
 import {
   ratioOf,
+  ratioFromPolynomial,
   ratioFromRational,
   generatorsOf,
   laplace,
@@ -38,7 +39,8 @@ export const solve: WorksheetFunction = {
     if (relation.kind === 'relation') return solveRelation(relation, generator, context);
     const value = (relation as Extract<Argument, { kind: 'value' }>).value;
     if (value.kind === 'condition' && value.condition.kind === 'stable') {
-      return solveStable(value.condition.blocks, generator, context);
+      const blocks = value.condition.blocks.map((block) => openedBlock(block, generator, context));
+      return solveStable(blocks, generator, context);
     }
     return refuse('not-a-relation', 'solve takes an equation, an inequality or stable(…)');
   },
@@ -55,7 +57,7 @@ function solveRelation(
   if (ratios.includes(null))
     return refuse('not-a-relation', 'both sides of the relation must be formulas');
   const when = allOf(relation.sides.map((side) => side.when));
-  const sides = ratios as Ratio[];
+  const sides = (ratios as Ratio[]).map((side) => context.openFor(side, unknown));
   if (relation.operators.length === 1 && relation.operators[0] === '=') {
     return solveEquation(sides[0], sides[1], unknown, when, context);
   }
@@ -91,6 +93,15 @@ function solveEquation(
     when,
     notes: [`There are ${solutions.length} solutions.`],
   };
+}
+
+/** The block with the gain in sight; a common denominator changes no root. */
+function openedBlock(
+  block: StabilityBlock,
+  gain: Generator,
+  { openFor }: FunctionContext,
+): StabilityBlock {
+  return { ...block, polynomial: openFor(ratioFromPolynomial(block.polynomial), gain).num };
 }
 
 /** With numbers for all else the exact intervals; in symbols the conditions, each solved for the gain where it is linear. */

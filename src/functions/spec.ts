@@ -135,6 +135,8 @@ export interface FunctionContext {
   readonly budget: Budget;
   /** The formula with every derived parameter opened down to assumptions. */
   readonly open: (ratio: Ratio) => Ratio;
+  /** The formula with only those derived parameters opened that a symbol stands behind. */
+  readonly openFor: (ratio: Ratio, behind: Generator) => Ratio;
   /** Gains that are tuned, in order of the worksheet: what conditions are solved for first. */
   readonly tuned: readonly Generator[];
   /** A condition as an engineer reads it. */

@@ -50,6 +50,8 @@ export interface Quantity {
 export interface Name {
   readonly kind: 'name';
   readonly span: Span;
+  /** Its word alone, where brackets around it belong to the span. */
+  readonly wordSpan?: Span;
   readonly name: string;
 }
 

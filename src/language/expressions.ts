@@ -11,6 +11,7 @@ import {
   refusePlusMinus,
   whyNoDerivative,
 } from './formula-refusals.ts';
+import { replacement } from './fixes.ts';
 import { nameOf, readName } from './name-reading.ts';
 import { canonicalName } from './names.ts';
 import {
@@ -62,7 +63,23 @@ function readIn(reader: LineReader, slot: boolean): Expression {
     const unit = readUnit(reader, '`in` needs a unit');
     of = { kind: 'in-unit', span: reader.spanFrom(of.span.from), of, ...unit };
   }
+  refuseWithAfterIn(reader, of);
   return of;
+}
+
+/** `with` binds tighter than `in`, so that it stands before it. */
+function refuseWithAfterIn(reader: LineReader, of: Expression): void {
+  const first = reader.peek();
+  if (of.kind !== 'in-unit' || !first || !reader.accept('with')) return;
+  readReplacements(reader);
+  const shown = { from: of.of.span.to, to: of.unitSpan.to };
+  const replaced = reader.spanFrom(first.from);
+  const { source } = reader;
+  const swapped = `${source.slice(shown.to, replaced.to)}${source.slice(shown.from, shown.to)}`;
+  const message = 'What a `with` replaces stands before the unit that `in` names.';
+  reader.refuse(first, 'with-after-in', message, [
+    replacement({ from: shown.from, to: replaced.to }, swapped, `write \`…${swapped}\``),
+  ]);
 }
 
 function readWith(reader: LineReader, slot: boolean): Expression {
@@ -272,7 +289,8 @@ function readBracket(reader: LineReader): Expression {
       'This bracket follows no function, so it holds one formula, not a list.',
     );
   closeBracket(reader, open);
-  return { ...e, span: reader.spanFrom(open.from) };
+  const span = reader.spanFrom(open.from);
+  return e.kind === 'name' ? { ...e, span, wordSpan: e.wordSpan ?? e.span } : { ...e, span };
 }
 
 function readNamed(reader: LineReader): Expression {

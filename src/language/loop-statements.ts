@@ -71,7 +71,20 @@ export function expectLineEnd(reader: LineReader): void {
 
 /** Says why a line does not go on with a token, and that an indented line continues the one above. */
 export function refuseLeftover(reader: LineReader, token: Token): void {
+  refuseDecimalComma(reader, token);
   reader.fail(token, 'unexpected', `${leftoverReason(token)}${continuationHint(reader, token)}.`);
+}
+
+/** `x = 1,5`: a number with a decimal comma. */
+function refuseDecimalComma(reader: LineReader, token: Token): void {
+  const at = reader.tokens.indexOf(token);
+  const [before, after] = [reader.tokens[at - 1], reader.tokens[at + 1]];
+  const isNumber = before?.kind === 'number' && after?.kind === 'number';
+  if (token.text !== ',' || !isNumber || token.spaced || after.spaced) return;
+  const span = { from: before.from, to: after.to };
+  const point = `${before.text}.${after.text}`;
+  const message = `\`${reader.text(span)}\` is not one number: the decimal sign is a point.`;
+  reader.fail(span, 'split-number', message, [replacement(span, point)]);
 }
 
 function leftoverReason({ text, kind }: Token): string {

@@ -86,8 +86,19 @@ function refuseSplitNumber(reader: LineReader): void {
   ]);
 }
 
+/** `3 in`: `in` is a word of the language and never the inch. */
+function refuseInch(reader: LineReader): void {
+  const token = reader.peek();
+  if (reader.previous.kind !== 'number' || !token || !reader.isAt('in')) return;
+  if (scanUnit(reader.tokens, reader.position + 1)) return;
+  reader.fail(token, 'unit-form', '`in` shows a value in a unit; the inch is written `inch`.', [
+    replacement(token, 'inch'),
+  ]);
+}
+
 /** `5 kg*m` and `5 /s` look like units, but are not written so. */
 function refuseUnitSlip(reader: LineReader): void {
+  refuseInch(reader);
   const [sign, symbol] = [reader.peek(), reader.peek(1)];
   const isUnit = symbol?.kind === 'name' && reader.context.isUnit(symbol.text);
   if (!sign || !isUnit) return;
