@@ -1,7 +1,8 @@
 import { dependsOn, laplace } from '../algebra/index.ts';
-import { truth, type Value } from '../control/index.ts';
+import { compileConditions, truth, type Condition, type Value } from '../control/index.ts';
 import { nameToText } from '../language/index.ts';
 import { conditionText, valueText, type Writing } from '../present/index.ts';
+import type { Derivations } from './derivations.ts';
 import type { Compiled, Numbers, Points, Subject } from './numbers.ts';
 import { BASE_SCOPE } from './scope.ts';
 
@@ -14,16 +15,16 @@ const NOMINAL: Points = { count: 1, columns: new Map() };
 export function vanishingNotes(
   subject: Subject,
   numbers: Numbers,
-  writing: Writing,
+  derivations: Derivations,
 ): readonly string[] {
   const zeros = numbers.zeros(subject);
   if (zeros.length === 0) return [];
   const [shown, anew] = [BASE_SCOPE, numbers.zeroScope(zeros)].map((scope) =>
     numbers.compiled(subject, scope),
   );
-  if (!shown || !anew || !isAnother(shown, anew, numbers)) return [];
+  if (!shown || !anew || !isAnother(shown, anew, numbers, derivations)) return [];
   const names = zeros.map((name) => `${nameToText(name)} = 0`).join(' and ');
-  return [`With ${names} derived anew: ${inWords(anew.value, writing)}.`];
+  return [`With ${names} derived anew: ${inWords(anew.value, derivations.writing())}.`];
 }
 
 function inWords(value: Value, writing: Writing): string {
@@ -35,16 +36,32 @@ function inWords(value: Value, writing: Writing): string {
 }
 
 /** Whether two derivations of one subject say different things at the nominal values. */
-function isAnother(shown: Compiled, anew: Compiled, numbers: Numbers): boolean {
+function isAnother(
+  shown: Compiled,
+  anew: Compiled,
+  numbers: Numbers,
+  derivations: Derivations,
+): boolean {
   const [a, b] = [shown.value, anew.value];
   if (a.kind !== b.kind) return true;
   if (a.kind === 'array' && b.kind === 'array') return a.routh.rows.length !== b.routh.rows.length;
+  if (a.kind === 'text' && b.kind === 'text') return a.text !== b.text;
   if (a.kind === 'formula' && dependsOn(a.ratio, laplace)) return false;
   if (a.kind !== 'formula' && a.kind !== 'condition') return false;
-  const [before, after] = [shown, anew].map((compiled) => numbers.evaluate(compiled, NOMINAL));
-  return (
-    before.exists[0] !== after.exists[0] ||
-    before.verdicts[0] !== after.verdicts[0] ||
-    (a.kind === 'formula' && before.columns[0][0] !== after.columns[0][0])
-  );
+  const after = numbers.evaluate(anew, NOMINAL);
+  if (verdictAsWritten(a.when, numbers, derivations) !== after.exists[0]) return true;
+  if (a.kind === 'condition')
+    return verdictAsWritten(a.condition, numbers, derivations) !== after.verdicts[0];
+  return numbers.evaluate(shown, NOMINAL).columns[0][0] !== after.columns[0][0];
+}
+
+/** The verdict of a condition as it is written: stability in inequalities, which a falling degree escapes. */
+function verdictAsWritten(
+  condition: Condition,
+  numbers: Numbers,
+  derivations: Derivations,
+): number {
+  const written = derivations.expandStability(condition);
+  const compiled = compileConditions([written], numbers.resolve);
+  return compiled.evaluate(numbers.inputs(compiled.inputs, NOMINAL), 1)[0][0];
 }

@@ -61,6 +61,43 @@ describe('a gain that is exactly 0', () => {
   });
 });
 
+describe('a characteristic polynomial whose degree drops', () => {
+  const mass = (m: string, statements: string) => `
+m is ${m}
+c is 2 N s/m
+k is 3 N/m
+F is 6 N
+c, k are positive
+loop a driven by w
+  m x'' + c x' + k x = w
+case q of a
+  w = step(F)
+${statements}`;
+
+  test('is judged by its lower degree, and the condition that does not apply is taken back', () => {
+    const cell = evaluateCell(
+      mass('0 kg', 'stable(a)\nfinal(q.x)\nrequire stable(a) # R-1\nresponse(q.x)'),
+    );
+    const stable = cell.result('stable(a)');
+    expect(stable).toMatchObject({ formula: 'm > 0', value: true });
+    expect(stable.notes).toContain('With m = 0 derived anew: it always holds.');
+    expect(cell.requirement('R-1').verdict).toBe('met');
+    expect(cell.result('final(q.x)').value).toBe(2);
+    expect(cell.result('final(q.x)').notes).toContain('With m = 0 derived anew: F/k.');
+    expect(cell.result('response').notes).toContain(
+      'With m = 0 derived anew: F/k - F exp(-k t/c)/k.',
+    );
+  });
+
+  test('at an end of a range is judged there too', () => {
+    const cell = evaluateCell(
+      mass('1 kg from 0 to 2 kg', 'require stable(a) # R-1\nrequire final(q.x) <= 2.1 [m] # R-2'),
+    );
+    expect(cell.requirement('R-1')).toMatchObject({ verdict: 'met', how: 'corners' });
+    expect(cell.requirement('R-2')).toMatchObject({ verdict: 'met', worst: 2 });
+  });
+});
+
 describe('a condition of existence', () => {
   test('travels through functions of the value', () => {
     const cell = evaluateCell(`
