@@ -13,7 +13,7 @@ import { compileRatios, type SignalValue, type Value } from '../control/index.ts
 import type { Curve, Point, ResponseFigure } from '../figures/index.ts';
 import { formatExpression, type DrawStatement, type Expression } from '../language/index.ts';
 import { timeResponse } from '../numeric/index.ts';
-import { unitText, valueIn, type Unit } from '../units/index.ts';
+import { parseUnit, unitText, valueIn, type Unit } from '../units/index.ts';
 import { displayOf, unitFor, type Display } from './display.ts';
 import { parameterOf } from './replacements.ts';
 import { failureOf } from './failures.ts';
@@ -46,15 +46,16 @@ export function responseContent(node: DrawStatement, sources: FigureSources): Fi
     );
   }
   const duration = durationOf(node, sources);
+  const time = timeAxis(node, duration, sources);
   const subjects = node.of.map((signal) => sources.subjectOf(signal));
   const drawn = node.of.map((expression, index) =>
-    drawCurve(expression, derivedValue(subjects[index]), duration, sources),
+    drawCurve(expression, derivedValue(subjects[index]), duration, time.to, sources),
   );
   const notes = [...new Set(drawn.flatMap((one) => one.notes))];
   const figure: ResponseFigure = {
     kind: 'response',
     title: node.title,
-    x: { name: 't', label: 'time t, s', unit: 's', from: 0, to: duration },
+    x: time,
     curves: drawn.map((one) => one.curve),
     diverges: drawn.map((one) => one.diverges).find((words) => words !== null) ?? null,
     notes,
@@ -79,6 +80,19 @@ function durationOf(node: DrawStatement, { derivations, numbers }: FigureSources
   return duration;
 }
 
+/** The axis of time, in the unit that the duration is typed in: `over 6 h` is read in hours. */
+function timeAxis(
+  { over }: DrawStatement,
+  duration: number,
+  { derivations }: FigureSources,
+): ResponseFigure['x'] {
+  const typed = over?.kind === 'quantity' && over.unit !== '' ? over.unit : 's';
+  const unit = parseUnit(typed, derivations.customUnits());
+  if (isRefusal(unit)) return { name: 't', label: 'time t, s', unit: 's', from: 0, to: duration };
+  const text = unitText(unit);
+  return { name: 't', label: `time t, ${text}`, unit: text, from: 0, to: valueIn(duration, unit) };
+}
+
 interface DrawnCurve {
   readonly curve: Curve;
   readonly diverges: string | null;
@@ -89,6 +103,7 @@ function drawCurve(
   expression: Expression,
   value: Value,
   duration: number,
+  axisEnd: number,
   sources: FigureSources,
 ): DrawnCurve {
   const signal = signalIn(expression, value);
@@ -111,7 +126,7 @@ function drawCurve(
       ? null
       : failureOf({ kind: 'stable', blocks: signal.blocks }, numbers, derivations.writing());
   return {
-    curve: curveIn(expression, label, responses, duration, names.length > 0, sources),
+    curve: curveIn(expression, label, responses, axisEnd, names.length > 0, sources),
     diverges:
       failure && isGrowing(responses[0]) ? `${label} grows without bound: ${failure}` : null,
     notes: [
@@ -144,7 +159,6 @@ function signalIn(expression: Expression, value: Value): SignalValue {
       terms: [term],
       inputs: [],
       blocks: [],
-      hasDelay: false,
       when,
       notes,
     };
@@ -277,7 +291,7 @@ function curveIn(
   expression: Expression,
   label: string,
   responses: readonly Float64Array[],
-  duration: number,
+  axisEnd: number,
   hasBand: boolean,
   { dimensions, derivations, hints }: FigureSources,
 ): Curve {
@@ -290,7 +304,7 @@ function curveIn(
   const unit = unitOfCurve(responses[0].slice(0, last + 1), display, hints);
   const show = (si: number) => (unit ? valueIn(si * display.factor, unit) : si);
   const points = Array.from(responses[0].slice(0, last + 1), (value, i): Point => [
-    (i * duration) / CURVE_POINTS,
+    (i * axisEnd) / CURVE_POINTS,
     show(value),
   ]);
   const text = unit ? unitText(unit) : '';
