@@ -6,7 +6,10 @@ import {
   isZeroRatio,
   leadingCoefficientIn,
   laplace,
+  mulRatios,
   ratioFromPolynomial,
+  ratioOf,
+  subRatios,
   zeroPolynomial,
   zeroRatio,
 } from '../algebra/index.ts';
@@ -34,6 +37,16 @@ function limitAtInfinity(transform: Ratio): Ratio | 'impulse' {
     ratioFromPolynomial(leadingCoefficientIn(numerator, laplace)),
     ratioFromPolynomial(leadingCoefficientIn(denominator, laplace)),
   );
+}
+
+/**
+ * The transform of x' for t > 0, of a signal that does not start at rest: s X(s) − x(0+). Its jump from nothing at
+ * t = 0 is no part of the motion, so that it leaves no impulse.
+ */
+export function derivativeFromStart(transform: Ratio): Ratio {
+  const start = limitAtInfinity(transform);
+  const raised = mulRatios(ratioOf(laplace), transform);
+  return start === 'impulse' ? raised : subRatios(raised, start);
 }
 
 /**

@@ -123,8 +123,6 @@ export interface SignalValue extends ValueBase {
   readonly inputs: readonly string[];
   /** The blocks of the loop that the signal depends on, uncancelled; empty for a formula taken as a transform. */
   readonly blocks: readonly StabilityBlock[];
-  /** The loop has a dead time: its blocks' polynomials contain a delay and cannot be judged as polynomials. */
-  readonly hasDelay: boolean;
 }
 
 /** A block of a loop: signals that feed each other, with its characteristic polynomial in s, uncancelled. */

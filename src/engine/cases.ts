@@ -1,5 +1,6 @@
 import {
   addRatios,
+  asRational,
   isZeroRatio,
   laplace,
   mulRatios,
@@ -14,9 +15,11 @@ import {
 } from '../algebra/index.ts';
 import type { Budget } from '../base/index.ts';
 import {
-  ALWAYS,
+  allOf,
   closeLoop,
   transferFunction,
+  type Condition,
+  type FormulaValue,
   type LoopRow,
   type SignalTerm,
   type SignalValue,
@@ -30,7 +33,7 @@ import {
   type Expression,
   type SourceTerm,
 } from '../language/index.ts';
-import { kindInWords } from './arithmetic.ts';
+import { formulaValue } from './arithmetic.ts';
 import { initialValueName } from './equations.ts';
 import { parameterOf } from './replacements.ts';
 
@@ -49,6 +52,7 @@ export interface CaseRecord {
     readonly input: string;
     readonly signal: string;
     readonly value: Ratio;
+    readonly when: Condition;
   }[];
 }
 
@@ -58,6 +62,8 @@ interface ActingSource {
   /** Transform of the input's share. */
   readonly transform: Ratio;
   readonly after: Ratio;
+  /** What must hold for its size to have a value. */
+  readonly when: Condition;
 }
 
 /** Reads a load case; stops at unknown inputs, unknown sources and sources that are not available yet. */
@@ -91,19 +97,39 @@ function readSource(
   if (call.args.length !== 1) {
     stopAt(call.span, 'argument-count', `${call.callee} takes one argument: ${source.summary}`);
   }
-  const size = parameterOf(meanings.evaluate(call.args[0], scope), call.args[0].span);
-  if (dependsOn(size, laplace))
-    stopAt(call.args[0].span, 'not-a-parameter', 'The size of a source does not depend on s.');
-  const scale = factor ? parameterOf(meanings.evaluate(factor, scope), factor.span) : oneRatio;
-  const amount = mulRatios(term.sign < 0 ? negRatio(scale) : scale, size);
+  const amounts = (factor ? [factor, call.args[0]] : [call.args[0]]).map((part) =>
+    amountOf(part, 'The size of a source', scope, meanings),
+  );
+  const after = term.after
+    ? amountOf(term.after, 'The time after `after`', scope, meanings)
+    : formulaValue(zeroRatio);
+  if (term.after && (asRational(after.ratio)?.n ?? 0n) < 0n)
+    stopAt(term.after.span, 'negative-time', 'A source begins at t = 0 at the earliest.');
+  const size = amounts.map(({ ratio }) => ratio).reduce(mulRatios);
   return {
     input,
     kind: source.kindAfterIntegrations(order),
-    transform: divRatios(amount, powRatio(ratioOf(laplace), source.power + order)),
-    after: term.after
-      ? parameterOf(meanings.evaluate(term.after, scope), term.after.span)
-      : zeroRatio,
+    transform: divRatios(
+      term.sign < 0 ? negRatio(size) : size,
+      powRatio(ratioOf(laplace), source.power + order),
+    ),
+    after: after.ratio,
+    when: allOf([...amounts, after].map(({ when }) => when)),
   };
+}
+
+/** The value of a parameter in a line of a case. */
+function amountOf(
+  expression: Expression,
+  what: string,
+  scope: Scope,
+  meanings: Meanings,
+): FormulaValue {
+  const value = meanings.evaluate(expression, scope);
+  const ratio = parameterOf(value, expression.span);
+  if (dependsOn(ratio, laplace))
+    stopAt(expression.span, 'not-a-parameter', `${what} does not depend on s.`);
+  return value as FormulaValue;
 }
 
 /** `2 step(A)` is a factor and the call. */
@@ -177,15 +203,8 @@ function readStarts(
           `differentiates it ${start.order + 1 === 1 ? '' : `${start.order + 1} times `}with \`'\`.`,
       );
     }
-    const value = meanings.evaluate(start.value, scope);
-    if (value.kind !== 'formula') {
-      stopAt(
-        start.value.span,
-        'not-a-parameter',
-        `An initial value is a parameter, not ${kindInWords(value)}.`,
-      );
-    }
-    return { input, signal, value: value.ratio };
+    const { ratio, when } = amountOf(start.value, 'An initial value', scope, meanings);
+    return { input, signal, value: ratio, when };
   });
 }
 
@@ -205,7 +224,7 @@ export function signalIn(
   const initial = record.starts.map((start): SignalTerm => {
     const transfer = initialTransfer(loop, start.input, signal, budget, demandAt);
     const transform = mulRatios(transfer, start.value);
-    return { input: start.input, source: 'impulsive', transform, after: zeroRatio };
+    return { input: start.input, source: 'initial', transform, after: zeroRatio };
   });
   return {
     kind: 'signal',
@@ -213,8 +232,7 @@ export function signalIn(
     terms: [...terms, ...initial].filter((term) => !isZeroRatio(term.transform)),
     inputs: loop.inputs,
     blocks: loop.blocks(signal),
-    hasDelay: loop.hasDelay,
-    when: ALWAYS,
+    when: allOf([loop.when, ...[...record.acting, ...record.starts].map(({ when }) => when)]),
     notes: [],
   };
 }
