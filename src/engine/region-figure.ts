@@ -1,6 +1,7 @@
 import {
   compileConditions,
   expandStable,
+  NO,
   YES,
   type Condition,
   type Value,
@@ -224,15 +225,17 @@ function regionCondition(
   const marginAt =
     (at: ReadonlyMap<string, number>): BatchMargin =>
     (xs, ys) => {
-      const own = new Map<string, Float64Array>([
-        [x.name, xs.map((value) => value * x.unit.number)],
-        [y.name, ys.map((value) => value * y.unit.number)],
+      const own = new Map([
+        [x.name, inSI(xs, x.unit)],
+        [y.name, inSI(ys, y.unit)],
       ]);
       const inputs = compiled.inputs.map(
         (name) => own.get(name) ?? at.get(name) ?? numbers.nominal(plainName(name)) ?? NaN,
       );
+      const [verdicts] = compiled.evaluate(inputs, xs.length);
       // What cannot be told counts as not holding.
-      return compiled.evaluate(inputs, xs.length)[0].map((verdict) => (verdict === YES ? 1 : 0));
+      for (let i = 0; i < verdicts.length; i++) if (verdicts[i] !== YES) verdicts[i] = NO;
+      return verdicts;
     };
   return {
     label: part.text,
@@ -240,6 +243,12 @@ function regionCondition(
     nominal: marginAt(new Map()),
     tolerance: cornersOf(compiled.inputs, x, y, numbers).map(marginAt),
   };
+}
+
+function inSI(values: Float64Array, unit: Unit): Float64Array {
+  const si = new Float64Array(values.length);
+  for (let i = 0; i < si.length; i++) si[i] = values[i] * unit.number;
+  return si;
 }
 
 /** Corners of the tolerances of all but the two gains; of many corners a fixed selection. */

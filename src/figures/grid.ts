@@ -61,14 +61,25 @@ function repeatedRow(grid: Grid, rows: number): Float64Array {
 
 /** Of the samples marked in `candidates`, those where a condition holds; only these are evaluated. */
 export function holdsAmong(grid: Grid, margin: BatchMargin, candidates: Uint8Array): Uint8Array {
-  const places: number[] = [];
-  candidates.forEach((marked, i) => marked && places.push(i));
-  const xs = Float64Array.from(places, (i) => alongSide(grid.x, (i % grid.x.n) + 0.5));
-  const ys = Float64Array.from(places, (i) => alongSide(grid.y, Math.floor(i / grid.x.n) + 0.5));
+  const places = markedPlaces(candidates);
+  const [xs, ys] = [new Float64Array(places.length), new Float64Array(places.length)];
+  const columns = grid.x.n;
+  for (let i = 0; i < places.length; i++) {
+    const row = Math.floor(places[i] / columns);
+    xs[i] = alongSide(grid.x, places[i] - row * columns + 0.5);
+    ys[i] = alongSide(grid.y, row + 0.5);
+  }
   const verdicts = holdsAt(margin, xs, ys);
   const holds = new Uint8Array(candidates.length);
-  places.forEach((place, i) => (holds[place] = verdicts[i]));
+  for (let i = 0; i < places.length; i++) holds[places[i]] = verdicts[i];
   return holds;
+}
+
+function markedPlaces(candidates: Uint8Array): Int32Array {
+  const places = new Int32Array(candidates.length);
+  let count = 0;
+  for (let i = 0; i < candidates.length; i++) if (candidates[i] === 1) places[count++] = i;
+  return places.subarray(0, count);
 }
 
 /** Whether a condition holds at each of some points: 1 or 0. */

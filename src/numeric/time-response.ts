@@ -1,7 +1,6 @@
 import { refuse } from '../base/index.ts';
 import type { Refusal } from '../base/index.ts';
 import type { Matrix } from './matrix.ts';
-import { multiplyMatrices } from './matrix.ts';
 import { matrixExponential } from './matrix-exponential.ts';
 
 /** An input of a linear system, from t = 0 on: impulse size·δ(t), step, ramp size·t, parabola size·t²/2, sine size·sin(ωt). */
@@ -104,15 +103,24 @@ function balancingUnit(denominator: readonly number[]): number {
   return 2 ** Math.round(ratio / last);
 }
 
-/** row · step^k · (1, 0, …, 0)ᵀ for k = 0 … count − 1. */
+/** row · step^k · (1, 0, …, 0)ᵀ for k = 0 … count − 1, in two vectors that take turns. */
 function march(step: Matrix, row: Float64Array, count: number): Float64Array {
   const size = step.rows;
-  let state: Matrix = { rows: size, columns: 1, data: new Float64Array(size) };
-  state.data[0] = 1;
+  const { data } = step;
+  let state = new Float64Array(size);
+  let next = new Float64Array(size);
+  state[0] = 1;
   const samples = new Float64Array(count);
   for (let k = 0; k < count; k++) {
-    samples[k] = row.reduce((sum, c, i) => sum + c * state.data[i]!, 0);
-    state = multiplyMatrices(step, state);
+    let sample = 0;
+    for (let i = 0; i < size; i++) sample += row[i]! * state[i]!;
+    samples[k] = sample;
+    for (let i = 0; i < size; i++) {
+      let sum = 0;
+      for (let j = 0; j < size; j++) sum += data[i * size + j]! * state[j]!;
+      next[i] = sum;
+    }
+    [state, next] = [next, state];
   }
   return samples;
 }
