@@ -12,7 +12,7 @@ import {
   type CustomUnits,
   type Unit,
 } from '../units/index.ts';
-import { angleOf, cyclesOf, dimensionIn, isRate, type Measure } from './measures.ts';
+import { cyclesOf, dimensionIn, isRate, shownAngle, type Measure } from './measures.ts';
 
 /** How the value of an expression is shown: the unit, and the factor from its own SI value to the shown quantity's. */
 export interface Display {
@@ -47,7 +47,7 @@ export function unitFor(display: Display, si: number, hints: readonly Unit[]): U
   const { measure } = display;
   if (!measure) return null;
   return chooseUnit(dimensionIn(measure), hints, si, {
-    angle: angleOf(measure),
+    angle: shownAngle(measure),
     cycles: cyclesOf(measure),
   });
 }
@@ -56,7 +56,7 @@ export function unitFor(display: Display, si: number, hints: readonly Unit[]): U
 export function coherentText(measure: Measure | null): string | null {
   if (!measure) return null;
   const unit = coherentUnit(dimensionIn(measure), {
-    angle: angleOf(measure),
+    angle: shownAngle(measure),
     cycles: cyclesOf(measure),
   });
   return unitText(unit) || null;

@@ -146,6 +146,16 @@ export function angleOf(a: Measure): number {
   return a.exponents[ANGLE];
 }
 
+/**
+ * The power of rad that is worth showing: rad and per rad, in the units of the trade (N m/rad, rad/s²). Higher powers
+ * and roots, which formulas such as J ω² and c/√(k J) bring about, are left out, and a pure number is not per rad.
+ */
+export function shownAngle(a: Measure): number {
+  const angle = angleOf(a);
+  const isPure = a.exponents.slice(0, BASES).every((exponent) => exponent === 0);
+  return angle === 1 || (angle === -1 && !isPure) ? angle : 0;
+}
+
 export function cyclesOf(a: Measure): number {
   return a.exponents[CYCLE];
 }
@@ -153,6 +163,11 @@ export function cyclesOf(a: Measure): number {
 /** The dimension, where nothing is left to infer. */
 export function dimensionIn(a: Measure): Dimension {
   return { exponents: a.exponents.slice(0, BASES) };
+}
+
+/** Whether it has neither a dimension nor an angle, and nothing is left to infer. */
+export function isPure(a: Measure): boolean {
+  return a.unknowns.size === 0 && a.exponents.every((own, index) => own === 0 || index === CYCLE);
 }
 
 /** Whether it is a frequency or a rate: 1/s. */

@@ -47,3 +47,23 @@ x = final(a.th) side`);
     'Kp is computed from names with a tolerance and moves with them; a gain that is computed once is written with `nominal(…)`.',
   ]);
 });
+
+it.each([
+  ['J w^2', 'N m', '166.6 N m'],
+  ['d/(2 sqrt(k J))', null, '0.1'],
+  ['sqrt(k/J)', '1/s', null],
+  ['k phi', 'N m', null],
+  ['w t1', 'rad', '28 rad'],
+  ['phi/t1^2', 'rad/s²', null],
+])('%s is shown without odd powers of rad', (formula, unit, shown) => {
+  const { result } = evaluateCell(`
+J is 0.85 kg m^2
+w is 14 rad/s
+k is 85 N m/rad
+phi is 0.3 rad
+t1 is 2 s
+d is ${2 * 0.1 * Math.sqrt(85 * 0.85)} N m s/rad
+x = ${formula}`);
+  expect(result('x').unit).toBe(unit);
+  if (shown !== null) expect(result('x').shown).toBe(shown);
+});
