@@ -91,7 +91,6 @@ function addSignals(a: SignalValue, b: SignalValue): SignalValue {
     name: `${a.name} + ${b.name}`,
     terms: [...a.terms, ...b.terms],
     blocks,
-    hasDelay: a.hasDelay || b.hasDelay,
   };
 }
 

@@ -9,7 +9,7 @@ import {
   type Ratio,
 } from '../algebra/index.ts';
 import { isRefusal } from '../base/index.ts';
-import { ALWAYS, allOf, type SignalValue, type Value } from '../control/index.ts';
+import { allOf, type SignalValue, type Value } from '../control/index.ts';
 import {
   sourceNamed,
   type Argument,
@@ -46,7 +46,8 @@ export function callFunction(call: Call, scope: Scope, meanings: Meanings): Valu
 function withInherited(value: Value, args: readonly Argument[]): Value {
   const inner = args.flatMap(valuesIn);
   const notes = [...new Set([...inner.flatMap((arg) => arg.notes), ...value.notes])];
-  return { ...value, when: allOf([...inner.map((arg) => arg.when), value.when]), notes };
+  const loops = args.flatMap((arg) => (arg.kind === 'loop' ? [arg.loop] : []));
+  return { ...value, when: allOf([...loops, ...inner, value].map(({ when }) => when)), notes };
 }
 
 function valuesIn(arg: Argument): readonly Value[] {
@@ -283,10 +284,12 @@ function rowsArgument(arg: Expression, scope: Scope, meanings: Meanings): Argume
       `The rows have ${[...widths].join(' and ')} entries; all rows need the same number.`,
     );
   }
-  const ratios = rows.map((row) =>
-    row.map((entry): Ratio => parameterOf(meanings.evaluate(entry, scope), entry.span)),
+  const values = rows.map((row) => row.map((entry) => meanings.evaluate(entry, scope)));
+  const ratios = values.map((row, i) =>
+    row.map((value, k): Ratio => parameterOf(value, rows[i][k].span)),
   );
-  return { kind: 'value', value: { kind: 'matrix', rows: ratios, when: ALWAYS, notes: [] } };
+  const when = allOf(values.flat().map((value) => value.when));
+  return { kind: 'value', value: { kind: 'matrix', rows: ratios, when, notes: [] } };
 }
 
 function signalArgument(
@@ -329,7 +332,6 @@ function signalOfTransform(transform: Ratio, text: string, from: Value): SignalV
     terms: [{ input: '', source: 'constant', transform, after: zeroRatio }],
     inputs: [],
     blocks: [],
-    hasDelay: false,
     when: from.when,
     notes: [...from.notes, ...note],
   };

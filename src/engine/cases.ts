@@ -105,7 +105,7 @@ function readSource(
     : formulaValue(zeroRatio);
   if (term.after && (asRational(after.ratio)?.n ?? 0n) < 0n)
     stopAt(term.after.span, 'negative-time', 'A source begins at t = 0 at the earliest.');
-  const size = amounts.map(({ ratio }) => ratio).reduce(mulRatios);
+  const size = amounts.map(({ ratio }) => ratio).reduce((a, b) => mulRatios(a, b));
   return {
     input,
     kind: source.kindAfterIntegrations(order),

@@ -35,7 +35,7 @@ import {
   type LoopStatement,
   type Statement,
 } from '../language/index.ts';
-import { conditionText, formulaText, type Writing } from '../present/index.ts';
+import { conditionText, formulaText, valueText, type Writing } from '../present/index.ts';
 import type { CustomUnits, Unit } from '../units/index.ts';
 import { formulaValue } from './arithmetic.ts';
 import { readCase, signalIn, type CaseRecord } from './cases.ts';
@@ -231,10 +231,11 @@ export class Derivations implements Meanings {
     if (replaced?.fraction) return replaced.fraction;
     const value = this.valueOf(name, span, scope);
     if (value.kind !== 'formula') {
+      const why = value.kind === 'none' ? `: ${valueText(value, this.writing())}` : '.';
       stopAt(
         span,
         'not-a-coefficient',
-        `${name} is not a formula, so it cannot be a coefficient of a loop.`,
+        `${name} ${value.kind === 'none' ? 'has no value' : 'is not a formula'}, so it cannot be a coefficient of a loop${why}`,
       );
     }
     if (this.kindOf(name) !== 'definition' || replaced) return fractionOfRatio(value.ratio);

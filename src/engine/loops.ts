@@ -1,9 +1,10 @@
-import { dependsOnLaplace, generatorsOf, laplace, type Fraction } from '../algebra/index.ts';
 import type { Budget, Span } from '../base/index.ts';
 import {
+  allOf,
   blocksOf,
   closeLoop,
   type ClosedLoop,
+  type Condition,
   type LoopRow,
   type StabilityBlock,
 } from '../control/index.ts';
@@ -16,6 +17,7 @@ import {
   signalNamed,
   type SignalNames,
 } from './equations.ts';
+import { existenceOf } from './existence.ts';
 import type { LoopRecord, Meanings } from './meanings.ts';
 import { pathsIn } from './paths.ts';
 import type { Scope } from './scope.ts';
@@ -60,7 +62,7 @@ export function readLoop(
     unknowns,
     initialRows: forms.map((form) => form.initials),
     definedBy: definedBy(equations, inputs, unknowns),
-    hasDelay: rows.some((row) => [...row.coefficients.values()].some(hasDelay)),
+    when: existenceOfCoefficients(equations, [...inputs, ...unknowns], scope, meanings),
     blocks: (signal) => judgedBlocks(closed, inputs, signal),
   };
 }
@@ -74,9 +76,19 @@ function judgedBlocks(
   return inputs.includes(signal) ? [] : blocksOf(closed, signal);
 }
 
-function hasDelay(fraction: Fraction): boolean {
-  return [...generatorsOf(fraction.num), ...generatorsOf(fraction.den)].some(
-    (g) => g !== laplace && dependsOnLaplace(g),
+function existenceOfCoefficients(
+  equations: readonly Equation[],
+  signals: readonly string[],
+  scope: Scope,
+  meanings: Meanings,
+): Condition {
+  const known = new Set(signals);
+  return allOf(
+    equations.flatMap(({ statement, index, prefix }) => {
+      const { left, right } = statement.equations[index];
+      const isSignal = (name: string) => known.has(prefix + name);
+      return [left, right].map((side) => existenceOf(side, scope, meanings, isSignal));
+    }),
   );
 }
 

@@ -89,14 +89,16 @@ export function transferOf(
   const signal = requireSignal(loop, to, 'any');
   const order = namedSignal(to).order - namedSignal(from).order;
   const factor = powRatio(ratioOf(laplace), order);
+  const { when } = loop;
   if (loop.inputs.includes(signal)) {
-    return formulaValue(input === signal ? factor : zeroRatio, { origin: 'transfer' });
+    return formulaValue(input === signal ? factor : zeroRatio, { origin: 'transfer', when });
   }
   const transfer = demand(transferFunction(loop.closed, input, signal), to.span);
   const note = hiddenNote(transfer.hidden, write);
   return formulaValue(mulRatios(transfer.ratio, factor), {
     hidden: transfer.hidden,
     origin: 'transfer',
+    when,
     notes: note ? [note] : [],
   });
 }

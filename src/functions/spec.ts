@@ -125,8 +125,8 @@ export interface LoopMeaning {
   readonly rows: readonly LoopRow[];
   /** Equations whose whole left side is a signal: signal → row. */
   readonly definedBy: ReadonlyMap<string, number>;
-  /** Loops with a dead time cannot be judged by polynomials. */
-  readonly hasDelay: boolean;
+  /** What must hold for its coefficients to have a value; they may be results of other loops. */
+  readonly when: Condition;
   blocks(signal: string | null): readonly StabilityBlock[];
 }
 

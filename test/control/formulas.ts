@@ -148,7 +148,6 @@ export function signal(
     when: ALWAYS,
     notes: [],
     inputs: [],
-    hasDelay: false,
     blocks,
     terms: terms.map((t) => ({
       input: 'w',

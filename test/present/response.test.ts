@@ -21,7 +21,6 @@ function responseTo(...terms: readonly (readonly [transform: string, after: stri
       terms: signal,
       blocks: [],
       inputs: [],
-      hasDelay: false,
       when: ALWAYS,
       notes: [],
     },

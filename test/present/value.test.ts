@@ -121,7 +121,6 @@ describe('values of every kind', () => {
         name: 'x',
         blocks: [],
         inputs: [],
-        hasDelay: false,
         terms: [
           {
             input: 'w',
