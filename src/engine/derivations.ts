@@ -389,6 +389,11 @@ export class Derivations implements Meanings {
     return expandStable(condition, this.signOf, new Budget(DEFAULT_BUDGET));
   }
 
+  /** A condition as an engineer reads it, reduced by the signs that the worksheet states. */
+  reduced(condition: Condition): Condition {
+    return this.functionContext(BASE_SCOPE).readable(this.expandStability(condition));
+  }
+
   /** What a value takes for granted, in a sentence on the symbols; empty where it stands without conditions. */
   provisions({ when }: Value): readonly string[] {
     if (when === ALWAYS) return [];
@@ -396,7 +401,8 @@ export class Derivations implements Meanings {
       `provisions:${conditionKey(when)}`,
       () => {
         const text = conditionText(when, this.writing());
-        return text === conditionText(ALWAYS, this.writing()) ? [] : [`Provided that ${text}.`];
+        if (text === conditionText(ALWAYS, this.writing())) return [];
+        return [`Provided that ${text.length > LONGEST_PROVISION ? inWords(when) : text}.`];
       },
       sameList,
     );
@@ -425,6 +431,15 @@ export class Derivations implements Meanings {
         return outcome?.ok && [...outcome.value.inputs, ...outcome.value.unknowns].includes(name);
       });
   }
+}
+
+/** Characters that a condition beside a value may take; a longer one is named instead. */
+const LONGEST_PROVISION = 150;
+
+function inWords(condition: Condition): string {
+  if (condition.kind !== 'stable') return 'conditions hold that are too long to stand here';
+  const signals = condition.blocks.flatMap((block) => block.signals);
+  return `the part of the loop with ${signals.join(', ')} is stable`;
 }
 
 function signOfFunction(g: Generator, signOf: (g: Generator) => Sign): Sign {

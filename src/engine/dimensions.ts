@@ -1,4 +1,4 @@
-import { errorAt, warningAt, type Problem, type Span } from '../base/index.ts';
+import { errorAt, type Problem, type Span } from '../base/index.ts';
 import type { UnitRule, WorksheetFunction } from '../functions/index.ts';
 import { sourceNamed } from '../functions/index.ts';
 import {
@@ -21,14 +21,12 @@ import {
   ANGULAR_FREQUENCY,
   angleOf,
   angleToCycles,
-  cyclesOf,
   cyclesToAngle,
   DERIVATIVE,
   divMeasures,
   fitsAnywhere,
   FREE,
   Inference,
-  isRate,
   LAPLACE,
   measureOfUnit,
   measureText,
@@ -41,6 +39,8 @@ import {
   unknownMeasure,
   type Measure,
 } from './measures.ts';
+import { bareLimit } from './bare-limits.ts';
+import { frequencyWarning, type FixPlace, type Measured } from './frequency-rule.ts';
 import { memberPath } from './paths.ts';
 
 /** What the check of dimensions reads of a worksheet. None of it is a number. */
@@ -250,27 +250,20 @@ class DimensionCheck {
     for (const relation of relationsIn(statement.condition)) {
       relation.sides
         .slice(1)
-        .forEach((limit, index) => this.checkBareLimit(relation.sides[index], limit));
+        .forEach((right, index) => this.checkLimits(relation.sides[index], right));
     }
   }
 
-  private checkBareLimit(left: Expression, limit: Expression): void {
-    const number = limit.kind === 'negation' ? limit.of : limit;
-    if (number.kind !== 'number' || Number(number.text) === 0) return;
-    const measure = this.measures.get(left);
-    if (!measure || fitsAnywhere(measure)) return;
-    const known = this.inference.settle(measure);
-    const text = measureText(known);
-    if (known.unknowns.size > 0 || text === 'a pure number') return;
-    const fixed = `${formatExpression(limit)} ${text}`;
-    this.complain(
-      errorAt(
-        limit.span,
-        'bare-limit',
-        `\`${formatExpression(left)}\` is in ${text}, and the limit ${formatExpression(limit)} has no unit; write \`${fixed}\`.`,
-        [{ title: `Write ${fixed}`, edits: [{ span: limit.span, insert: fixed }] }],
-      ),
-    );
+  private checkLimits(left: Expression, right: Expression): void {
+    const [a, b] = [left, right].map((of) => this.measured(of));
+    const problem = (a && bareLimit(a, right, 'right')) ?? (b && bareLimit(b, left, 'left'));
+    if (problem) this.complain(problem);
+  }
+
+  /** A formula with what is known of its measure by now. */
+  private measured(of: Expression): Measured | null {
+    const measure = this.measures.get(of);
+    return measure ? { of, measure: this.inference.settle(measure) } : null;
   }
 
   private measureOfName(name: string): Measure {
@@ -468,12 +461,12 @@ class DimensionCheck {
     const terms = sum.terms.map((term) => ({ term, measure: inner(term) }));
     const carrying = terms.filter(({ measure }) => !fitsAnywhere(measure));
     if (carrying.length === 0) return terms.some(({ measure }) => measure.free) ? FREE : NUMBER;
-    const lead = carrying.find(({ measure }) => angleOf(measure) !== 0) ?? carrying[0];
-    for (const other of carrying) {
-      if (other !== lead)
-        this.agree(lead.term, lead.measure, other.term, other.measure, sum.span, 'sum');
+    const [first, ...others] = carrying;
+    for (const other of others) {
+      const where = sum.signs[sum.terms.indexOf(other.term)] < 0 ? 'difference' : 'sum';
+      this.agree(first.term, first.measure, other.term, other.measure, sum.span, where);
     }
-    return lead.measure;
+    return (carrying.find(({ measure }) => angleOf(measure) !== 0) ?? first).measure;
   }
 
   private powerMeasure(
@@ -497,23 +490,21 @@ class DimensionCheck {
   }
 
   private checkReplacements(expression: Extract<Expression, { kind: 'with' }>): void {
-    for (const replacement of expression.replacements) {
-      const value = this.measure(replacement.value, null);
-      const entry = this.source.entry(replacement.name);
-      if (!entry || entry.kind === 'loop' || entry.kind === 'case') continue;
-      const wanted = this.measureOfName(replacement.name);
-      if (this.inference.unify(wanted, value)) continue;
-      const [need, have] = [wanted, value].map((measure) =>
-        measureText(this.inference.settle(measure)),
-      );
-      this.complain(
-        errorAt(
-          replacement.span,
-          'dimension',
-          `${nameToText(replacement.name)} is in ${need}, and its replacement is in ${have}.`,
-        ),
-      );
+    for (const { name, nameSpan, by, value, span } of expression.replacements) {
+      const wanted = this.replacedMeasure(name);
+      const replaced: Expression = { kind: 'name', name, span: nameSpan };
+      // After `is` a unit alone can stand, so that a fix with 2π makes a formula of the replacement.
+      const given = by === 'is' ? { span, prefix: `${nameToText(name)} = ` } : undefined;
+      const measure = this.measure(value, null);
+      this.agree(replaced, wanted, value, measure, span, 'replacement', given);
     }
+  }
+
+  private replacedMeasure(name: string): Measure {
+    if (name === 's') return LAPLACE;
+    if (name === 't') return TIME;
+    const entry = this.source.entry(name);
+    return entry?.kind === 'loop' || entry?.kind === 'case' ? FREE : this.measureOfName(name);
   }
 
   private shownIn(expression: Extract<Expression, { kind: 'in-unit' }>, of: Measure): Measure {
@@ -536,7 +527,8 @@ class DimensionCheck {
     right: Expression,
     rightMeasure: Measure,
     span: Span,
-    where: 'sum' | 'relation' | 'equation' | 'value',
+    where: 'sum' | 'difference' | 'relation' | 'equation' | 'value' | 'replacement',
+    fixAt?: FixPlace,
   ): void {
     if (!this.inference.unify(leftMeasure, rightMeasure)) {
       const [a, b] = [leftMeasure, rightMeasure].map((measure) =>
@@ -545,32 +537,9 @@ class DimensionCheck {
       this.complain(errorAt(span, 'dimension', conflictText(where, left, a, right, b)));
       return;
     }
-    this.checkFrequencies(left, leftMeasure, right, rightMeasure);
-  }
-
-  /** A frequency in Hz beside an angular frequency or s lacks the factor 2π (ISO 80000-3). */
-  private checkFrequencies(
-    left: Expression,
-    leftMeasure: Measure,
-    right: Expression,
-    rightMeasure: Measure,
-  ): void {
-    const [a, b] = [this.inference.settle(leftMeasure), this.inference.settle(rightMeasure)];
-    if (!isRate(a) || !isRate(b) || fitsAnywhere(a) || fitsAnywhere(b)) return;
-    const isCyclic = (measure: Measure) => cyclesOf(measure) === 1;
-    const isAngular = (measure: Measure) =>
-      cyclesOf(measure) === 0 && (angleOf(measure) === 1 || measure.laplace);
-    const cyclic = isCyclic(a) && isAngular(b) ? left : isCyclic(b) && isAngular(a) ? right : null;
-    if (!cyclic || cyclic.kind === 'quantity') return;
-    const text = formatExpression(cyclic);
-    this.complain(
-      warningAt(
-        cyclic.span,
-        'frequency-without-2pi',
-        `\`${text}\` is a frequency in Hz, and the other side is an angular frequency; formulas do not convert: write \`2 pi ${text}\`.`,
-        [{ title: `Write 2 pi ${text}`, edits: [{ span: cyclic.span, insert: `2 pi ${text}` }] }],
-      ),
-    );
+    const [a, b] = [leftMeasure, rightMeasure].map((measure) => this.inference.settle(measure));
+    const warning = frequencyWarning({ of: left, measure: a }, { of: right, measure: b }, fixAt);
+    if (warning) this.complain(warning);
   }
 }
 
@@ -585,10 +554,14 @@ function conflictText(
   switch (where) {
     case 'sum':
       return `\`${l} + ${r}\` adds ${a} to ${b}.`;
+    case 'difference':
+      return `\`${l} - ${r}\` subtracts ${b} from ${a}.`;
     case 'equation':
       return `The two sides do not fit: \`${l}\` is in ${a}, and \`${r}\` is in ${b}.`;
     case 'value':
       return `\`${l}\` is in ${a}, and \`${r}\` is in ${b}.`;
+    case 'replacement':
+      return `${l} is in ${a}, and its replacement is in ${b}.`;
     default:
       return `\`${l}\` is in ${a} and cannot be compared with \`${r}\`, which is in ${b}.`;
   }
@@ -596,7 +569,8 @@ function conflictText(
 
 function constantMeasure(name: string): Measure {
   if (name === 's') return LAPLACE;
-  return name === 'j' || name === 'pi' || name === 'π' ? PURE : FREE;
+  if (name === 'j') return NUMBER;
+  return name === 'pi' || name === 'π' ? PURE : FREE;
 }
 
 /** `2 pi f1` and `omega/(2 pi)`: π turns cycles into an angle, and dividing by it an angular frequency into a frequency. */
@@ -646,6 +620,7 @@ function exponentValue(exponent: Expression): number | null {
 
 function relationsIn(condition: Expression): Extract<Expression, { kind: 'relation' }>[] {
   if (condition.kind === 'relation') return [condition];
+  if (condition.kind === 'with') return relationsIn(condition.of);
   if (condition.kind === 'logical') return condition.operands.flatMap(relationsIn);
   if (condition.kind === 'not') return relationsIn(condition.of);
   return [];

@@ -1,4 +1,4 @@
-import { NO, YES, type Condition, type Value } from '../control/index.ts';
+import { allOf, NO, YES, type Condition, type Value } from '../control/index.ts';
 import type { Expression, Relation, RequireStatement } from '../language/index.ts';
 import { formatExpression } from '../language/index.ts';
 import { conditionText, expressionLatex, valueText } from '../present/index.ts';
@@ -8,7 +8,6 @@ import { unitFor, type Display } from './display.ts';
 import { failureOf } from './failures.ts';
 import type { Evaluated, Numbers, Points, Subject } from './numbers.ts';
 import type { RequirementContent, Verdict } from './report.ts';
-import { BASE_SCOPE } from './scope.ts';
 import { sampleBox, type ToleranceSample } from './tolerance.ts';
 import { isMonotoneSubject, movingNames, variantsOf } from './variants.ts';
 
@@ -84,14 +83,16 @@ function undecidedContent(
   missing: readonly string[],
   derivations: Derivations,
 ): Content {
-  const { readable, writing } = derivations.functionContext(BASE_SCOPE);
-  const reduced = conditionText(readable(derivations.expandStability(value.condition)), writing);
+  const reduced = derivations.reduced(allOf([value.condition, value.when]));
+  if (reduced.kind === 'truth') return settled(request, reduced.value ? 'met' : 'not met', []);
+  const holds = conditionText(reduced, derivations.writing());
   const words = `${missing.join(', ')} ${missing.length === 1 ? 'has' : 'have'} no value`;
-  return settled(request, 'undecided', [`${words}; it holds if ${reduced}.`]);
+  return settled(request, 'undecided', [`${words}; it holds if ${holds}.`]);
 }
 
-/** The one relation that a requirement is, or null for other conditions. */
+/** The one relation that a requirement is, perhaps under a `with`, or null for other conditions. */
 export function relationOf(condition: Expression): Relation | null {
+  if (condition.kind === 'with') return relationOf(condition.of);
   return condition.kind === 'relation' && condition.operators.length === 1 ? condition : null;
 }
 

@@ -8,7 +8,7 @@ import {
   asRational,
 } from '../algebra/index.ts';
 import type { ArrayValue, FormulaValue, PartsValue, RootsValue, Value } from '../control/index.ts';
-import { compileRatios, UNDECIDED, YES } from '../control/index.ts';
+import { ALWAYS, compileRatios, UNDECIDED, YES } from '../control/index.ts';
 import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
 import { polynomialRoots } from '../numeric/index.ts';
 import {
@@ -63,7 +63,7 @@ export function resultContent(
   numbers: Numbers,
 ): ResultContent {
   const writing = derivations.writing();
-  const nominal = nominalValue(request.subject, numbers, writing);
+  const nominal = nominalValue(request.subject, numbers, derivations);
   const formula = formulaOf(value, writing);
   const { display } = request;
   const shown = shownText(nominal.value, display, request.hints);
@@ -162,7 +162,8 @@ interface NominalValue {
 
 const NO_VALUE: NominalValue = { value: null, notes: [] };
 
-function nominalValue(subject: Subject, numbers: Numbers, writing: Writing): NominalValue {
+function nominalValue(subject: Subject, numbers: Numbers, derivations: Derivations): NominalValue {
+  const writing = derivations.writing();
   const compiled = numbers.compiled(subject, numbers.zeroScope(numbers.zeros(subject)));
   if (!compiled)
     return {
@@ -175,18 +176,27 @@ function nominalValue(subject: Subject, numbers: Numbers, writing: Writing): Nom
   if (value.kind !== 'formula' && value.kind !== 'condition') return NO_VALUE;
   if (value.kind === 'formula' && !compiled.ratios) return NO_VALUE;
   const missing = numbers.missing(compiled);
-  if (missing.length > 0)
-    return {
-      value: null,
-      notes: [
-        `No number: ${missing.join(', ')} ${missing.length === 1 ? 'has' : 'have'} no value.`,
-      ],
-    };
+  if (missing.length > 0) return valueWithout(missing, value, derivations);
   const evaluated = numbers.evaluate(compiled, NOMINAL);
   if (!evaluated.exists[0]) return absentAtNominal(subject, compiled, numbers, writing);
   const undecided = undecidedReason(compiled, evaluated, numbers, writing);
   if (undecided) return { value: null, notes: [`Undecided: ${undecided}.`] };
   return { value: numberIn(compiled, evaluated), notes: [] };
+}
+
+/** Without some of the numbers only the signs can decide a condition. */
+function valueWithout(
+  missing: readonly string[],
+  value: Value,
+  derivations: Derivations,
+): NominalValue {
+  const reduced =
+    value.kind === 'condition' && value.when === ALWAYS
+      ? derivations.reduced(value.condition)
+      : null;
+  if (reduced?.kind === 'truth') return { value: reduced.value, notes: [] };
+  const verb = missing.length === 1 ? 'has' : 'have';
+  return { value: null, notes: [`No number: ${missing.join(', ')} ${verb} no value.`] };
 }
 
 /** Why a condition can be told neither true nor false at the nominal; null for all else. */
@@ -272,7 +282,7 @@ function spanOf(
     high = Math.max(high, value);
   }
   const magnitude = variants
-    .map(({ compiled }) => asMagnitude((compiled!.value as FormulaValue).ratio))
+    .map(({ compiled }) => asMagnitude(derivations.open((compiled!.value as FormulaValue).ratio)))
     .find(
       (part) => part && sample.method === 'corners' && changesSign(part.inner, sample, numbers),
     );

@@ -20,4 +20,4 @@ export type { ValueStyle } from './value-text.ts';
 export { formatNumber, formatValue, valueIn } from './value-text.ts';
 export { cycleFactor } from './frequency.ts';
 export { chooseUnit, coherentUnit } from './display-unit.ts';
-export { unitText, unitToLatex } from './unit-text.ts';
+export { unitAsTyped, unitText, unitToLatex } from './unit-text.ts';

@@ -12,6 +12,14 @@ export function unitText(unit: Unit | string): string {
   return tree.kind === 'one' ? '' : unitTreeText(respelt(tree));
 }
 
+/** A printed unit as a worksheet takes it: `kg m²` as `kg m^2`. */
+export function unitAsTyped(printed: string): string {
+  return printed.replace(/[⁺⁻]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+/gu, (power) => {
+    const digits = [...power].map((c) => (c === '⁻' ? '-' : String('⁰¹²³⁴⁵⁶⁷⁸⁹'.indexOf(c))));
+    return `^${digits.join('')}`;
+  });
+}
+
 function respelt(tree: UnitTree): UnitTree {
   switch (tree.kind) {
     case 'one':
