@@ -1,22 +1,12 @@
-import {
-  laplace,
-  mulRatios,
-  parseRational,
-  powRatio,
-  ratioFromRational,
-  ratioOf,
-  type Ratio,
-} from '../algebra/index.ts';
+import { parseRational, ratioFromRational } from '../algebra/index.ts';
 import type { Span } from '../base/index.ts';
 import {
   allOf,
   compare,
-  derivativeFromStart,
+  differentiateSignal,
   type Comparison,
   type Condition,
   type MatrixValue,
-  type SignalTerm,
-  type SignalValue,
   type Value,
 } from '../control/index.ts';
 import type {
@@ -159,20 +149,6 @@ function derivativeValue(derivative: Derivative, of: Value): Value {
     );
   }
   return differentiateSignal(of, derivative.order);
-}
-
-/** x^(n) has the transform sⁿ X(s), all signals being zero before t = 0 but for what initial values set in motion. */
-function differentiateSignal(signal: SignalValue, order: number): SignalValue {
-  const terms = signal.terms.map((term) => ({
-    ...term,
-    transform: differentiated(term, order),
-  }));
-  return { ...signal, name: signal.name + "'".repeat(order), terms };
-}
-
-function differentiated({ source, transform }: SignalTerm, order: number): Ratio {
-  if (source !== 'initial') return mulRatios(transform, powRatio(ratioOf(laplace), order));
-  return Array.from({ length: order }).reduce<Ratio>(derivativeFromStart, transform);
 }
 
 function callValue(call: Call, scope: Scope, meanings: Meanings): Value {

@@ -29,3 +29,31 @@ describe('derivatives of a signal that starts at a value of its own', () => {
     expect(result('a').formula).toBe(result('b').formula);
   });
 });
+
+/** A pure integration behind a stable loop: x itself grows, and its rate is what the loop settles to. */
+describe('the derivative of a signal that integrates', () => {
+  const FEED = `
+K, a, v, d are positive
+loop feed driven by r
+  y' = K (r - y)
+  x' = a y
+  z' = x
+  q'' + d q' = y
+case run of feed
+  r = step(v)`;
+
+  it.each([
+    ["final(run.x')", 'a v'],
+    ["final(run.z'')", 'a v'],
+    ["final(run.q')", 'v/d'],
+  ])('%s is %s', (formula, expected) => {
+    const { result } = evaluateCell(`${FEED}\nx0 = ${formula}\nagrees = same(x0, ${expected})`);
+    expect(result('agrees').value).toBe(true);
+  });
+
+  it('has no final value of its own, nor has a derivative of too low an order', () => {
+    const { result } = evaluateCell(`${FEED}\nx0 = final(run.x)\nz1 = final(run.z')`);
+    expect(result('x0').notes.join()).toContain('grows without bound, as t');
+    expect(result('z1').notes.join()).toContain('grows without bound, as t');
+  });
+});
