@@ -126,7 +126,7 @@ function requireSameKind(quantity: Quantity, typed: Unit, unit: Unit, name: stri
   );
   if (same && typed.logarithmic === unit.logarithmic) return;
   stopAt(
-    quantity.unitSpan,
+    quantity.unit === '' ? quantity.span : quantity.unitSpan,
     'unit-mismatch',
     `${name} is given in ${unit.text || 'no unit'}, and ${typed.text || 'no unit'} does not fit it.`,
   );
@@ -140,12 +140,6 @@ function readRange(
   units: CustomUnits,
 ): ToleranceReading {
   const [low, high] = readBounds(range.from, range.to, unit, node.name, units);
-  if (low > high)
-    stopAt(
-      range.span,
-      'reversed-range',
-      'The range runs backwards; the smaller number comes first.',
-    );
   if (value.value < low || value.value > high) {
     stopAt(
       range.span,
@@ -173,7 +167,14 @@ export function readBounds(
     [to, pick(to, from)],
   ] as const;
   for (const [end, typed] of ends) requireSameKind(end, typed, unit, name);
-  return [siOfQuantity(from, ends[0][1]).value, siOfQuantity(to, ends[1][1]).value];
+  const [low, high] = ends.map(([end, typed]) => siOfQuantity(end, typed).value);
+  if (low > high)
+    stopAt(
+      { from: from.span.from, to: to.span.to },
+      'reversed-range',
+      'The range runs backwards; the smaller number comes first.',
+    );
+  return [low, high];
 }
 
 const HOLDS: Readonly<Record<Sign, (low: number, high: number) => boolean>> = {

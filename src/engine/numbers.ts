@@ -153,11 +153,29 @@ export class Numbers {
 
   /** Whether a derived parameter depends on a toleranced name other than through `nominal`. */
   movesWithTolerance(name: string): boolean {
-    const meaning = this.derivations.abbreviated(name);
-    if (!meaning) return false;
-    return compileRatios([meaning], this.resolve).inputs.some(
-      (input) => plainName(input) === input && this.bounds(input) !== null,
-    );
+    return this.inputsOf(name).some((input) => this.bounds(input) !== null);
+  }
+
+  private dependsOnAny(name: string, names: ReadonlyMap<string, unknown>): boolean {
+    return this.inputsOf(name).some((input) => names.has(input));
+  }
+
+  /** The assumptions behind a derived parameter, those held by `nominal` left out. */
+  private inputsOf(name: string): readonly string[] {
+    return this.queries.get(`parameter-inputs:${name}`, () => {
+      const meaning = this.derivations.abbreviated(name);
+      if (!meaning) return [];
+      return compileRatios([meaning], this.resolve).inputs.filter(
+        (input) => plainName(input) === input,
+      );
+    });
+  }
+
+  /** The values of a derived parameter at points. */
+  private columnOf(name: string, points: Points): Float64Array {
+    const meaning = this.derivations.abbreviated(name)!;
+    const { tape, inputs, outputs } = compileRatios([meaning], this.resolve);
+    return tape.evaluateBatch(this.inputs(inputs, points), points.count)[outputs[0].re];
   }
 
   /** The number of a formula without s at nominal values; null where a symbol in it has none. */
@@ -244,8 +262,13 @@ export class Numbers {
   }
 
   private groupByZeros(subject: Subject, points: Points): { zeros: string[]; indices: number[] }[] {
-    const fixed = this.zeros(subject).filter((name) => !points.columns.has(name));
-    const varying = [...points.columns].filter(([name]) => subject.reach.has(name));
+    const zero = this.zeros(subject).filter((name) => !points.columns.has(name));
+    const moving = zero.filter((name) => this.dependsOnAny(name, points.columns));
+    const fixed = zero.filter((name) => !moving.includes(name));
+    const varying = [
+      ...[...points.columns].filter(([name]) => subject.reach.has(name)),
+      ...moving.map((name) => [name, this.columnOf(name, points)] as const),
+    ];
     const groups = new Map<string, { zeros: string[]; indices: number[] }>();
     for (let i = 0; i < points.count; i++) {
       const zeros = [

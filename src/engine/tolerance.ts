@@ -182,7 +182,7 @@ function isMonotoneRelation(
   // Between corners of either side a monotone quantity passes through the value that it must not have.
   if (operator === '!=') return false;
   const isUpper = operator === '<' || operator === '<=';
-  const magnitude = asMagnitude(left);
+  const magnitude = asMagnitude(derivations.open(left));
   const rightFixed = names.every((name) => !dependsOn(derivations.open(right), symbol(name)));
   if (magnitude && magnitude.factor > 0 && isUpper && rightFixed) {
     return isMonotone(magnitude.inner, names, numbers, derivations);

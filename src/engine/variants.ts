@@ -20,7 +20,9 @@ const MOST_VANISHING_NAMES = 4;
 
 /** All variants of a subject that its tolerances reach. */
 export function variantsOf(subject: Subject, numbers: Numbers): readonly Variant[] {
-  const fixed = numbers.zeros(subject).filter((name) => !canVanish(name, numbers));
+  const fixed = numbers
+    .zeros(subject)
+    .filter((name) => !canVanish(name, numbers) && !numbers.movesWithTolerance(name));
   const vanishing = [...subject.reach].filter((name) => canVanish(name, numbers));
   return subsetsOf(vanishing.slice(0, MOST_VANISHING_NAMES)).map((zeros) => ({
     zeros,
@@ -90,6 +92,6 @@ function isMonotoneValue(
   if (value.kind === 'condition')
     return isMonotoneCondition(value.condition, names, numbers, derivations);
   if (value.kind !== 'formula') return true;
-  const inner = asMagnitude(value.ratio)?.inner ?? value.ratio;
-  return isMonotone(inner, names, numbers, derivations);
+  const opened = derivations.open(value.ratio);
+  return isMonotone(asMagnitude(opened)?.inner ?? opened, names, numbers, derivations);
 }
