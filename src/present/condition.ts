@@ -1,5 +1,5 @@
 import { Budget, BudgetExceeded } from '../base/index.ts';
-import type { Polynomial } from '../algebra/index.ts';
+import { termsOf, type Polynomial } from '../algebra/index.ts';
 import {
   readable,
   stabilityConditions,
@@ -93,12 +93,24 @@ type StablePart = Condition | { readonly kind: 'hurwitz'; readonly polynomial: P
 /** Work spent on opening one block's stability into conditions; a dearer one is left closed. */
 const OPENING_BUDGET = 2_000_000;
 
+/** Terms of the conditions of one block that a reader can take in; with more, its polynomial says it better. */
+const MOST_TERMS = 80;
+
+function sizeOf(conditions: readonly Condition[]): number {
+  return conditions
+    .flatMap((c) =>
+      c.kind === 'compare' ? [c.left.num, c.left.den, c.right.num, c.right.den] : [],
+    )
+    .reduce((sum, polynomial) => sum + termsOf(polynomial).length, 0);
+}
+
 function stableParts(blocks: readonly StabilityBlock[], writing: Writing): readonly StablePart[] {
   const parts = blocks.flatMap(({ polynomial }): readonly StablePart[] => {
     const conditions = openedConditions(polynomial, writing);
     if (conditions === null) return [{ kind: 'hurwitz', polynomial }];
     const whole = readable({ kind: 'all', of: conditions }, writing.signOf, writing.tuned);
-    return flattened([whole], 'all');
+    const opened = flattened([whole], 'all');
+    return sizeOf(opened) > MOST_TERMS ? [{ kind: 'hurwitz', polynomial }] : opened;
   });
   const never = parts.find((part) => part.kind === 'truth' && !part.value);
   return never ? [never] : parts.filter((part) => part.kind !== 'truth');

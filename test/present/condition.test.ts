@@ -63,6 +63,19 @@ describe('stability', () => {
   it('of no block is always', () => {
     expect(conditionText({ kind: 'stable', blocks: [] }, writing)).toBe('1 > 0');
   });
+
+  it('whose conditions have too many terms to read keeps its polynomial', () => {
+    const polynomial = '(J s^2 + b s + Kp) (m s^2 + a s + Kd) (a s^2 + m s + J) (b s + Kd) + Ki';
+    const stable: Condition = { kind: 'stable', blocks: [block(polynomial)] };
+    expect(conditionText(stable, writing)).toMatch(/^stable\(.*s\^7.*\)$/);
+  });
+
+  it('leaves out blocks that are always stable, and is never where one is never', () => {
+    const blocks = [block('J s + Kp'), block('J s^2 + Kd s + Kp - Ki')];
+    expect(conditionText({ kind: 'stable', blocks }, writing)).toBe('Kp > Ki');
+    const fails = [...blocks, block('J s^2 + Kp')];
+    expect(conditionText({ kind: 'stable', blocks: fails }, writing)).toBe('1 < 0');
+  });
 });
 
 it('What cannot be decided is said in words, marks escaped.', () => {
