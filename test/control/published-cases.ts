@@ -7,6 +7,7 @@ export interface PublishedCase {
   readonly kind: string;
   readonly given: Readonly<Record<string, never>>;
   readonly expect: Readonly<Record<string, never>>;
+  readonly tolerance: { readonly rel: number };
   readonly source: string;
   readonly how: string;
 }
