@@ -19,3 +19,4 @@ export * from './matrix.ts';
 export type { CramerSolution, PolynomialMatrix } from './elimination.ts';
 export * from './sign.ts';
 export * from './real-roots.ts';
+export { ResiduePoint } from './residue-point.ts';

@@ -15,6 +15,7 @@ import {
 import type { Generator, Polynomial, Ratio, Sign } from '../algebra/index.ts';
 import { isRefusal, refuse } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certifySolution } from './certificate.ts';
 import { solveForGain } from './readable-condition.ts';
 import { reduceCondition, relationOf } from './reduced-condition.ts';
 import type { SignOf } from '../algebra/index.ts';
@@ -103,6 +104,7 @@ export function solutionsFor(
   for (const factor of factors) {
     const solution = solveFactor(factor, unknown, signOf, budget);
     if (isRefusal(solution)) return solution;
+    certifySolution(equation, unknown, solution);
     if (signsAgree(signOfRatio(solution, signOf), signOf(unknown))) solutions.push(solution);
   }
   return solutions;

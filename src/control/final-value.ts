@@ -2,6 +2,7 @@ import { addRatios, isZeroRatio, mulRatios, zeroRatio } from '../algebra/index.t
 import type { Ratio } from '../algebra/index.ts';
 import { isRefusal } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certifyFinalValue } from './certificate.ts';
 import { allOf } from './conditions.ts';
 import type { SignOf } from '../algebra/index.ts';
 import { powerOfS } from './s-polynomial.ts';
@@ -119,6 +120,7 @@ function valueAtOrigin(x: SignalValue, when: Condition): FormulaValue | NoValue 
       `the part of the loop with ${listed(hidden.signals)} hides a mode at s = 0, which does not decay`,
     );
   }
+  certifyFinalValue(x.terms, polar[0]);
   return plainValue(base, polar[0]);
 }
 

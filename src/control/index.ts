@@ -8,7 +8,7 @@ export { routhArray } from './routh.ts';
 export { countRoots } from './root-count.ts';
 export type { RootCounts } from './root-count.ts';
 export { blocksOf, closeLoop } from './loops.ts';
-export type { ClosedLoop, LoopBlock, LoopRow } from './loops.ts';
+export type { ClosedLoop, LoopBlock } from './loops.ts';
 export { hiddenModesNote } from './hidden-modes.ts';
 export { openedAt, propernessOf, transferFunction } from './transfer.ts';
 export type { Transfer } from './transfer.ts';

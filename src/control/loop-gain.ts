@@ -2,6 +2,7 @@ import { isZeroRatio, ratioOf, laplace, mulRatios, powRatio } from '../algebra/i
 import type { Polynomial, Ratio } from '../algebra/index.ts';
 import { isRefusal, refuse } from '../base/index.ts';
 import type { Refusal } from '../base/index.ts';
+import { certifyAtOrigin } from './certificate.ts';
 import { ALWAYS } from './values.ts';
 import type { FormulaValue, NoValue, RootsValue } from './values.ts';
 import { noValue, plainValue } from './final-value.ts';
@@ -15,7 +16,9 @@ export function dcGain(h: Ratio): FormulaValue | NoValue | Refusal {
   const lead = laurentAtZero(h, 1);
   if (isRefusal(lead)) return lead;
   if (lead && lead.order < 0) return noValue(BASE, 'infinite: a pole at s = 0');
-  return plainValue(BASE, laurentCoefficient(lead, 0));
+  const value = laurentCoefficient(lead, 0);
+  certifyAtOrigin(h, value);
+  return plainValue(BASE, value);
 }
 
 /** The system type of a loop gain: the number of its poles at s = 0, in lowest terms. Refuses L = 0. */

@@ -14,9 +14,10 @@ import {
   zeroPolynomial,
   quotientOf,
 } from '../algebra/index.ts';
-import type { Fraction, Polynomial } from '../algebra/index.ts';
+import type { Polynomial } from '../algebra/index.ts';
 import { refuse } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certifyCharacteristic } from './certificate.ts';
 import {
   blocksOfStructure,
   matchEquations,
@@ -25,12 +26,7 @@ import {
 } from './loop-structure.ts';
 import type { Fault, Incidence, Matching } from './loop-structure.ts';
 import { contentFreeOfS } from './s-polynomial.ts';
-import type { StabilityBlock } from './values.ts';
-
-/** One equation of a loop: Σ coefficient · signal = 0, fractions uncancelled; signals that do not occur are left out. */
-export interface LoopRow {
-  readonly coefficients: ReadonlyMap<string, Fraction>;
-}
+import type { LoopRow, StabilityBlock } from './values.ts';
 
 /** A block of signals that feed each other. */
 export interface LoopBlock extends StabilityBlock {
@@ -127,7 +123,7 @@ function withoutClearing(
 }
 
 function blockOf(
-  loop: { readonly cleared: readonly ClearedRow[]; readonly unknowns: readonly string[] },
+  loop: Pick<ClosedLoop, 'rows' | 'cleared' | 'unknowns'>,
   members: { readonly unknowns: readonly number[]; readonly equations: readonly number[] },
   budget?: Budget,
 ): (StabilityBlock & { readonly equations: readonly number[] }) | Refusal {
@@ -142,11 +138,11 @@ function blockOf(
       `${equations} do not determine ${listed(signals)}: their determinant is zero for every s`,
     );
   }
-  return {
-    signals,
-    equations: members.equations,
-    polynomial: withoutClearing(value, rows, budget),
-  };
+  const polynomial = withoutClearing(value, rows, budget);
+  const written = members.equations.map((e) => loop.rows[e]);
+  const multipliers = rows.map((row) => row.multiplier);
+  certifyCharacteristic(written, signals, polynomial, multipliers);
+  return { signals, equations: members.equations, polynomial };
 }
 
 function dependencies(
@@ -184,7 +180,7 @@ export function closeLoop(
   const blocks: LoopBlock[] = [];
   for (const [self, group] of groups.entries()) {
     const equations = group.map((u) => matching.equationOf[u]).sort((a, b) => a - b);
-    const block = blockOf({ cleared, unknowns }, { unknowns: group, equations }, budget);
+    const block = blockOf({ rows, cleared, unknowns }, { unknowns: group, equations }, budget);
     if ('kind' in block) return block;
     const dependsOn = dependencies({ incidence, groups }, equations, self);
     blocks.push(Object.freeze({ ...block, dependsOn }));

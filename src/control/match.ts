@@ -19,6 +19,7 @@ import {
 import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
 import { isRefusal, refuse } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certifyMatch } from './certificate.ts';
 import { degreeInS, functionsOfS } from './s-polynomial.ts';
 
 /** One gain that was found. */
@@ -197,5 +198,6 @@ export function matchCoefficients(
   if (fault) return fault;
   const values = backSubstituted(pivots, budget);
   if (isRefusal(values)) return values;
+  certifyMatch(p, q, values);
   return gains.map((gain) => ({ gain, value: values.get(gain) ?? zeroRatio }));
 }

@@ -11,6 +11,7 @@ import {
 import type { Polynomial, Ratio } from '../algebra/index.ts';
 import { refuse, spend } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certifySum } from './certificate.ts';
 import {
   digitsIn,
   divideField,
@@ -105,5 +106,6 @@ export function partialFractions(r: Ratio, budget?: Budget): PartialFractions | 
   const numerator = scaleField(overField(r.num), divRatios(oneRatio, constant));
   const { quotient, remainder } = divideField(numerator, overField(denominator));
   const terms = dynamic.flatMap((f) => shareOf(remainder, denominator, f, budget));
+  certifySum(r, [ratioOfField(quotient), ...terms.map((term) => term.ratio)]);
   return Object.freeze({ polynomial: quotient, terms });
 }

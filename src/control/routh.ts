@@ -28,6 +28,7 @@ import {
 import type { Generator, Polynomial, Ratio, Rational } from '../algebra/index.ts';
 import { invariant, refuse, spend } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
+import { certifyRouth } from './certificate.ts';
 import { minorRows } from './hurwitz.ts';
 import type { MinorRow } from './hurwitz.ts';
 import { FALSE } from './conditions.ts';
@@ -210,6 +211,7 @@ export function routhArray(p: Polynomial, signOf: SignOf, budget?: Budget): Rout
     );
   }
   const { rows, auxiliaries, notes } = buildRows(p, budget);
+  certifyRouth(p, rows);
   return Object.freeze({
     rows: Object.freeze(rows),
     auxiliaries: Object.freeze(auxiliaries),

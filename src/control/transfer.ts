@@ -21,10 +21,11 @@ import {
 import type { Fraction, Polynomial, Ratio } from '../algebra/index.ts';
 import { invariant, isRefusal, refuse } from '../base/index.ts';
 import type { Budget, Refusal } from '../base/index.ts';
-import { certify } from './certificate.ts';
+import { certify, certifyOpening } from './certificate.ts';
 import { blockIndex, closeLoop, upstreamBlocks } from './loops.ts';
-import type { ClosedLoop, LoopBlock, LoopRow } from './loops.ts';
+import type { ClosedLoop, LoopBlock } from './loops.ts';
 import { degreeInS, primitiveInS } from './s-polynomial.ts';
+import type { LoopRow } from './values.ts';
 
 /** A transfer function in lowest terms, with the modes that it does not show. */
 export interface Transfer {
@@ -158,19 +159,24 @@ const FED = 'the signal behind the break';
 const one = fractionOfRatio(oneRatio);
 const isFractionOne = (f: Fraction): boolean => isZeroPolynomial(subFractions(f, one).num);
 
-/** The row that defines the signal with coefficient 1 for its left side; what else it holds of the signal is fed. */
-function definingRow(row: LoopRow, signal: string): LoopRow {
+/** The row that defines a signal, turned so that the signal's own coefficient is 1 where it was −1. */
+function uprightRow(row: LoopRow, signal: string): LoopRow {
   const own = row.coefficients.get(signal);
   invariant(own, `the row that should define ${signal} does not hold it`);
-  const turned = isFractionOne(negFraction(own));
-  const coefficients = new Map(
-    [...row.coefficients].map(([name, c]): [string, Fraction] => [
-      name,
-      turned ? negFraction(c) : c,
-    ]),
-  );
-  if (!turned && !isFractionOne(own)) coefficients.set(FED, subFractions(own, one));
-  return { coefficients: coefficients.set(signal, one) };
+  if (!isFractionOne(negFraction(own))) return row;
+  const turned = [...row.coefficients].map(([name, c]): [string, Fraction] => [
+    name,
+    negFraction(c),
+  ]);
+  return { coefficients: new Map(turned) };
+}
+
+/** The row with coefficient 1 for the signal as its left side; what else it holds of the signal is fed. */
+function definingRow({ coefficients }: LoopRow, signal: string): LoopRow {
+  const own = coefficients.get(signal) as Fraction;
+  const split = new Map(coefficients);
+  if (!isFractionOne(own)) split.set(FED, subFractions(own, one));
+  return { coefficients: split.set(signal, one) };
 }
 
 function fedRow(row: LoopRow, signal: string): LoopRow {
@@ -194,7 +200,8 @@ export function openedAt(
   definedBy: number,
   budget?: Budget,
 ): Transfer | Refusal {
-  const rows = loop.rows.map((row, i) =>
+  const closed = loop.rows.map((row, i) => (i === definedBy ? uprightRow(row, signal) : row));
+  const rows = closed.map((row, i) =>
     i === definedBy ? definingRow(row, signal) : fedRow(row, signal),
   );
   const opened = closeLoop(rows, loop.unknowns, [...loop.inputs, FED], budget);
@@ -206,7 +213,9 @@ export function openedAt(
   }
   const across = transferFunction(opened, FED, signal, budget);
   if (isRefusal(across)) return across;
-  return Object.freeze({ ...across, ratio: negRatio(across.ratio) });
+  const ratio = negRatio(across.ratio);
+  certifyOpening(closed, rows, loop.unknowns, ratio);
+  return Object.freeze({ ...across, ratio });
 }
 
 /**

@@ -1,4 +1,4 @@
-import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
+import type { Fraction, Generator, Polynomial, Ratio } from '../algebra/index.ts';
 import type { ResponseImpulse, ResponseTerm } from './time-function.ts';
 
 /**
@@ -167,4 +167,9 @@ export interface RouthArray {
   /** Root counts, where all entries are numbers: right half plane, axis, left half plane. */
   readonly counts: { readonly right: number; readonly axis: number; readonly left: number } | null;
   readonly notes: readonly string[];
+}
+
+/** One equation of a loop: Σ coefficient · signal = 0, fractions uncancelled; signals that do not occur are left out. */
+export interface LoopRow {
+  readonly coefficients: ReadonlyMap<string, Fraction>;
 }
