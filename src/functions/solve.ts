@@ -1,4 +1,6 @@
 import {
+  compareRational,
+  parseRational,
   ratioOf,
   ratioFromPolynomial,
   ratioFromRational,
@@ -130,10 +132,15 @@ function intervalAnswer(
   gain: Generator,
   { budget }: FunctionContext,
 ): Value {
-  const each = blocks.map((block) =>
-    anyOf(stableIntervals(block.polynomial, gain, budget).map((range) => within(range, gain))),
-  );
-  return conditionAnswer(allOf(each));
+  const ranges = blocks.map((block) => stableIntervals(block.polynomial, gain, budget));
+  const each = ranges.map((block) => anyOf(block.map((range) => within(range, gain))));
+  const isRounded = ranges
+    .flat()
+    .some(({ from, to }) => [from, to].some((end) => end !== null && !isExact(end)));
+  return {
+    ...conditionAnswer(allOf(each)),
+    notes: isRounded ? [`Ends are roots of polynomials, given to ${END_DIGITS} digits.`] : [],
+  };
 }
 
 function within(range: GainInterval, gain: Generator): Condition {
@@ -143,7 +150,14 @@ function within(range: GainInterval, gain: Generator): Condition {
   return allOf(parts);
 }
 
-/** An end of an interval; where it is not rational, the middle of the interval that isolates it. */
+const END_DIGITS = 6;
+
+function isExact({ low, high }: RangeEnd): boolean {
+  return compareRational(low, high) === 0;
+}
+
+/** An end of an interval; where it is not rational, as a decimal. */
 function endRatio(end: RangeEnd): Ratio {
-  return ratioFromRational(end.low);
+  const decimal = String(Number(end.value.toPrecision(END_DIGITS)));
+  return ratioFromRational(isExact(end) ? end.low : parseRational(decimal));
 }
