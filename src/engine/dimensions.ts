@@ -33,6 +33,7 @@ import {
   mulMeasures,
   NUMBER,
   powMeasure,
+  quotientOf,
   PURE,
   saidAngle,
   TIME,
@@ -40,8 +41,15 @@ import {
   type Measure,
 } from './measures.ts';
 import { bareLimit } from './bare-limits.ts';
+import { decibelsOfDensities } from './decibels.ts';
 import { frequencyWarning, type FixPlace, type Measured } from './frequency-rule.ts';
 import { memberPath } from './paths.ts';
+import {
+  celsiusOfDifference,
+  comparedTemperatures,
+  temperatureSource,
+  type TemperatureSource,
+} from './temperatures.ts';
 
 /** What the check of dimensions reads of a worksheet. None of it is a number. */
 export interface DimensionSource {
@@ -89,6 +97,28 @@ class DimensionCheck {
   private statement: Statement | null = null;
 
   constructor(private readonly source: DimensionSource) {}
+
+  private readonly temperatures: TemperatureSource = {
+    unitText: (name) => this.source.unitText(name),
+    formulaOf: (name) => {
+      const entry = this.source.entry(name);
+      return entry?.kind === 'definition' ? entry.formula : null;
+    },
+    isOfSignal: (expression) => this.isOfSignal(expression),
+  };
+
+  /** Whether a formula is a signal of a case, or a function of one that has its unit. */
+  private isOfSignal(e: Expression): boolean {
+    if (e.kind === 'call') {
+      const isValue = this.source.functionNamed(e.callee)?.unit === 'signal';
+      return isValue && e.args.length > 0 && this.isOfSignal(e.args[0]);
+    }
+    if (e.kind === 'derivative' || e.kind === 'with') return this.isOfSignal(e.of);
+    if (e.kind !== 'member') return false;
+    let root: Expression = e.of;
+    while (root.kind === 'member' || root.kind === 'with') root = root.of;
+    return root.kind === 'name' && this.source.entry(root.name)?.kind === 'case';
+  }
 
   run(): void {
     const order: Statement['kind'][] = [
@@ -218,6 +248,8 @@ class DimensionCheck {
     if (source.kind !== 'call' || source.args.length === 0) return null;
     const spec = sourceNamed(source.callee);
     const size = this.measure(source.args[0], null);
+    const warning = temperatureSource(source.args[0], this.temperatures);
+    if (warning) this.complain(warning);
     if (!spec || spec.availability === 'later') return null;
     return divMeasures(size, powMeasure(DERIVATIVE, spec.power - 1));
   }
@@ -509,6 +541,8 @@ class DimensionCheck {
 
   private shownIn(expression: Extract<Expression, { kind: 'in-unit' }>, of: Measure): Measure {
     const unit = this.unitMeasure(expression.unit);
+    const difference = celsiusOfDifference(expression, this.temperatures);
+    if (difference) this.complain(difference);
     if (this.inference.unify(of, unit))
       return fitsAnywhere(of) ? unit : saidAngle(this.inference.settle(of), unit);
     this.complain(
@@ -538,8 +572,15 @@ class DimensionCheck {
       return;
     }
     const [a, b] = [leftMeasure, rightMeasure].map((measure) => this.inference.settle(measure));
-    const warning = frequencyWarning({ of: left, measure: a }, { of: right, measure: b }, fixAt);
-    if (warning) this.complain(warning);
+    const sides = [
+      { of: left, measure: a },
+      { of: right, measure: b },
+    ] as const;
+    const problem =
+      frequencyWarning(...sides, fixAt) ??
+      decibelsOfDensities(...sides) ??
+      (where === 'relation' ? comparedTemperatures(left, right, this.temperatures) : null);
+    if (problem) this.complain(problem);
   }
 }
 
@@ -575,11 +616,12 @@ function constantMeasure(name: string): Measure {
 
 /** `2 pi f1` and `omega/(2 pi)`: π turns cycles into an angle, and dividing by it an angular frequency into a frequency. */
 function productMeasure(product: Product, inner: (part: Expression) => Measure): Measure {
-  const measure = product.factors
-    .map(inner)
-    .reduce((total, factor, index) =>
-      product.inverted[index] ? divMeasures(total, factor) : mulMeasures(total, factor),
-    );
+  const factors = product.factors.map(inner);
+  const [above, below] = [false, true].map((inverted) =>
+    factors.filter((_, index) => product.inverted[index] === inverted),
+  );
+  const numerator = above.reduce(mulMeasures);
+  const measure = below.length === 0 ? numerator : quotientOf(numerator, below.reduce(mulMeasures));
   const power = piPower(product);
   if (power !== 0 && isNumeral(product)) return { ...measure, bare: true, rigid: false };
   if (power > 0) return cyclesToAngle(measure);

@@ -10,9 +10,17 @@ import {
   unitText,
   valueIn,
   type CustomUnits,
+  type QuantityMeaning,
   type Unit,
 } from '../units/index.ts';
-import { cyclesOf, dimensionIn, isRate, shownAngle, type Measure } from './measures.ts';
+import {
+  cyclesOf,
+  dimensionIn,
+  isRate,
+  shownAngle,
+  shownCycles,
+  type Measure,
+} from './measures.ts';
 
 /** How the value of an expression is shown: the unit, and the factor from its own SI value to the shown quantity's. */
 export interface Display {
@@ -20,6 +28,8 @@ export interface Display {
   readonly fixed: Unit | null;
   readonly measure: Measure | null;
   readonly factor: number;
+  /** How decibels are meant. */
+  readonly meaning: QuantityMeaning;
   readonly notes: readonly string[];
 }
 
@@ -29,16 +39,18 @@ export function displayOf(
   measure: Measure | null,
   units: CustomUnits,
 ): Display {
-  if (expression.kind !== 'in-unit') return { fixed: null, measure, factor: 1, notes: [] };
+  const meaning: QuantityMeaning = { decibelsOf: measure?.densities ? 'power' : 'amplitude' };
+  const plain = { fixed: null, measure, factor: 1, meaning, notes: [] };
+  if (expression.kind !== 'in-unit') return plain;
   const unit = parseUnit(expression.unit, units);
-  if (isRefusal(unit)) return { fixed: null, measure, factor: 1, notes: [] };
+  if (isRefusal(unit)) return plain;
   const factor = measure && isRate(measure) ? cycleFactor(cyclesOf(measure), unit) : 1;
-  if (factor === 1) return { fixed: unit, measure, factor, notes: [] };
+  if (factor === 1) return { ...plain, fixed: unit };
   const note =
     factor < 1
       ? 'An angular frequency is divided by 2π to be shown in Hz.'
       : 'A frequency in Hz is multiplied by 2π to be shown as an angular frequency.';
-  return { fixed: unit, measure, factor, notes: [note] };
+  return { ...plain, fixed: unit, factor, notes: [note] };
 }
 
 /** The unit in which a value of this size is shown. */
@@ -48,7 +60,7 @@ export function unitFor(display: Display, si: number, hints: readonly Unit[]): U
   if (!measure) return null;
   return chooseUnit(dimensionIn(measure), hints, si, {
     angle: shownAngle(measure),
-    cycles: cyclesOf(measure),
+    cycles: shownCycles(measure),
   });
 }
 
@@ -57,7 +69,7 @@ export function coherentText(measure: Measure | null): string | null {
   if (!measure) return null;
   const unit = coherentUnit(dimensionIn(measure), {
     angle: shownAngle(measure),
-    cycles: cyclesOf(measure),
+    cycles: shownCycles(measure),
   });
   return unitText(unit) || null;
 }
@@ -65,7 +77,7 @@ export function coherentText(measure: Measure | null): string | null {
 /** A value as text: `-28.9 mrad`. */
 export function showValue(si: number, display: Display, hints: readonly Unit[]): string {
   const unit = unitFor(display, si, hints);
-  return unit ? formatValue(si * display.factor, unit) : formatNumber(si);
+  return unit ? formatValue(si * display.factor, unit, display.meaning) : formatNumber(si);
 }
 
 /** A span as text: `-44 to 0 mrad`. */
@@ -77,6 +89,6 @@ export function showSpan(
 ): string {
   const unit = unitFor(display, Math.max(Math.abs(low), Math.abs(high)), hints);
   if (!unit) return `${formatNumber(low)} to ${formatNumber(high)}`;
-  const end = formatValue(high * display.factor, unit);
-  return `${formatNumber(valueIn(low * display.factor, unit))} to ${end}`;
+  const end = formatValue(high * display.factor, unit, display.meaning);
+  return `${formatNumber(valueIn(low * display.factor, unit, display.meaning))} to ${end}`;
 }

@@ -18,6 +18,8 @@ export interface Measure {
   readonly rigid: boolean;
   /** Holds s, which is an angular frequency. */
   readonly laplace: boolean;
+  /** Is a ratio of densities, of which decibels are 10 log10. */
+  readonly densities: boolean;
 }
 
 const BASES = 7;
@@ -33,6 +35,7 @@ function measure(exponents: readonly number[], more: Partial<Measure> = {}): Mea
     bare: false,
     rigid: false,
     laplace: false,
+    densities: false,
     ...more,
   };
 }
@@ -74,6 +77,7 @@ export function mulMeasures(a: Measure, b: Measure): Measure {
     bare: a.bare || b.bare,
     rigid: a.rigid || b.rigid,
     laplace: a.laplace || b.laplace,
+    densities: a.densities || b.densities,
   };
 }
 
@@ -96,6 +100,7 @@ function addUnknowns(
 export function powMeasure(a: Measure, exponent: number): Measure {
   return {
     ...a,
+    densities: a.densities && Math.abs(exponent) === 1,
     exponents: a.exponents.map((own) => own * exponent),
     unknowns:
       exponent === 0
@@ -106,6 +111,13 @@ export function powMeasure(a: Measure, exponent: number): Measure {
 
 export function divMeasures(a: Measure, b: Measure): Measure {
   return mulMeasures(a, powMeasure(b, -1));
+}
+
+/** The measure of a quotient; of two densities per Hz it is known to be one. */
+export function quotientOf(above: Measure, below: Measure): Measure {
+  const densities = cyclesOf(above) === -1 && cyclesOf(below) === -1;
+  const quotient = divMeasures(above, below);
+  return densities ? { ...quotient, densities } : quotient;
 }
 
 /** 2π f: the factor turns cycles into angles. */
@@ -148,12 +160,22 @@ export function angleOf(a: Measure): number {
 
 /**
  * The power of rad that is worth showing: rad and per rad, in the units of the trade (N m/rad, rad/s²). Higher powers
- * and roots, which formulas such as J ω² and c/√(k J) bring about, are left out, and a pure number is not per rad.
+ * and roots, which formulas such as J ω² and c/√(k J) bring about, are left out, and a pure number is not per rad. A
+ * density keeps the powers that it was given in (rad²/Hz).
  */
 export function shownAngle(a: Measure): number {
   const angle = angleOf(a);
-  const isPure = a.exponents.slice(0, BASES).every((exponent) => exponent === 0);
-  return angle === 1 || (angle === -1 && !isPure) ? angle : 0;
+  if (cyclesOf(a) < 0) return angle;
+  return angle === 1 || (angle === -1 && !hasNoDimension(a)) ? angle : 0;
+}
+
+/** The power of Hz that is worth showing: a ratio of a frequency and an angular frequency is a pure number. */
+export function shownCycles(a: Measure): number {
+  return hasNoDimension(a) ? 0 : cyclesOf(a);
+}
+
+function hasNoDimension(a: Measure): boolean {
+  return a.exponents.slice(0, BASES).every((exponent) => exponent === 0);
 }
 
 export function cyclesOf(a: Measure): number {
@@ -218,6 +240,7 @@ export class Inference {
         bare: settled.bare,
         rigid: sum.rigid,
         laplace: settled.laplace,
+        densities: settled.densities,
       };
     }
     return settled;
