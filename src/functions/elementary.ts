@@ -1,6 +1,6 @@
-import { applyFunction } from '../algebra/index.ts';
+import { applyFunction, negRatio, signOfRatio, type SignOf } from '../algebra/index.ts';
 import { formulaAnswer, ratioOfArgument } from './answer.ts';
-import { one, rest, type UnitRule, type WorksheetFunction } from './spec.ts';
+import { one, rest, type Argument, type UnitRule, type WorksheetFunction } from './spec.ts';
 
 /** A function of one parameter that every handbook has, exact where its value is rational. */
 function elementary(
@@ -43,10 +43,29 @@ function answer(
   return value.kind === 'refusal' ? value : formulaAnswer(value);
 }
 
+/** Without the bars where the signs settle it. */
+function magnitude(x: Argument, signOf: SignOf): ReturnType<WorksheetFunction['evaluate']> {
+  const ratio = ratioOfArgument(x);
+  switch (signOfRatio(ratio, signOf)) {
+    case 'positive':
+    case 'nonnegative':
+    case 'zero':
+      return formulaAnswer(ratio);
+    case 'negative':
+    case 'nonpositive':
+      return formulaAnswer(negRatio(ratio));
+    default:
+      return answer('abs', [x]);
+  }
+}
+
 /** Functions of parameters. */
 export const ELEMENTARY: readonly WorksheetFunction[] = [
   elementary('sqrt', 'The square root of a parameter.', 'root', 'k is 4 N/m\nm is 1 kg\nsqrt(k/m)'),
-  elementary('abs', 'The magnitude of a parameter.', 'first', 'a is -2 N m\nabs(a)'),
+  {
+    ...elementary('abs', 'The magnitude of a parameter.', 'first', 'a is -2 N m\nabs(a)'),
+    evaluate: ([x], { signOf }) => magnitude(x, signOf),
+  },
   elementary('exp', 'The exponential function of a pure number.', 'pure', 'x is 1\nexp(x)'),
   elementary('log', 'The natural logarithm of a pure number.', 'pure', 'x is 2\nlog(x)'),
   elementary('sin', 'The sine of an angle.', 'pure', 'a is 30°\nsin(a)'),
