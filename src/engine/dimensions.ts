@@ -11,6 +11,7 @@ import {
   type Product,
   type Quantity,
   type RequireStatement,
+  type SourceTerm,
   type Statement,
   type Sum,
 } from '../language/index.ts';
@@ -41,6 +42,7 @@ import {
   type Measure,
 } from './measures.ts';
 import { bareLimit } from './bare-limits.ts';
+import { culpritOf } from './culprit.ts';
 import { decibelsOfDensities } from './decibels.ts';
 import { frequencyWarning, type FixPlace, type Measured } from './frequency-rule.ts';
 import { memberPath } from './paths.ts';
@@ -88,12 +90,34 @@ interface Surroundings {
   readonly prefix: string;
 }
 
+type Equation = LoopStatement['equations'][number];
+
+/** Something that a loop or one of its load cases says of the units of signals. */
+interface Constraint {
+  readonly statement: Statement;
+  check(): void;
+  /** Says what is wrong with it, after all others were taken for true. */
+  explain(): void;
+}
+
+/** A term of an equation, by its side. */
+interface Term {
+  readonly of: Expression;
+  readonly sign: 1 | -1;
+  readonly side: 'left' | 'right';
+}
+
+function termsOf(side: Expression, name: Term['side']): Term[] {
+  if (side.kind !== 'sum') return [{ of: side, sign: 1, side: name }];
+  return side.terms.map((of, index) => ({ of, sign: side.signs[index], side: name }));
+}
+
 class DimensionCheck {
-  private readonly inference = new Inference();
+  private inference = new Inference();
   private readonly measures = new Map<Expression, Measure>();
-  private readonly names = new Map<string, Measure>();
-  private readonly problems = new Map<Statement, Problem[]>();
-  private readonly started = new Set<string>();
+  private names = new Map<string, Measure>();
+  private problems = new Map<Statement, readonly Problem[]>();
+  private started = new Set<string>();
   private statement: Statement | null = null;
 
   constructor(private readonly source: DimensionSource) {}
@@ -123,7 +147,6 @@ class DimensionCheck {
   run(): void {
     const order: Statement['kind'][] = [
       'loop',
-      'case',
       'definition',
       'formula',
       'require',
@@ -159,16 +182,13 @@ class DimensionCheck {
 
   private complain(problem: Problem): void {
     const list = this.problems.get(this.statement!) ?? [];
-    list.push(problem);
-    this.problems.set(this.statement!, list);
+    this.problems.set(this.statement!, [...list, problem]);
   }
 
   private checkStatement(statement: Statement): void {
     switch (statement.kind) {
       case 'loop':
-        return this.checkLoop(statement, { loop: statement, owner: statement.name, prefix: '' });
-      case 'case':
-        return this.checkCase(statement);
+        return this.checkLoop(statement);
       case 'definition':
         this.measureOfName(statement.name);
         return;
@@ -184,57 +204,127 @@ class DimensionCheck {
     }
   }
 
-  private checkLoop(loop: LoopStatement, surroundings: Surroundings): void {
-    for (const use of loop.uses) {
+  /**
+   * Checks the equations of a loop and its load cases together, since each says something of the signals' units. Where they
+   * contradict each other, the one that the others do without is told what they say.
+   */
+  private checkLoop(loop: LoopStatement): void {
+    const constraints = [
+      ...this.equationsOf(loop, { loop, owner: loop.name, prefix: '' }),
+      ...this.source.statements.flatMap((statement) =>
+        statement.kind === 'case' && statement.loop.name === loop.name
+          ? this.caseConstraints(statement, loop)
+          : [],
+      ),
+    ];
+    const start = this.state();
+    const errorsWithout = (left: Constraint | null): number => {
+      this.restore(start);
+      const kept = constraints.filter((constraint) => constraint !== left);
+      for (const { statement, check } of kept) this.within(statement, check);
+      return this.errorCount - start.errors;
+    };
+    if (errorsWithout(null) === 0) return;
+    const culprit = culpritOf(constraints, errorsWithout);
+    errorsWithout(culprit);
+    if (culprit) this.within(culprit.statement, culprit.explain);
+  }
+
+  /** All that is known so far. */
+  private state() {
+    return {
+      inference: this.inference.copy(),
+      names: new Map(this.names),
+      started: new Set(this.started),
+      problems: new Map(this.problems),
+      errors: this.errorCount,
+    };
+  }
+
+  private restore(state: ReturnType<DimensionCheck['state']>): void {
+    this.inference = state.inference.copy();
+    this.names = new Map(state.names);
+    this.started = new Set(state.started);
+    this.problems = new Map(state.problems);
+  }
+
+  private get errorCount(): number {
+    return [...this.problems.values()].flat().filter(({ severity }) => severity === 'error').length;
+  }
+
+  private equationsOf(loop: LoopStatement, surroundings: Surroundings): Constraint[] {
+    const used = loop.uses.flatMap((use) => {
       const inner = this.source.entry(use.loop.name);
-      if (inner?.kind !== 'loop' || inner === loop) continue;
+      if (inner?.kind !== 'loop' || inner === loop) return [];
       const prefix = use.prefix ? `${surroundings.prefix}${use.prefix.name}.` : surroundings.prefix;
-      this.checkLoop(inner, { loop: inner, owner: surroundings.owner, prefix });
-    }
-    for (const { left, right, span } of loop.equations) {
-      this.agree(
-        left,
-        this.measure(left, surroundings),
-        right,
-        this.measure(right, surroundings),
-        span,
-        'equation',
-      );
-    }
+      return this.equationsOf(inner, { loop: inner, owner: surroundings.owner, prefix });
+    });
+    const own = loop.equations.map((equation) => ({
+      statement: this.statement!,
+      check: () => this.checkEquation(equation, surroundings),
+      explain: () => this.explainEquation(equation, surroundings),
+    }));
+    return [...used, ...own];
+  }
+
+  private checkEquation({ left, right, span }: Equation, surroundings: Surroundings): void {
+    const [a, b] = [left, right].map((side) => this.measure(side, surroundings));
+    this.agree(left, a, right, b, span, 'equation');
+  }
+
+  /** Says which term of an equation the others do without. */
+  private explainEquation(equation: Equation, surroundings: Surroundings): void {
+    const start = this.state();
+    const terms = [...termsOf(equation.left, 'left'), ...termsOf(equation.right, 'right')].map(
+      (term) => ({ ...term, measure: this.measure(term.of, surroundings) }),
+    );
+    const disagreements = (left: (typeof terms)[number] | null): number => {
+      this.restore(start);
+      const [first, ...others] = terms.filter((term) => term !== left);
+      return others.filter(({ measure }) => !this.inference.unify(first.measure, measure)).length;
+    };
+    const odd =
+      terms.length > 2 && this.errorCount === start.errors ? culpritOf(terms, disagreements) : null;
+    disagreements(odd);
+    const beside = odd && terms.find((term) => term !== odd && term.side === odd.side);
+    if (!odd || !beside) return this.checkEquation(equation, surroundings);
+    const [first, second] =
+      terms.indexOf(beside) < terms.indexOf(odd) ? [beside, odd] : [odd, beside];
+    const where = second.sign < 0 ? 'difference' : 'sum';
+    this.agree(first.of, first.measure, second.of, second.measure, equation.span, where);
   }
 
   private signal(owner: string, path: string): Measure {
     return unknownMeasure(`signal ${owner}.${path}`);
   }
 
-  private checkCase(statement: CaseStatement): void {
-    const loop = this.source.entry(statement.loop.name);
-    if (loop?.kind !== 'loop') return;
-    for (const line of statement.inputs) {
-      const wanted = mulMeasures(
-        this.signal(loop.name, line.input.name),
-        powMeasure(DERIVATIVE, line.order),
-      );
-      for (const term of line.sources) {
-        const measure = this.sourceMeasure(term.source);
-        if (measure && !this.inference.unify(wanted, measure))
-          this.sourceConflict(term.source, line.input.name, measure, wanted);
-        if (term.after) this.expect(term.after, TIME, 'a time');
-      }
-    }
-    for (const start of statement.starts) {
-      const path = memberPath(start.signal.kind === 'derivative' ? start.signal.of : start.signal);
-      if (path === null) continue;
-      const wanted = mulMeasures(this.signal(loop.name, path), powMeasure(DERIVATIVE, start.order));
-      this.agree(
-        start.signal,
-        wanted,
-        start.value,
-        this.measure(start.value, null),
-        start.span,
-        'value',
-      );
-    }
+  private caseConstraints(statement: CaseStatement, loop: LoopStatement): Constraint[] {
+    const sources = statement.inputs.flatMap((line) =>
+      line.sources.map((term) => () => this.checkSource(line, term, loop)),
+    );
+    const starts = statement.starts.map((start) => () => this.checkStart(start, loop));
+    return [...sources, ...starts].map((check) => ({ statement, check, explain: check }));
+  }
+
+  private checkSource(
+    line: CaseStatement['inputs'][number],
+    term: SourceTerm,
+    loop: LoopStatement,
+  ): void {
+    const signal = this.signal(loop.name, line.input.name);
+    const wanted = mulMeasures(signal, powMeasure(DERIVATIVE, line.order));
+    const measure = this.sourceMeasure(term.source);
+    if (measure && !this.inference.unify(wanted, measure))
+      this.sourceConflict(term.source, line.input.name, measure, wanted);
+    if (term.after) this.expect(term.after, TIME, 'a time');
+  }
+
+  private checkStart(start: CaseStatement['starts'][number], loop: LoopStatement): void {
+    const path = memberPath(start.signal.kind === 'derivative' ? start.signal.of : start.signal);
+    if (path === null) return;
+    const wanted = mulMeasures(this.signal(loop.name, path), powMeasure(DERIVATIVE, start.order));
+    const measure = this.measure(start.value, null);
+    this.agree(start.signal, wanted, start.value, measure, start.span, 'value');
   }
 
   /** A source's size has the unit of its input, times s for each integration. */

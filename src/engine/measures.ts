@@ -219,7 +219,16 @@ function unknownText([key, exponent]: readonly [string, number]): string {
 
 /** The dimensions inferred so far, and the one way to add to them. */
 export class Inference {
-  private readonly bound = new Map<string, Measure>();
+  private readonly bound: Map<string, Measure>;
+
+  constructor(bound: ReadonlyMap<string, Measure> = new Map()) {
+    this.bound = new Map(bound);
+  }
+
+  /** Another inference that knows the same so far. */
+  copy(): Inference {
+    return new Inference(this.bound);
+  }
 
   /** The measure with everything put in that is known. */
   settle(a: Measure): Measure {

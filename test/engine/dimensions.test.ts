@@ -101,12 +101,70 @@ describe('the dimensions of a loop', () => {
     expect(cell.problems).toEqual(['error at ‹b + 1 [kg]›: `b + 1 [kg]` adds N m s to kg.']);
   });
 
-  test('that cannot agree are errors at the equation', () => {
-    const { problems } = evaluateCell(
-      "J is 2 kg m^2\nk is 3 N m\nloop a driven by w\n  J theta'' = w - k theta'\ncase c of a\n  w = step(3 N m)",
-    );
-    expect(problems).toHaveLength(1);
-    expect(problems[0]).toMatch(/^error at ‹/);
+  test('are refused where a term of an equation does not fit the others', () => {
+    const { problems } = evaluateCell(`J is 2 kg m^2
+k is 3 N m/rad
+loop a driven by r, w
+  J theta'' = T + theta + w
+  T = k (r - theta)
+case c of a
+  w = step(3 N m)
+  r = step(2 mrad)`);
+    expect(problems).toEqual(["error at ‹J theta'' = T + theta + w›: `T + θ` adds N m to rad."]);
+  });
+
+  test('are refused where one equation contradicts the others', () => {
+    const { problems } = evaluateCell(`J is 2 kg m^2
+k is 3 N m s/rad
+loop a driven by r, w
+  T = k (r - theta)
+  J theta'' = T + w
+  e = r - theta
+case c of a
+  w = step(3 N m)
+  r = step(2 mrad)
+case d of a
+  w = ramp(1 N m/s)`);
+    expect(problems).toEqual(["error at ‹J theta'' = T + w›: `T + w` adds N m s to N m."]);
+  });
+
+  test('are refused where a load case contradicts the equations', () => {
+    const { problems } = evaluateCell(`J is 2 kg m^2
+k is 3 N m/rad
+loop a driven by w
+  J theta'' = w - k theta
+case c of a
+  w = step(3 N m)
+case d of a
+  w = step(3 kg)`);
+    expect(problems).toEqual([
+      'error at ‹step(3 kg)›: The input w is in N m, and `step(3 [kg])` gives kg.',
+    ]);
+  });
+
+  test('are those of the source, by its kind', () => {
+    const cell = (line: string) =>
+      evaluateCell(
+        `J is 2 kg m^2\nloop a driven by w\n  J omega' = w - 2 [N m s/rad] omega\ncase c of a\n  ${line}`,
+      ).problems;
+    for (const source of [
+      'step(3 N m)',
+      'ramp(3 N m/s)',
+      'parabola(3 N m/s^2)',
+      'impulse(3 N m s)',
+    ]) {
+      expect(cell(`w = ${source}`)).toEqual([]);
+    }
+    expect(cell("w' = step(3 N m/s)")).toEqual([]);
+    expect(cell('w = step(1 N m) + ramp(3 N m)')).toEqual([
+      'error at ‹ramp(3 N m)›: The input w is in N m, and `ramp(3 [N m])` gives N m s.',
+    ]);
+    expect(cell('w = step(3 N m) after 2 m')).toEqual([
+      'error at ‹2 m›: `2 [m]` is in m, and a time is needed here.',
+    ]);
+    expect(cell('w = step(3 N m)\n  omega starts at 3 rad')).toEqual([
+      'error at ‹omega starts at 3 rad›: `ω` is in rad/s, and `3 [rad]` is in rad.',
+    ]);
   });
 });
 
