@@ -1,7 +1,7 @@
 import { allOf, NO, YES, type Condition, type Value } from '../control/index.ts';
 import type { Expression, Relation, RequireStatement } from '../language/index.ts';
 import { formatExpression } from '../language/index.ts';
-import { conditionText, expressionLatex, valueText } from '../present/index.ts';
+import { conditionText, expressionLatex, valueText, wordsLatex } from '../present/index.ts';
 import { formatNumber, formatValue, unitText, valueIn, type Unit } from '../units/index.ts';
 import type { Derivations } from './derivations.ts';
 import { unitFor, type Display } from './display.ts';
@@ -48,23 +48,41 @@ export function stoppedRequirement(statement: RequireStatement): Content {
   return { ...blank(statement), verdict: 'undecided', notes: [], shown: 'undecided' };
 }
 
+/** A requirement that cannot be read. */
+export function unreadRequirement(label: string | null, text: string): Content {
+  return {
+    ...NO_NUMBERS,
+    label,
+    text,
+    latex: wordsLatex(text),
+    operator: null,
+    verdict: 'undecided',
+    notes: [],
+    shown: 'undecided',
+  };
+}
+
 function blank(statement: RequireStatement) {
   return {
+    ...NO_NUMBERS,
     label: statement.comment,
     text: formatExpression(statement.condition),
     latex: expressionLatex(statement.condition),
-    nominal: null,
-    worst: null,
-    limit: null,
     operator: relationOf(statement.condition)?.operators[0] ?? null,
-    unit: null,
-    how: 'proved' as const,
-    n: null,
-    at: null,
-    waitsFor: null,
-    dependsOn: [],
   };
 }
+
+const NO_NUMBERS = {
+  nominal: null,
+  worst: null,
+  limit: null,
+  unit: null,
+  how: 'proved' as const,
+  n: null,
+  at: null,
+  waitsFor: null,
+  dependsOn: [],
+};
 
 function settled(request: RequirementRequest, verdict: Verdict, notes: readonly string[]): Content {
   return {

@@ -2,6 +2,7 @@ import { errorAt, type Problem } from '../base/index.ts';
 import { FUNCTIONS } from '../functions/index.ts';
 import {
   namesIn,
+  type BrokenStatement,
   type DefinitionStatement,
   type DrawStatement,
   type Expression,
@@ -18,9 +19,14 @@ import { displayOf } from './display.ts';
 import { figureContent } from './figures.ts';
 import type { Numbers, Subject } from './numbers.ts';
 import type { Queries } from './queries.ts';
-import type { RequirementContent, ResultContent } from './report.ts';
+import type { RequirementContent, ResultContent, ResultKind } from './report.ts';
 import { freeReferences } from './references.ts';
-import { relationOf, requirementContent, stoppedRequirement } from './requirements.ts';
+import {
+  relationOf,
+  requirementContent,
+  stoppedRequirement,
+  unreadRequirement,
+} from './requirements.ts';
 import { absentPlace, erroneousContent, resultContent, type ResultRequest } from './results.ts';
 import { BASE_SCOPE } from './scope.ts';
 import { outcomeOf, type Outcome } from './stop.ts';
@@ -31,6 +37,15 @@ export interface StatementReport {
   readonly requirement: RequirementContent | null;
   readonly problems: readonly Problem[];
 }
+
+/** The kinds of rows by the statements that have one. */
+const ROW_KINDS: Partial<Record<Statement['kind'], ResultKind>> = {
+  definition: 'value',
+  formula: 'value',
+  draw: 'figure',
+  explain: 'text',
+  tabulate: 'table',
+};
 
 const NOTHING: StatementReport = Object.freeze({ result: null, requirement: null, problems: [] });
 
@@ -91,9 +106,21 @@ export class Statements {
         return unavailable(node, 'Tables (`tabulate`) are not available yet.', 'table');
       case 'points':
         return unavailable(node, 'Operating points (`points`) are not available yet.', null);
+      case 'broken':
+        return this.brokenReport(node);
       default:
         return NOTHING;
     }
+  }
+
+  /** What cannot be read has its row all the same; the problem is that of reading it. */
+  private brokenReport(node: BrokenStatement): StatementReport {
+    const kind = (node.meant && ROW_KINDS[node.meant]) ?? null;
+    if (kind) return { ...NOTHING, result: erroneousContent(node.name, kind) };
+    if (node.meant !== 'require') return NOTHING;
+    const source = this.sources.get(node)?.slice(node.span.from, node.span.to) ?? '';
+    const text = source.replace(/^require\s*/, '');
+    return { ...NOTHING, requirement: unreadRequirement(node.comment, text) };
   }
 
   private loopOutcome(name: string): Outcome<unknown> | null {

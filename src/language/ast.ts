@@ -403,6 +403,8 @@ export interface TabulateStatement extends StatementBase {
 export interface BrokenStatement extends StatementBase {
   readonly kind: 'broken';
   readonly name: string | null;
+  /** What it would be if it could be read; null where not even that is clear. */
+  readonly meant: Exclude<Statement['kind'], 'broken'> | null;
 }
 
 /** A statement at its place in the worksheet. */

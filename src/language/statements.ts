@@ -60,7 +60,8 @@ export function readStatement(source: StatementSource, context: NameContext): Re
   const node = readByFirstWord(reader, base, block);
   if (reader.isSound || keepsItsBlock(node)) return frozen({ node, problems });
   const name = introductionsOf(source)[0]?.name ?? null;
-  return frozen({ node: { kind: 'broken', ...base, name }, problems });
+  const meant = node.kind === 'broken' ? null : node.kind;
+  return frozen({ node: { kind: 'broken', ...base, name, meant }, problems });
 }
 
 /** Freezes a value of plain objects and arrays, all the way down. */
@@ -88,7 +89,7 @@ function readByFirstWord(reader: LineReader, base: Base, block: BlockReading): S
 }
 
 function broken(base: Base): Statement {
-  return { kind: 'broken', ...base, name: null };
+  return { kind: 'broken', ...base, name: null, meant: null };
 }
 
 function failReserved(reader: LineReader, base: Base): Statement {
