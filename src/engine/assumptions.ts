@@ -65,8 +65,8 @@ function readTolerance(
   units: CustomUnits,
 ): ToleranceReading {
   if (tolerance.kind === 'range') return readRange(node, tolerance, unit, value, units);
-  const half = halfWidth(node, tolerance.half, unit, value, units);
-  if (!(half >= 0))
+  const [low, high] = boundsAround(node, tolerance.half, unit, value, units);
+  if (Number(tolerance.half.text) < 0)
     stopAt(
       tolerance.half.span,
       'negative-tolerance',
@@ -80,8 +80,25 @@ function readTolerance(
       'The number of standard deviations is positive, as in `at 3 sigma`.',
     );
   }
-  const sigma = sigmas === null ? null : half / sigmas;
-  return { low: value.value - half, high: value.value + half, sigma };
+  const sigma = sigmas === null ? null : (high - low) / (2 * sigmas);
+  return { low, high, sigma };
+}
+
+/** Nominal minus and plus the half-width; decibels are added as decibels, so that the ratio is multiplied and divided. */
+function boundsAround(
+  node: AssumptionStatement,
+  half: Quantity,
+  unit: Unit,
+  value: SiQuantity,
+  units: CustomUnits,
+): readonly [number, number] {
+  if (unit.logarithmic && half.unit !== '%') {
+    if (half.unit !== '') requireSameKind(half, unitOfQuantity(half, units), unit, node.name);
+    const factor = siOfQuantity(half, unit).value;
+    return [value.value / factor, value.value * factor];
+  }
+  const width = halfWidth(node, half, unit, value, units);
+  return [value.value - width, value.value + width];
 }
 
 function halfWidth(
@@ -101,6 +118,13 @@ function halfWidth(
       half.span,
       'percent-of-percent',
       `${node.name} is in %, so ± % could mean two things; give the tolerance as a number without unit.`,
+    );
+  }
+  if (unit.logarithmic) {
+    stopAt(
+      half.span,
+      'percent-of-decibels',
+      `${node.name} is in dB, so ± % could mean two things; give the tolerance in dB.`,
     );
   }
   if (Number(unit.offset.split('/')[0]) !== 0) {

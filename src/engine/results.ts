@@ -68,6 +68,7 @@ export function resultContent(
   const { display } = request;
   const shown = shownText(nominal.value, display, request.hints);
   const parts = partsOf(value, numbers, writing);
+  const hasNoDecibels = Array.isArray(nominal.value) && display.fixed?.logarithmic;
   return {
     name: request.name,
     nameLatex: request.name && nameToLatex(request.name),
@@ -84,6 +85,9 @@ export function resultContent(
         ...value.notes,
         ...request.notes,
         ...display.notes,
+        ...(hasNoDecibels
+          ? ['A complex number has no decibels; take its magnitude, `abs(…)`.']
+          : []),
         ...vanishingNotes(request.subject, numbers, derivations),
         ...nominal.notes,
       ]),
@@ -260,7 +264,18 @@ function shownText(
   if (value === null) return null;
   if (typeof value === 'boolean') return value ? 'holds' : 'does not hold';
   if (typeof value === 'number') return showValue(value, display, hints);
-  const [re, im] = value;
+  return complexText(
+    value,
+    display.fixed?.logarithmic ? { ...display, fixed: null } : display,
+    hints,
+  );
+}
+
+function complexText(
+  [re, im]: readonly [number, number],
+  display: Display,
+  hints: readonly Unit[],
+): string {
   return `${showValue(re, display, hints)} ${im < 0 ? '-' : '+'} j ${showValue(Math.abs(im), display, hints)}`;
 }
 
