@@ -153,7 +153,7 @@ function readArgument(
     case 'loop or polynomial':
       return isLoop(arg, meanings)
         ? { kind: 'loop', loop: loopArgument(arg, spec, scope, meanings) }
-        : { kind: 'value', value: meanings.evaluate(arg, scope) };
+        : { kind: 'value', value: valueArgument(parameter, arg, spec, scope, meanings) };
     case 'signal name':
       return {
         kind: 'name',

@@ -28,6 +28,7 @@ import {
 import { sourceNamed } from '../functions/index.ts';
 import {
   formatExpression,
+  nameToText,
   nearestName,
   type CaseStatement,
   type Expression,
@@ -69,6 +70,7 @@ interface ActingSource {
 /** Reads a load case; stops at unknown inputs, unknown sources and sources that are not available yet. */
 export function readCase(statement: CaseStatement, scope: Scope, meanings: Meanings): CaseRecord {
   const loop = meanings.loopOf(statement.loop.name, statement.loop.span, scope);
+  refuseSecondLines(statement);
   const acting = statement.inputs.flatMap((line) => {
     const input = requireSignal(loop, line.input, 'input');
     return line.sources.map((term) => readSource(term, input, line.order, scope, meanings));
@@ -79,6 +81,26 @@ export function readCase(statement: CaseStatement, scope: Scope, meanings: Meani
     acting,
     starts: readStarts(statement, loop, scope, meanings),
   };
+}
+
+/** A case gives each input and each initial value in one line. */
+function refuseSecondLines({ inputs, starts, name }: CaseStatement): void {
+  const given = new Set<string>();
+  for (const { input, span } of inputs) {
+    if (given.has(input.name))
+      stopAt(
+        span,
+        'given-twice',
+        `${nameToText(input.name)} is given twice in ${name}; add its sources in one line.`,
+      );
+    given.add(input.name);
+  }
+  for (const { signal, order, span } of starts) {
+    const text = formatExpression(signal) + "'".repeat(order);
+    if (given.has(`${text} starts`))
+      stopAt(span, 'given-twice', `${text} starts twice in ${name}; keep one of the two lines.`);
+    given.add(`${text} starts`);
+  }
 }
 
 function readSource(
@@ -138,12 +160,11 @@ function splitSource(source: Expression): {
   call: Extract<Expression, { kind: 'call' }>;
 } {
   if (source.kind === 'call') return { factor: null, call: source };
-  if (source.kind === 'product' && !source.inverted.includes(true)) {
+  if (source.kind === 'product' && !source.inverted.at(-1)) {
     const call = source.factors.at(-1)!;
     if (call.kind === 'call') {
-      const rest = source.factors.slice(0, -1);
-      const factor =
-        rest.length === 1 ? rest[0] : { ...source, factors: rest, inverted: rest.map(() => false) };
+      const [rest, inverted] = [source.factors.slice(0, -1), source.inverted.slice(0, -1)];
+      const factor = rest.length === 1 ? rest[0] : { ...source, factors: rest, inverted };
       return { factor, call };
     }
   }
@@ -194,6 +215,12 @@ function readStarts(
   return statement.starts.map((start) => {
     const { name } = namedSignal(start.signal);
     const signal = requireSignal(loop, start.signal, 'any');
+    if (loop.inputs.includes(signal))
+      stopAt(
+        start.span,
+        'input-starts',
+        `${nameToText(signal)} is an input of ${loop.name}; its value from t = 0 on is that of its source.`,
+      );
     const input = initialValueName(name, start.order);
     if (!loop.initialRows.some((row) => row.has(input))) {
       stopAt(

@@ -21,9 +21,9 @@ export function evaluateCell(cell: string): CellReport {
   return {
     report,
     result: (statement) => {
-      const row = report.results.find(
-        ({ from, content }) => content.name === statement || text.startsWith(statement, from),
-      );
+      const row =
+        report.results.find(({ content }) => content.name === statement) ??
+        report.results.find(({ from }) => text.startsWith(statement, from));
       invariant(row, `the cell has no result ${statement}`);
       return row.content;
     },
