@@ -43,6 +43,7 @@ import { referencesOf, type Catalogue, type Entry } from './catalogue.ts';
 import { constantOf } from './constants.ts';
 import { evaluate } from './evaluate.ts';
 import { evaluateFraction } from './fractions.ts';
+import { signalsInText } from './loop-signals.ts';
 import { readLoop } from './loops.ts';
 import type { LoopRecord, Meanings } from './meanings.ts';
 import type { Queries } from './queries.ts';
@@ -250,9 +251,22 @@ export class Derivations implements Meanings {
   loopOf(name: string, span: Span, scope: Scope): LoopRecord {
     const kind = this.kindOf(name);
     if (kind === 'unavailable') waitFor(name);
-    if (kind !== 'loop') stopAt(span, 'not-a-loop', `${name} is not a loop of this worksheet.`);
+    if (kind !== 'loop') this.notALoop(name, span);
     const relevant = relevantScope(scope, this.reachOf(name));
     return this.settle(name, span, relevant, this.loop(name, relevant));
+  }
+
+  private notALoop(name: string, span: Span): never {
+    const near = nearestName(
+      name,
+      this.knownNames().filter((known) => this.kindOf(known) === 'loop'),
+    );
+    stopAt(
+      span,
+      'not-a-loop',
+      `${name} is not a loop of this worksheet.${near ? ` Is ${near} meant?` : ''}`,
+      near ? [{ title: `Write ${near}`, edits: [{ span, insert: near }] }] : [],
+    );
   }
 
   /** A loop as read and closed in a scope. */
@@ -423,13 +437,12 @@ export class Derivations implements Meanings {
   }
 
   loopsWithSignal(name: string): readonly string[] {
-    return [...this.catalogue.entries]
-      .filter(([, entry]) => entry.kind === 'loop')
-      .map(([loop]) => loop)
-      .filter((loop) => {
-        const outcome = this.kindOf(loop) === 'loop' ? this.loop(loop, BASE_SCOPE) : null;
-        return outcome?.ok && [...outcome.value.inputs, ...outcome.value.unknowns].includes(name);
-      });
+    const { entries } = this.catalogue;
+    return [...entries.values()].flatMap((entry) =>
+      entry.kind === 'loop' && signalsInText(entry.node, entries).has(name)
+        ? [entry.node.name]
+        : [],
+    );
   }
 }
 
