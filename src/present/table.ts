@@ -1,6 +1,8 @@
-import type { Ratio } from '../algebra/index.ts';
+import { asRational, rationalToNumber, type Ratio } from '../algebra/index.ts';
 import type { RouthArray } from '../control/index.ts';
+import { formatNumber } from '../units/index.ts';
 import { formulaLatex, formulaText } from './formula.ts';
+import { numberLatex } from './written-latex.ts';
 import type { Writing } from './writing.ts';
 
 /** The entries of a Routh array as re-readable formulas, row by row from the highest power of s. */
@@ -20,13 +22,23 @@ export function routhText(array: RouthArray, writing: Writing): string {
 export function routhLatex(array: RouthArray, writing: Writing): string {
   const columns = Math.max(1, ...array.rows.map(({ entries }) => entries.length));
   const rows = array.rows.map(({ power, entries, special }) => {
-    const cells = entries.map((entry) => formulaLatex(entry, writing));
+    const cells = entries.map((entry) => entryLatex(entry, writing));
     const padding = Array<string>(columns - cells.length).fill('');
     const mark = special === null ? '' : `\\;\\leftarrow\\text{ ${special}}`;
     return [powerLatex(power), ...cells, ...padding].join(' & ') + mark;
   });
   const body = rows.join(' \\\\[2pt] ');
   return `\\begin{array}{c|${'c'.repeat(columns)}} ${body} \\end{array}`;
+}
+
+/** Characters of an exact number in an array; a longer one, such as a fraction of products, is rounded for reading. */
+const LONGEST_NUMBER = 12;
+
+function entryLatex(entry: Ratio, writing: Writing): string {
+  const exact = asRational(entry);
+  const isLong = exact !== null && formulaText(entry, writing).length > LONGEST_NUMBER;
+  if (!isLong) return formulaLatex(entry, writing);
+  return `\\approx ${numberLatex(formatNumber(rationalToNumber(exact)))}`;
 }
 
 function powerLatex(power: number): string {

@@ -39,6 +39,15 @@ describe('a Routh array', () => {
     katex.renderToString(latex, { strict: 'error' });
   });
 
+  it('rounds what is too long to read, and says so; the rows stay exact', () => {
+    // Third row of s^3 + 1.23457 s^2 + 7.65432 s + 3.14159: 7.65432 − 3.14159/1.23457
+    const long = arrayOf('s^3 + 123457/100000 s^2 + 765432/100000 s + 314159/100000');
+    const latex = routhLatex(long, writing);
+    expect(latex).toMatch(/s\^\{1\} & \\approx [\d\\,]+/);
+    expect(routhRows(long, writing)[2][0]).toMatch(/\d{5,}\/\d{5,}/);
+    katex.renderToString(latex, { strict: 'error' });
+  });
+
   it('marks the row of a special case', () => {
     // s^3 + s^2 + 4 s + 4: the row of s^1 vanishes, its auxiliary polynomial is s^2 + 4. From memory, no source.
     const latex = routhLatex(arrayOf('s^3 + s^2 + 4 s + 4'), writing);
