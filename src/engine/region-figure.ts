@@ -30,6 +30,7 @@ import {
   type FigureContent,
   type FigureSources,
 } from './figure-sources.ts';
+import { rangeAround } from './gain-range.ts';
 import { plainName, type Numbers, type Subject } from './numbers.ts';
 import { BASE_SCOPE } from './scope.ts';
 import { outcomeOf, Stop, stopAt, type Outcome } from './stop.ts';
@@ -82,7 +83,7 @@ interface GainSide {
   readonly unit: Unit;
 }
 
-/** One side of a gain plane: the tuned range of the gain, in its typed unit. Its present value is not part of it. */
+/** One side of a gain plane: the tuned range of the gain, in its typed unit, else a round one around its value. */
 function gainSide(gain: Expression, sources: FigureSources): Outcome<GainSide> {
   return sources.queries.get(
     `gain-side:${sources.key}:${gain.span.from}`,
@@ -107,19 +108,17 @@ function readGainSide(
   }
   if (!reading.ok) throw new Stop(null, gain.name);
   const tune = queries.input<Catalogue>('catalogue').tunes.get(gain.name);
-  if (!tune) {
+  const { unit, value } = reading.value;
+  const bounds = tune
+    ? readBounds(tune.node.from, tune.node.to, unit, gain.name, derivations.customUnits()).map(
+        (si) => valueIn(si, unit),
+      )
+    : rangeAround(valueIn(value.value, unit));
+  if (!bounds) {
     const fix = `add \`tune ${gain.name} from … to …\``;
     return stopAt(gain.span, 'not-tuned', `${gain.name} has no range to draw over; ${fix}.`);
   }
-  const { unit } = reading.value;
-  const bounds = readBounds(
-    tune.node.from,
-    tune.node.to,
-    unit,
-    gain.name,
-    derivations.customUnits(),
-  );
-  const [from, to] = bounds.map((si) => valueIn(si, unit));
+  const [from, to] = bounds;
   if (!(from < to))
     stopAt(gain.span, 'empty-range', `The range over which ${gain.name} is tuned is empty.`);
   return { name: gain.name, axis: axisOf(gain.name, unitText(unit), from, to), unit };

@@ -15,7 +15,7 @@ import { Derivations } from './derivations.ts';
 import { loopRows } from './loop-rows.ts';
 import { Numbers } from './numbers.ts';
 import { Queries } from './queries.ts';
-import { referenceRows } from './reference-rows.ts';
+import { referenceProblems, referenceRows } from './reference-rows.ts';
 import type { Placed, Report, RequirementContent, ResultContent } from './report.ts';
 import { Statements } from './statements.ts';
 import { unitProblems } from './unit-statements.ts';
@@ -110,7 +110,11 @@ class WorksheetSession implements Session {
       results,
       requirements,
       assumptions: assumptions.rows,
-      problems: sortedProblems([...problems, ...assumptions.problems]),
+      problems: sortedProblems([
+        ...problems,
+        ...assumptions.problems,
+        ...referenceProblems(document.references, this.derivations),
+      ]),
       references: referenceRows(document.references, results, this.statements),
       loops: loopRows(document.statements, this.derivations, lineOf),
     };

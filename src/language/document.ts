@@ -57,7 +57,9 @@ export function parseWorksheet(
   vocabulary: Vocabulary,
   previous?: WorksheetDocument,
 ): WorksheetDocument {
-  const tree = worksheetParser.parse(text, previous ? unchangedFragments(previous, text) : []);
+  // A byte order mark hides the sign of a heading or a fence from the reader of Markdown; a space does not.
+  const marked = text.replace(/^\uFEFF/, ' ');
+  const tree = worksheetParser.parse(marked, previous ? unchangedFragments(previous, text) : []);
   const { fences, ...parts } = worksheetParts(tree, text);
   const places = fences.flatMap((fence) => statementPlaces(fence, text));
   const memory = previous ? (memories.get(previous) ?? new Map()) : new Map();
