@@ -19,6 +19,7 @@ import {
 } from '../algebra/index.ts';
 import { decimalOver, isDecimalOver, writeNumber } from './exact-number.ts';
 import { inFactors, mainOf, withoutContent, type Factored } from './factored.ts';
+import { withRootsBelow } from './roots-below.ts';
 import {
   ZERO,
   fractionOf,
@@ -43,8 +44,11 @@ const SMALLEST_DIVISOR = 10n;
  */
 export function arrangeRatio(r: Ratio, layout: Layout): Written {
   if (isZeroPolynomial(r.num)) return ZERO;
-  const whole = isOnePolynomial(r.den) ? polynomialForm(r.num, 1n, layout) : wholeForm(r, layout);
-  const decimal = decimalForm(r, layout);
+  const { num, den } = withRootsBelow(r);
+  const whole = isOnePolynomial(den)
+    ? polynomialForm(num, 1n, layout)
+    : wholeForm(num, den, layout);
+  const decimal = decimalForm(num, den, layout);
   return decimal === null ? whole : shorter(whole, decimal);
 }
 
@@ -59,26 +63,26 @@ function shorter(first: Written, second: Written): Written {
 }
 
 /** One fraction with whole numbers. */
-function wholeForm(r: Ratio, layout: Layout): Written {
-  const top = factorsOf(r.num, layout);
-  const bottom = factorsOf(r.den, layout);
+function wholeForm(num: Polynomial, den: Polynomial, layout: Layout): Written {
+  const top = factorsOf(num, layout);
+  const bottom = factorsOf(den, layout);
   const number = writeNumber(top.number, bottom.number);
-  const num = productOf([number.num, ...factorForms(top, layout)]);
-  const den = productOf([number.den, ...factorForms(bottom, layout)]);
-  return signed(top.negative !== bottom.negative, fractionOf(num, den));
+  const above = productOf([number.num, ...factorForms(top, layout)]);
+  const below = productOf([number.den, ...factorForms(bottom, layout)]);
+  return signed(top.negative !== bottom.negative, fractionOf(above, below));
 }
 
 /**
  * Numerator and denominator over the leading number of the denominator, as `1/(s^2 + 1.2 s + 0.5)`; null if that is
  * small, or a number over it is no decimal.
  */
-function decimalForm(r: Ratio, layout: Layout): Written | null {
-  const divisor = leadingNumber(r.den, layout);
+function decimalForm(num: Polynomial, den: Polynomial, layout: Layout): Written | null {
+  const divisor = leadingNumber(den, layout);
   if (divisor === null || divisor < SMALLEST_DIVISOR) return null;
-  const all = [...termsOf(r.num), ...termsOf(r.den)];
+  const all = [...termsOf(num), ...termsOf(den)];
   if (!all.every(({ coefficient }) => isDecimalOver(coefficient, divisor))) return null;
-  const num = polynomialForm(r.num, divisor, layout);
-  return fractionWith(num, polynomialForm(r.den, divisor, layout));
+  const above = polynomialForm(num, divisor, layout);
+  return fractionWith(above, polynomialForm(den, divisor, layout));
 }
 
 /** A fraction with the sign of its numerator in front. */

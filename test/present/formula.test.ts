@@ -44,6 +44,11 @@ describe('a formula is written as an engineer writes it', () => {
     ['J s + b + Kp exp(-Td s)', 'J s + b + Kp delay(Td)'],
     ['a^2 d + a d^2', 'a d (a + d)'],
     ['sqrt(Kp/J)/2', 'sqrt(Kp/J)/2'],
+    ['b/(2 sqrt(J Kp))', 'b/(2 sqrt(J Kp))'],
+    ['1/sqrt(2 J Kp)', '1/sqrt(2 J Kp)'],
+    ['1/sqrt(Kp/J)', '1/sqrt(Kp/J)'],
+    ['b/sqrt(a + d)', 'b/sqrt(a + d)'],
+    ['(b + sqrt(J Kp))/(J Kp)', '(b + sqrt(J Kp))/(J Kp)'],
     ['nominal(J) Kp', 'Kp nominal(J)'],
     ['(a + c)^2 s/(a + d)^2', '(a + c)^2 s/(a + d)^2'],
   ])('%s is %s', (given, expected) => {
