@@ -20,3 +20,4 @@ export type { CramerSolution, PolynomialMatrix } from './elimination.ts';
 export * from './sign.ts';
 export * from './real-roots.ts';
 export { ResiduePoint } from './residue-point.ts';
+export { areSame } from './sameness.ts';

@@ -17,7 +17,6 @@ export function rational(n: bigint | number, d: bigint | number = 1n): Rational 
   return Object.freeze({ n: top / divisor, d: bottom / divisor });
 }
 
-export const zeroRational = rational(0n);
 export const oneRational = rational(1n);
 
 const DECIMAL = /^([+-]?)(\d*)(?:\.(\d*))?(?:[eE]([+-]?\d{1,4}))?$/;
