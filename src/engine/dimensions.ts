@@ -162,9 +162,9 @@ class DimensionCheck {
 
   report(): DimensionReport {
     const settled = (measure: Measure | undefined): Measure | null => {
-      if (!measure || fitsAnywhere(measure)) return null;
+      if (!measure) return null;
       const known = this.inference.settle(measure);
-      return known.unknowns.size === 0 ? known : null;
+      return known.unknowns.size === 0 && !fitsAnywhere(known) ? known : null;
     };
     return {
       problems: this.problems,

@@ -34,8 +34,10 @@ export function requirementContent(
     return settled(request, 'undecided', [
       'With the values that are exactly 0 left out, this cannot be derived.',
     ]);
-  if (compiled.value.kind === 'none')
-    return settled(request, 'not met', [`No value: ${compiled.value.reason}`]);
+  if (compiled.value.kind === 'none') {
+    const why = valueText(compiled.value, derivations.writing());
+    return settled(request, 'not met', [`No value: ${why}`]);
+  }
   if (compiled.value.kind !== 'condition')
     return settled(request, 'undecided', ['A requirement is a condition.']);
   const missing = numbers.missing(compiled);

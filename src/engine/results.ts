@@ -7,7 +7,14 @@ import {
   rationalToNumber,
   asRational,
 } from '../algebra/index.ts';
-import type { ArrayValue, FormulaValue, PartsValue, RootsValue, Value } from '../control/index.ts';
+import type {
+  ArrayValue,
+  FormulaValue,
+  NoValue,
+  PartsValue,
+  RootsValue,
+  Value,
+} from '../control/index.ts';
 import { ALWAYS, compileRatios, UNDECIDED, YES } from '../control/index.ts';
 import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
 import { polynomialRoots } from '../numeric/index.ts';
@@ -38,6 +45,7 @@ import {
   type Points,
   type Subject,
 } from './numbers.ts';
+import { DERIVATIVE, mulMeasures, powMeasure } from './measures.ts';
 import type { ResultContent, ResultKind, SpanContent } from './report.ts';
 import { vanishingNotes } from './vanishing.ts';
 import { sampleBox } from './tolerance.ts';
@@ -63,7 +71,7 @@ export function resultContent(
   numbers: Numbers,
 ): ResultContent {
   const writing = derivations.writing();
-  const nominal = nominalValue(request.subject, numbers, derivations);
+  const nominal = nominalValue(request, numbers, derivations);
   const formula = formulaOf(value, writing);
   const { display } = request;
   const shown = shownText(nominal.value, display, request.hints);
@@ -166,7 +174,12 @@ interface NominalValue {
 
 const NO_VALUE: NominalValue = { value: null, notes: [] };
 
-function nominalValue(subject: Subject, numbers: Numbers, derivations: Derivations): NominalValue {
+function nominalValue(
+  request: ResultRequest,
+  numbers: Numbers,
+  derivations: Derivations,
+): NominalValue {
+  const { subject } = request;
   const writing = derivations.writing();
   const compiled = numbers.compiled(subject, numbers.zeroScope(numbers.zeros(subject)));
   if (!compiled)
@@ -175,8 +188,13 @@ function nominalValue(subject: Subject, numbers: Numbers, derivations: Derivatio
       notes: ['With the values that are exactly 0 left out, this cannot be derived.'],
     };
   const { value } = compiled;
-  if (value.kind === 'none')
-    return { value: null, notes: [`No value: ${valueText(value, writing)}`] };
+  if (value.kind === 'none') {
+    const failure = failureOf(value.when, numbers, writing) ?? valueText(value, writing);
+    return {
+      value: null,
+      notes: [`No value: ${failure}`, ...growthNotes(value, request, numbers)],
+    };
+  }
   if (value.kind !== 'formula' && value.kind !== 'condition') return NO_VALUE;
   if (value.kind === 'formula' && !compiled.ratios) return NO_VALUE;
   const missing = numbers.missing(compiled);
@@ -186,6 +204,24 @@ function nominalValue(subject: Subject, numbers: Numbers, derivations: Derivatio
   const undecided = undecidedReason(compiled, evaluated, numbers, writing);
   if (undecided) return { value: null, notes: [`Undecided: ${undecided}.`] };
   return { value: numberIn(compiled, evaluated), notes: [] };
+}
+
+/** How fast a signal grows that has no final value, as a number with its unit. */
+function growthNotes(
+  { growth }: NoValue,
+  { display, hints }: ResultRequest,
+  numbers: Numbers,
+): readonly string[] {
+  const rate = growth && numbers.valueOfRatio(growth.rate);
+  if (!growth || rate === null || !Number.isFinite(rate)) return [];
+  const measure =
+    display.measure && mulMeasures(display.measure, powMeasure(DERIVATIVE, growth.power));
+  const shown = showValue(rate, { ...display, fixed: null, measure, factor: 1 }, hints);
+  return [
+    growth.power === 1
+      ? `At the nominal values the rate is ${shown}.`
+      : `At the nominal values that derivative is ${shown}.`,
+  ];
 }
 
 /** Without some of the numbers only the signs can decide a condition. */
