@@ -31,7 +31,7 @@ import {
 import { atLaplacePoint, valueAt } from './at-point.ts';
 import { callFunction } from './calls.ts';
 import type { Meanings } from './meanings.ts';
-import { quantityRatio } from './quantities.ts';
+import { quantityRatio, requireUnit } from './quantities.ts';
 import { replacementsOf } from './replacements.ts';
 import type { Scope } from './scope.ts';
 import { stopAt, waitFor } from './stop.ts';
@@ -72,6 +72,7 @@ export function evaluate(expression: Expression, scope: Scope, meanings: Meaning
     case 'with':
       return withValue(expression, scope, meanings);
     case 'in-unit':
+      requireUnit(expression, meanings);
       return inner(expression.of);
     case 'arrow':
     case 'limit':

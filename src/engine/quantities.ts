@@ -10,7 +10,7 @@ import {
   type Ratio,
 } from '../algebra/index.ts';
 import { isRefusal } from '../base/index.ts';
-import type { Quantity } from '../language/index.ts';
+import type { InUnit, Quantity } from '../language/index.ts';
 import {
   parseUnit,
   quantityToSI,
@@ -24,6 +24,14 @@ import { demand } from './stop.ts';
 /** The unit of a quantity as typed; stops at it where it is none. */
 export function unitOfQuantity(quantity: Quantity, units: CustomUnits): Unit {
   return demand(parseUnit(quantity.unit, units), quantity.unitSpan);
+}
+
+/** Stops at the unit of `x in mrad` where it is none. */
+export function requireUnit(
+  { unit, unitSpan }: InUnit,
+  meanings: { customUnits(): CustomUnits },
+): void {
+  demand(parseUnit(unit, meanings.customUnits()), unitSpan);
 }
 
 /** A quantity in coherent SI units. */

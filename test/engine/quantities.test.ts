@@ -277,6 +277,26 @@ describe('units of the worksheet', () => {
     ['unit q is -3 m', 'm', 'the unit q needs a size greater than 0.'],
     ['unit q is 3 °C', '°C', 'q cannot be defined in °C.'],
     ['k has unit foo', 'foo', "'foo' is not a unit."],
+    ['x = 3 in foo', 'foo', "'foo' is not a unit."],
+    ['x = 3 [foo]', 'foo', "'foo' is not a unit."],
+    [
+      'x = 3 [m s/kg s]',
+      'm s/kg s',
+      '`m s/kg s` can be read in two ways: what follows a solidus needs brackets (ISO 80000-2).',
+    ],
+    ['x = [m]', '[', '`=` needs a formula after it, not `[`.'],
+    [
+      'x = 3 [m] [s]',
+      '[',
+      'Square brackets hold the unit of the number before them, as in `3 [rad/s]`.',
+    ],
+    ['x = 3 []', ']', 'A square bracket after a number needs a unit, not `]`.'],
+    ['x = 5 [N m', '[', 'This bracket is not closed.'],
+    [
+      'x = 5 N m + 3',
+      'N m',
+      'In a formula a unit stands in square brackets after its number: `5 [N m]`.',
+    ],
   ])('%s is refused', (statement, at, message) => {
     expect(problemsOf(statement)).toEqual([`error at ‹${at}›: ${message}`]);
   });
