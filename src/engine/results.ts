@@ -9,13 +9,14 @@ import {
 } from '../algebra/index.ts';
 import type {
   ArrayValue,
+  Condition,
   FormulaValue,
   NoValue,
   PartsValue,
   RootsValue,
   Value,
 } from '../control/index.ts';
-import { ALWAYS, compileRatios, UNDECIDED, YES } from '../control/index.ts';
+import { ALWAYS, allOf, compileRatios, UNDECIDED, YES } from '../control/index.ts';
 import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
 import { polynomialRoots } from '../numeric/index.ts';
 import {
@@ -260,7 +261,10 @@ function numberIn(compiled: Compiled, evaluated: Evaluated): ResultContent['valu
     : jsonComplex({ re, im: evaluated.columns[output.im][0] });
 }
 
-/** Where the formula divides by 0 at the nominal, it is derived anew in exact numbers before it is given up. */
+/**
+ * Where the formula divides by 0 at the nominal, or is one for other values (two roots that are equal there), it is
+ * derived anew in exact numbers before it is given up. What is unstable there needs no second look.
+ */
 function absentAtNominal(
   subject: Subject,
   compiled: Compiled,
@@ -268,7 +272,8 @@ function absentAtNominal(
   writing: Writing,
 ): NominalValue {
   const failure = failureOf(compiled.value.when, numbers, writing);
-  if (failure) return { value: null, notes: [`No value at the nominal: ${failure}.`] };
+  if (failure && failureOf(stabilityIn(compiled.value.when), numbers, writing))
+    return { value: null, notes: [`No value at the nominal: ${failure}.`] };
   const scope = numbers.exactScope(subject);
   const exact = scope && numbers.compiled(subject, scope);
   if (exact?.value.kind === 'none')
@@ -279,13 +284,17 @@ function absentAtNominal(
     if (evaluated.exists[0] && !leavesTheReals)
       return {
         value: numberIn(exact, evaluated),
-        notes: ['Derived anew at the nominal values, where the formula divides by 0.'],
+        notes: ['Derived anew at the nominal values, where the formula does not hold.'],
       };
   }
-  return {
-    value: null,
-    notes: ['No value at the nominal: the formula divides by 0 there, or is not real.'],
-  };
+  const why = failure ?? 'the formula divides by 0 there, or is not real';
+  return { value: null, notes: [`No value at the nominal: ${why}.`] };
+}
+
+/** The part of a condition that asks for stability. */
+function stabilityIn(condition: Condition): Condition {
+  const parts = condition.kind === 'all' ? condition.of : [condition];
+  return allOf(parts.filter((part) => part.kind === 'stable'));
 }
 
 function isComplex(compiled: Compiled): boolean {
