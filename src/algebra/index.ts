@@ -21,3 +21,4 @@ export * from './sign.ts';
 export * from './real-roots.ts';
 export { ResiduePoint } from './residue-point.ts';
 export { areSame } from './sameness.ts';
+export * from './algebraic-number.ts';

@@ -28,7 +28,7 @@ export { solutionsFor, solveInequality, solveLinearFor } from './equation.ts';
 export { matchCoefficients } from './match.ts';
 export type { MatchedGain } from './match.ts';
 export { stableIntervals } from './stability-range.ts';
-export type { GainInterval, RangeEnd } from './stability-range.ts';
+export type { GainInterval } from './stability-range.ts';
 export { cornersOf } from './tolerance.ts';
 export type { Bounds, Corners } from './tolerance.ts';
 export { compileRatios, numberOf } from './compile.ts';

@@ -1,5 +1,6 @@
 import {
   addRational,
+  algebraicNumber,
   coefficientsIn,
   compareRational,
   evaluatePolynomial,
@@ -10,29 +11,26 @@ import {
   mulPolynomials,
   onePolynomial,
   rational,
-  rationalToNumber,
   refineRoot,
   squareFreePart,
   subRational,
 } from '../algebra/index.ts';
-import type { Generator, Polynomial, Rational, RootInterval } from '../algebra/index.ts';
+import type {
+  AlgebraicNumber,
+  Generator,
+  Polynomial,
+  Rational,
+  RootInterval,
+} from '../algebra/index.ts';
 import type { Budget } from '../base/index.ts';
 import { hurwitzDeterminants } from './hurwitz.ts';
 import { countRoots } from './root-count.ts';
 import { descendingInS } from './s-polynomial.ts';
 
-/** An end of an interval of gains: a real algebraic number between two rationals, equal where it is rational. */
-export interface RangeEnd {
-  readonly low: Rational;
-  readonly high: Rational;
-  /** The nearest double. */
-  readonly value: number;
-}
-
 /** An open interval of gains; null for an end at infinity. */
 export interface GainInterval {
-  readonly from: RangeEnd | null;
-  readonly to: RangeEnd | null;
+  readonly from: AlgebraicNumber | null;
+  readonly to: AlgebraicNumber | null;
 }
 
 /**
@@ -86,40 +84,42 @@ function apart(critical: Polynomial): readonly RootInterval[] {
   return roots;
 }
 
-function endOf(critical: Polynomial, root: RootInterval): RangeEnd {
-  let interval = root;
-  for (
-    let bits = 8n;
-    rationalToNumber(interval.low) !== rationalToNumber(interval.high);
-    bits *= 2n
-  ) {
-    interval = refineRoot(critical, interval, rational(1n, 1n << bits));
+/** A product without its repeated factors, for each of several polynomials; null where one of them is never stable. */
+function criticalProduct(
+  list: readonly Polynomial[],
+  gain: Generator,
+  budget?: Budget,
+): Polynomial | null {
+  let product = onePolynomial;
+  for (const p of list) {
+    const critical = isZeroPolynomial(p) ? null : criticalPolynomial(p, budget);
+    if (!critical) return null;
+    product = mulPolynomials(product, critical, budget);
   }
-  return { low: interval.low, high: interval.high, value: rationalToNumber(interval.high) };
+  return isConstantPolynomial(product) ? product : squareFreePart(product, gain, budget);
 }
 
 /**
- * The intervals of one gain in which a polynomial in s is stable, all other coefficients being numbers.
+ * The intervals of one gain in which polynomials in s are all stable, all other coefficients being numbers.
  *
- * `p` holds no generators but s and the gain. The ends are isolated exactly; between them stability is decided exactly
- * at one rational gain. Empty if there is no stable gain; one interval without ends if all are. A gain at which two
- * intervals touch is not stable, or lowers the degree.
+ * The polynomials hold no generators but s and the gain. The ends are isolated exactly; between them stability is decided
+ * exactly at one rational gain. Empty if there is no stable gain; one interval without ends if all are. A gain at which
+ * two intervals touch is not stable, or lowers the degree.
  */
 export function stableIntervals(
-  p: Polynomial,
+  list: readonly Polynomial[],
   gain: Generator,
   budget?: Budget,
 ): readonly GainInterval[] {
-  if (isZeroPolynomial(p)) return [];
-  const critical = criticalPolynomial(p, budget);
+  const critical = criticalProduct(list, gain, budget);
   if (!critical) return [];
+  const isStable = (sample: Rational): boolean => list.every((p) => isStableAt(p, sample));
   if (isConstantPolynomial(critical)) {
-    return isStableAt(p, rational(0)) ? [{ from: null, to: null }] : [];
+    return isStable(rational(0)) ? [{ from: null, to: null }] : [];
   }
-  const reduced = squareFreePart(critical, gain, budget);
-  const roots = apart(reduced);
-  const ends = roots.map((root) => endOf(reduced, root));
+  const roots = apart(critical);
+  const ends = roots.map((root) => algebraicNumber(critical, root, budget));
   return samplesBetween(roots).flatMap((sample, i) =>
-    isStableAt(p, sample) ? [{ from: ends[i - 1] ?? null, to: ends[i] ?? null }] : [],
+    isStable(sample) ? [{ from: ends[i - 1] ?? null, to: ends[i] ?? null }] : [],
   );
 }

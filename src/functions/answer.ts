@@ -83,12 +83,15 @@ export function polynomialOf(ratio: Ratio, what: string): Polynomial | Refusal {
   );
 }
 
+/** The largest order, power or number of digits that is worked out. */
+const LARGEST_INTEGER = 1000;
+
 /** The integer that a formula is, or a refusal. */
 export function integerOf(ratio: Ratio, least: number, what: string): number | Refusal {
   const { num, den } = ratio;
   const whole = isConstantPolynomial(num) && isConstantPolynomial(den) && constantValue(den) === 1n;
   const value = whole ? Number(constantValue(num)) : NaN;
-  return value >= least && value <= 1000
+  return value >= least && value <= LARGEST_INTEGER
     ? value
-    : refuse('not-an-integer', `${what} is a whole number from ${least} on`);
+    : refuse('not-an-integer', `${what} is a whole number from ${least} to ${LARGEST_INTEGER}`);
 }

@@ -1,16 +1,18 @@
 import {
-  compareRational,
-  parseRational,
-  ratioOf,
-  ratioFromPolynomial,
-  ratioFromRational,
+  decimalBound,
+  exactForm,
   generatorsOf,
   laplace,
+  ratioFromPolynomial,
+  ratioFromRational,
+  ratioOf,
+  type AlgebraicNumber,
   type Generator,
   type Ratio,
 } from '../algebra/index.ts';
 import { isRefusal, refuse, type Refusal } from '../base/index.ts';
 import {
+  ALWAYS,
   allOf,
   anyOf,
   compare,
@@ -19,13 +21,24 @@ import {
   stabilityConditions,
   stableIntervals,
   type Condition,
-  type GainInterval,
-  type RangeEnd,
   type StabilityBlock,
   type Value,
 } from '../control/index.ts';
-import { absentAnswer, conditionAnswer, formulaAnswer, nameOf } from './answer.ts';
-import { one, type Argument, type FunctionContext, type WorksheetFunction } from './spec.ts';
+import {
+  absentAnswer,
+  conditionAnswer,
+  formulaAnswer,
+  integerOf,
+  nameOf,
+  ratioOfArgument,
+} from './answer.ts';
+import {
+  one,
+  optional,
+  type Argument,
+  type FunctionContext,
+  type WorksheetFunction,
+} from './spec.ts';
 
 export const solve: WorksheetFunction = {
   name: 'solve',
@@ -33,16 +46,18 @@ export const solve: WorksheetFunction = {
     'An equation or an inequality solved for a symbol, with the direction that the signs allow; for `stable(…)` the intervals of a gain.',
   source: null,
   example: 'a, b are positive\nsolve(a x + b = 0, x)',
-  parameters: [one('relation', 'relation'), one('K', 'unknown')],
+  parameters: [one('relation', 'relation'), one('K', 'unknown'), optional('digits', 'parameter')],
   unit: 'second',
   availability: 'now',
-  evaluate: ([relation, unknown], context) => {
+  evaluate: ([relation, unknown, wanted], context) => {
     const { generator } = nameOf(unknown);
+    const digits = wanted ? integerOf(ratioOfArgument(wanted), 1, 'the number of digits') : DIGITS;
+    if (isRefusal(digits)) return digits;
     if (relation.kind === 'relation') return solveRelation(relation, generator, context);
     const value = (relation as Extract<Argument, { kind: 'value' }>).value;
     if (value.kind === 'condition' && value.condition.kind === 'stable') {
       const blocks = value.condition.blocks.map((block) => openedBlock(block, generator, context));
-      return solveStable(blocks, generator, context);
+      return solveStable(blocks, generator, digits, context);
     }
     return refuse('not-a-relation', 'solve takes an equation, an inequality or stable(…)');
   },
@@ -110,12 +125,13 @@ function openedBlock(
 function solveStable(
   blocks: readonly StabilityBlock[],
   gain: Generator,
+  digits: number,
   context: FunctionContext,
 ): Value | Refusal {
   const numeric = blocks.every((block) =>
     generatorsOf(block.polynomial).every((g) => g === gain || g === laplace),
   );
-  if (numeric) return intervalAnswer(blocks, gain, context);
+  if (numeric) return intervalAnswer(blocks, gain, digits, context);
   const conditions = blocks.flatMap((block) =>
     stabilityConditions(block.polynomial, context.signOf, context.budget),
   );
@@ -127,37 +143,38 @@ function solveStable(
   return conditionAnswer(allOf(solved));
 }
 
+/** Digits of an end that no square root writes exactly, unless more are asked for. */
+const DIGITS = 12;
+
 function intervalAnswer(
   blocks: readonly StabilityBlock[],
   gain: Generator,
-  { budget }: FunctionContext,
+  digits: number,
+  context: FunctionContext,
 ): Value {
-  const ranges = blocks.map((block) => stableIntervals(block.polynomial, gain, budget));
-  const each = ranges.map((block) => anyOf(block.map((range) => within(range, gain))));
-  const isRounded = ranges
-    .flat()
-    .some(({ from, to }) => [from, to].some((end) => end !== null && !isExact(end)));
+  const polynomials = blocks.map((block) => block.polynomial);
+  const notes: string[] = [];
+  const intervals = stableIntervals(polynomials, gain, context.budget).map(({ from, to }) => {
+    const parts: Condition[] = [];
+    const end = (x: AlgebraicNumber, direction: 'up' | 'down'): Ratio => {
+      const exact = exactForm(x, context.budget);
+      if (!exact) notes.push(roundedNote(x, digits, context));
+      return exact ?? ratioFromRational(decimalBound(x, digits, direction));
+    };
+    if (from) parts.push(compare(ratioOf(gain), '>', end(from, 'up')));
+    if (to) parts.push(compare(ratioOf(gain), '<', end(to, 'down')));
+    return allOf(parts);
+  });
   return {
-    ...conditionAnswer(allOf(each)),
-    notes: isRounded ? [`Ends are roots of polynomials, given to ${END_DIGITS} digits.`] : [],
+    kind: 'condition',
+    condition: anyOf(intervals),
+    when: ALWAYS,
+    notes: [...new Set(notes)],
   };
 }
 
-function within(range: GainInterval, gain: Generator): Condition {
-  const parts: Condition[] = [];
-  if (range.from) parts.push(compare(ratioOf(gain), '>', endRatio(range.from)));
-  if (range.to) parts.push(compare(ratioOf(gain), '<', endRatio(range.to)));
-  return allOf(parts);
-}
-
-const END_DIGITS = 6;
-
-function isExact({ low, high }: RangeEnd): boolean {
-  return compareRational(low, high) === 0;
-}
-
-/** An end of an interval; where it is not rational, as a decimal. */
-function endRatio(end: RangeEnd): Ratio {
-  const decimal = String(Number(end.value.toPrecision(END_DIGITS)));
-  return ratioFromRational(isExact(end) ? end.low : parseRational(decimal));
+/** What an end is exactly, and how it is shown. */
+function roundedNote(x: AlgebraicNumber, digits: number, { write }: FunctionContext): string {
+  const near = write(ratioFromRational(decimalBound(x, 4, 'down')));
+  return `The end near ${near} is a root of ${write(ratioFromPolynomial(x.polynomial))}; it is rounded inwards to ${digits} digits.`;
 }

@@ -1,6 +1,7 @@
 import { Budget, BudgetExceeded } from '../base/index.ts';
-import { termsOf, type Polynomial } from '../algebra/index.ts';
+import { equalRatios, termsOf, type Polynomial } from '../algebra/index.ts';
 import {
+  mirrored,
   readable,
   stabilityConditions,
   type Comparison,
@@ -83,6 +84,46 @@ function compareLatex(c: Compare, writing: Writing): string {
   return `${left}${OPERATOR_LATEX[c.operator]}${formulaLatex(c.right, writing)}`;
 }
 
+/** What lies between two bounds, written as a chain: 0 < K < 6. */
+interface Bounds {
+  readonly kind: 'bounds';
+  readonly lower: Compare;
+  readonly upper: Compare;
+}
+
+const isLower = (c: StablePart): c is Compare =>
+  c.kind === 'compare' && (c.operator === '>' || c.operator === '>=');
+const isUpper = (c: StablePart): c is Compare =>
+  c.kind === 'compare' && (c.operator === '<' || c.operator === '<=');
+
+/** The parts with each lower bound joined to the upper bound of the same quantity, where there is just one of each. */
+function betweenBounds(parts: readonly StablePart[]): readonly (StablePart | Bounds)[] {
+  const partner = (
+    c: Compare,
+    isPartner: (other: StablePart) => other is Compare,
+  ): Compare | null => {
+    const found = parts.filter(isPartner).filter((other) => equalRatios(other.left, c.left));
+    return found.length === 1 ? found[0] : null;
+  };
+  return parts.flatMap((part): readonly (StablePart | Bounds)[] => {
+    if (!isLower(part) && !isUpper(part)) return [part];
+    const lower = partner(part, isLower);
+    const upper = partner(part, isUpper);
+    if (!lower || !upper) return [part];
+    return part === lower ? [{ kind: 'bounds', lower, upper }] : [];
+  });
+}
+
+function boundsText({ lower, upper }: Bounds, writing: Writing): string {
+  const below = formulaText(lower.right, writing);
+  return `${below} ${mirrored(lower.operator)} ${compareText(upper, writing)}`;
+}
+
+function boundsLatex({ lower, upper }: Bounds, writing: Writing): string {
+  const below = formulaLatex(lower.right, writing);
+  return `${below}${OPERATOR_LATEX[mirrored(lower.operator)]}${compareLatex(upper, writing)}`;
+}
+
 function flattened(of: readonly Condition[], kind: 'all' | 'any'): readonly Condition[] {
   return of.flatMap((c) => (c.kind === kind ? flattened(c.of, kind) : [c]));
 }
@@ -126,13 +167,15 @@ function openedConditions(p: Polynomial, writing: Writing): readonly Condition[]
   }
 }
 
-function partText(part: StablePart, writing: Writing): string {
+function partText(part: StablePart | Bounds, writing: Writing): string {
+  if (part.kind === 'bounds') return boundsText(part, writing);
   return part.kind === 'hurwitz'
     ? `stable(${polynomialText(part.polynomial, writing)})`
     : conditionText(part, writing);
 }
 
-function partLatex(part: StablePart, writing: Writing): string {
+function partLatex(part: StablePart | Bounds, writing: Writing): string {
+  if (part.kind === 'bounds') return boundsLatex(part, writing);
   return part.kind === 'hurwitz'
     ? `${polynomialLatex(part.polynomial, writing)}\\text{ has its roots left of the axis}`
     : conditionLatex(part, writing);
@@ -141,7 +184,7 @@ function partLatex(part: StablePart, writing: Writing): string {
 function joined(parts: readonly StablePart[], word: 'and' | 'or', writing: Writing): string {
   if (parts.length === 0) return word === 'and' ? '1 > 0' : '1 < 0';
   if (parts.length === 1) return partText(parts[0], writing);
-  const texts = parts.map((part) => {
+  const texts = (word === 'and' ? betweenBounds(parts) : parts).map((part) => {
     const text = partText(part, writing);
     return word === 'and' && part.kind === 'any' ? `(${text})` : text;
   });
@@ -151,7 +194,7 @@ function joined(parts: readonly StablePart[], word: 'and' | 'or', writing: Writi
 function joinedLatex(parts: readonly StablePart[], kind: 'all' | 'any', writing: Writing): string {
   if (parts.length === 0) return kind === 'all' ? '\\text{always}' : '\\text{never}';
   const mixed = parts.length > 1;
-  return parts
+  return (kind === 'all' ? betweenBounds(parts) : parts)
     .map((part) => {
       const latex = partLatex(part, writing);
       return mixed && (part.kind === 'any' || part.kind === 'all')
