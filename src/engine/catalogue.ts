@@ -1,10 +1,10 @@
 import { errorAt, warningAt, type Problem } from '../base/index.ts';
 import {
   isReserved,
+  nameToLatex,
   nameToText,
   namesIn,
   offsetSpan,
-  sameTypesetting,
   type CaseStatement,
   type DefinitionStatement,
   type AssumptionStatement,
@@ -203,21 +203,22 @@ class CatalogueBuilder {
   }
 
   private checkTypesetting(): void {
-    const { introductions } = this;
-    introductions.forEach((later, index) => {
-      const earlier = introductions
-        .slice(0, index)
-        .find((other) => other.name !== later.name && sameTypesetting(other.name, later.name));
-      if (!earlier) return;
-      this.problems.push(
-        errorAt(
-          offsetSpan(later.span, later.entry.placed.from),
-          'typeset-alike',
-          `${later.name} and ${earlier.name} (line ${this.lineOf(earlier.entry.placed.from)}) are typeset alike; ` +
-            'use one spelling, or rename one.',
-        ),
-      );
-    });
+    const first = new Map<string, Introduction>();
+    for (const later of this.introductions) {
+      const set = nameToLatex(later.name);
+      const earlier = first.get(set);
+      if (!earlier) first.set(set, later);
+      else this.problems.push(this.alike(later, earlier));
+    }
+  }
+
+  private alike(later: Introduction, earlier: Introduction): Problem {
+    return errorAt(
+      offsetSpan(later.span, later.entry.placed.from),
+      'typeset-alike',
+      `${later.name} and ${earlier.name} (line ${this.lineOf(earlier.entry.placed.from)}) are typeset alike; ` +
+        'use one spelling, or rename one.',
+    );
   }
 
   private checkTunes(): void {
