@@ -1,6 +1,7 @@
 import { asRational, rationalToNumber, type Ratio } from '../algebra/index.ts';
-import type { RouthArray } from '../control/index.ts';
+import { allOf, type Condition, type RouthArray } from '../control/index.ts';
 import { formatNumber } from '../units/index.ts';
+import { conditionLatex } from './condition.ts';
 import { formulaLatex, formulaText } from './formula.ts';
 import { numberLatex } from './written-latex.ts';
 import type { Writing } from './writing.ts';
@@ -18,8 +19,24 @@ export function routhText(array: RouthArray, writing: Writing): string {
   return `rows(${filled.map((row) => row.join(', ')).join(' | ')})`;
 }
 
-/** A Routh array as LaTeX: the powers of s at the left, rows with a special case marked at the right. */
+/** A Routh array as LaTeX, and below it the conditions that keep its first column positive, one a line. */
 export function routhLatex(array: RouthArray, writing: Writing): string {
+  const lines = [arrayLatex(array, writing), ...verdictLines(array.conditions, writing)];
+  return `\\begin{array}{l} ${lines.join(' \\\\[8pt] ')} \\end{array}`;
+}
+
+/** "stable if c₁", "and c₂", …; a word where the conditions are settled. */
+function verdictLines(conditions: readonly Condition[], writing: Writing): string[] {
+  const whole = allOf(conditions);
+  if (whole.kind === 'truth') return [whole.value ? '\\text{stable}' : '\\text{not stable}'];
+  return conditions.map((condition, i) => {
+    const start = i === 0 ? 'stable if' : 'and';
+    return `\\text{${start}}\\quad \\displaystyle ${conditionLatex(condition, writing)}`;
+  });
+}
+
+/** The array itself: the powers of s at the left, rows with a special case marked at the right. */
+function arrayLatex(array: RouthArray, writing: Writing): string {
   const columns = Math.max(1, ...array.rows.map(({ entries }) => entries.length));
   const rows = array.rows.map(({ power, entries, special }) => {
     const cells = entries.map((entry) => entryLatex(entry, writing));
@@ -27,7 +44,7 @@ export function routhLatex(array: RouthArray, writing: Writing): string {
     const mark = special === null ? '' : `\\;\\leftarrow\\text{ ${special}}`;
     return [powerLatex(power), ...cells, ...padding].join(' & ') + mark;
   });
-  const body = rows.join(' \\\\[2pt] ');
+  const body = rows.join(' \\\\[4pt] ');
   return `\\begin{array}{c|${'c'.repeat(columns)}} ${body} \\end{array}`;
 }
 
@@ -37,8 +54,14 @@ const LONGEST_NUMBER = 12;
 function entryLatex(entry: Ratio, writing: Writing): string {
   const exact = asRational(entry);
   const isLong = exact !== null && formulaText(entry, writing).length > LONGEST_NUMBER;
-  if (!isLong) return formulaLatex(entry, writing);
+  if (!isLong) return cellLatex(entry, writing);
   return `\\approx ${numberLatex(formatNumber(rationalToNumber(exact)))}`;
+}
+
+/** A formula in a cell: its fractions in full size, which LaTeX would set small there. */
+function cellLatex(entry: Ratio, writing: Writing): string {
+  const latex = formulaLatex(entry, writing);
+  return latex.includes('\\frac') ? `\\displaystyle ${latex}` : latex;
 }
 
 function powerLatex(power: number): string {
@@ -55,8 +78,8 @@ export function matrixText(rows: readonly (readonly Ratio[])[], writing: Writing
 /** The same matrix as {@link matrixText}, as LaTeX. */
 export function matrixLatex(rows: readonly (readonly Ratio[])[], writing: Writing): string {
   if (isSingle(rows)) return formulaLatex(rows[0][0], writing);
-  const lines = rows.map((row) => row.map((entry) => formulaLatex(entry, writing)).join(' & '));
-  return `\\begin{bmatrix} ${lines.join(' \\\\ ')} \\end{bmatrix}`;
+  const lines = rows.map((row) => row.map((entry) => cellLatex(entry, writing)).join(' & '));
+  return `\\begin{bmatrix} ${lines.join(' \\\\[4pt] ')} \\end{bmatrix}`;
 }
 
 /** The entries of a matrix as re-readable formulas. */

@@ -35,8 +35,18 @@ describe('a Routh array', () => {
 
   it('is set with the powers of s at the left', () => {
     const latex = routhLatex(array, writing);
-    expect(latex).toMatch(/^\\begin\{array\}\{c\|cc\} s\^\{3\} & J & K_/);
+    expect(latex).toMatch(/^\\begin\{array\}\{l\} \\begin\{array\}\{c\|cc\} s\^\{3\} & J & K_/);
+    expect(latex).toContain('& \\displaystyle \\frac{');
     katex.renderToString(latex, { strict: 'error' });
+  });
+
+  it('is followed by what keeps its first column positive, one condition a line', () => {
+    const below = routhLatex(arrayOf('s^2 + (Kp - Kd) s + Kp - Ki'), writing).split(
+      '\\end{array}',
+    )[1];
+    expect(below).toMatch(/\\text\{stable if\}.*\\text\{and\}/);
+    expect(routhLatex(arrayOf('s^2 + 3 s + 2'), writing)).toContain('\\text{stable}');
+    expect(routhLatex(arrayOf('s^2 - 3 s + 2'), writing)).toContain('\\text{not stable}');
   });
 
   it('rounds what is too long to read, and says so; the rows stay exact', () => {
