@@ -62,6 +62,8 @@ export function regionContent(node: DrawStatement, sources: FigureSources): Figu
     x: x.axis,
     y: y.axis,
     ...trace,
+    baseline: [],
+    names: [...new Set([x.name, y.name, ...reachOfAll(subjects)])].map(nameToText),
     point: {
       x: presentValue(x, sources.numbers),
       y: presentValue(y, sources.numbers),

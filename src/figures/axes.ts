@@ -1,5 +1,6 @@
 import type { Axis } from './data.ts';
 import { FONT, ink } from './ink.ts';
+import { labelText } from './label-text.ts';
 import { positionOf, type Panel } from './scale.ts';
 import { element, escape, type Svg } from './svg.ts';
 import { ticksOver, type Tick } from './ticks.ts';
@@ -26,6 +27,8 @@ interface Lettering {
   readonly anchor?: 'start' | 'middle' | 'end';
   readonly fill?: string;
   readonly class?: string;
+  /** How the text is set; as it stands, if not given. */
+  readonly typeset?: (text: string) => Svg;
 }
 
 /** One line of text at a baseline position. */
@@ -39,11 +42,25 @@ export function lettering(x: number, y: number, text: string, style: Lettering):
     'text-anchor': style.anchor ?? 'start',
     fill: style.fill ?? ink('ink'),
   };
-  return element('text', attributes, escape(text));
+  return element('text', attributes, (style.typeset ?? escape)(text));
+}
+
+/** What is written at an axis: a quantity, and its unit after it. */
+interface AxisLabel {
+  readonly label: string;
+  readonly unit: string;
+}
+
+/** The label of an axis: names in its quantity are set as such, its unit as it stands. */
+function axisLettering(x: number, y: number, { label, unit }: AxisLabel, style: Lettering): Svg {
+  const end = label.endsWith(unit) ? label.length - unit.length : label.length;
+  const typeset = (text: string) =>
+    labelText(text.slice(0, end), () => true, style.size) + escape(text.slice(end));
+  return lettering(x, y, label, { ...style, typeset });
 }
 
 /** Axis lines, ticks and numbers of a panel, the quantity and unit at the right end of x and on top of y. */
-export function axesSvg(panel: Panel, x: Axis, yLabel: string, showX = true): Svg {
+export function axesSvg(panel: Panel, x: Axis, y: AxisLabel, showX = true): Svg {
   const { plot } = panel;
   const frame = element('path', {
     d: `M${plot.left},${plot.top}V${plot.bottom}H${plot.right}`,
@@ -51,7 +68,7 @@ export function axesSvg(panel: Panel, x: Axis, yLabel: string, showX = true): Sv
     stroke: ink('quiet'),
     'stroke-width': 1,
   });
-  const label = lettering(plot.left - 46, plot.top - 12, yLabel, { size: LABEL_SIZE });
+  const label = axisLettering(plot.left - 46, plot.top - 12, y, { size: LABEL_SIZE });
   return element('g', { class: 'axes' }, frame, ...xAxis(panel, x, showX), ...yAxis(panel), label);
 }
 
@@ -66,7 +83,7 @@ function xAxis(panel: Panel, x: Axis, showNumbers: boolean): Svg[] {
   });
   if (!showNumbers) return marks;
   const style = { size: LABEL_SIZE, anchor: 'end' as const };
-  return [...marks, lettering(plot.right, plot.bottom + 38, x.label, style)];
+  return [...marks, axisLettering(plot.right, plot.bottom + 38, x, style)];
 }
 
 function yAxis(panel: Panel): Svg[] {

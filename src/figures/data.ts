@@ -40,6 +40,10 @@ export interface RegionFigure {
   /** Where every condition holds over the tolerances; null if nothing is toleranced. */
   readonly toleranceArea: readonly Polygon[] | null;
   readonly boundaries: readonly Boundary[];
+  /** Boundaries pinned earlier, to compare against: drawn dashed and quiet. */
+  readonly baseline: readonly Line[];
+  /** Names of the worksheet in the boundaries' labels, as they stand there. */
+  readonly names: readonly string[];
   /** The present gains; `draggable` if both are numbers that the text holds. */
   readonly point: { readonly x: number; readonly y: number; readonly draggable: boolean } | null;
   readonly notes: readonly string[];

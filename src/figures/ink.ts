@@ -36,4 +36,7 @@ export const DASHES: readonly (string | null)[] = [
   '5 2 1 2 1 2',
 ];
 
+/** What was pinned earlier, to compare against. */
+export const BASELINE_DASH = '5 4';
+
 export const FONT = "var(--figure-font, 'Source Sans 3', 'Helvetica Neue', Arial, sans-serif)";

@@ -1,7 +1,8 @@
 import { axesSvg, LABEL_SIZE, lettering, textWidth } from './axes.ts';
 import type { Line, Polygon, RegionFigure } from './data.ts';
-import { ink } from './ink.ts';
+import { BASELINE_DASH, ink } from './ink.ts';
 import { placeLabels } from './label-placement.ts';
+import { labelText } from './label-text.ts';
 import {
   panelOver,
   positionOf,
@@ -50,7 +51,7 @@ export function regionSvg(figure: RegionFigure, size: FigureSize): Svg {
     areaSvg(panel, figure.nominalArea, 'area'),
     areaSvg(panel, figure.toleranceArea ?? [], 'deep-area'),
     ...boundariesSvg(panel, figure),
-    axesSvg(panel, figure.x, figure.y.label),
+    axesSvg(panel, figure.x, figure.y),
     ...boundaryLabels(panel, figure),
     keySvg(figure, size),
     pointSvg(panel, figure),
@@ -67,13 +68,20 @@ function areaSvg(panel: Panel, polygons: readonly Polygon[], tint: 'area' | 'dee
 }
 
 function boundariesSvg(panel: Panel, figure: RegionFigure): Svg[] {
-  const stroke = (lines: readonly Line[], colour: Svg, width: number, name: string): Svg => {
+  const stroke = (
+    lines: readonly Line[],
+    colour: Svg,
+    width: number,
+    name: string,
+    dash: string | null = null,
+  ): Svg => {
     const d = lines.map((line) => pathOf(pixels(panel, line))).join('');
     const attributes = { d, fill: 'none', stroke: colour, 'stroke-width': width, class: name };
-    return d === '' ? '' : element('path', attributes);
+    return d === '' ? '' : element('path', { ...attributes, 'stroke-dasharray': dash });
   };
   return [
     ...figure.boundaries.map((b) => stroke(b.elsewhere, ink('faint'), 0.8, 'elsewhere')),
+    stroke(figure.baseline, ink('quiet'), 1.2, 'baseline', BASELINE_DASH),
     ...figure.boundaries.map((b) => stroke(b.lines, ink('ink'), 1.5, 'boundary')),
   ];
 }
@@ -91,10 +99,16 @@ function boundaryLabels(panel: Panel, figure: RegionFigure): Svg[] {
     .filter(({ lines }) => lines.length > 0)
     .flatMap(({ elsewhere }) => elsewhere.map((line) => pixels(panel, line)));
   const occupied = occupiedByPoint(panel, figure);
+  const isName = (word: string) => figure.names.includes(word);
   return placeLabels(labels, panel.plot, light, occupied).map((box, i) => {
     if (box === null) return '';
     const quiet = figure.boundaries[i].lines.length === 0;
-    const style = { size: LABEL_SIZE, fill: ink(quiet ? 'quiet' : 'ink'), class: 'boundary-label' };
+    const style = {
+      size: LABEL_SIZE,
+      fill: ink(quiet ? 'quiet' : 'ink'),
+      class: 'boundary-label',
+      typeset: (text: string) => labelText(text, isName, LABEL_SIZE),
+    };
     return lettering(box.left, box.bottom - 5, shownLabel(figure.boundaries[i].label), style);
   });
 }
@@ -177,6 +191,7 @@ function keyEntries(figure: RegionFigure): readonly KeyEntry[] {
     const robust = figure.toleranceArea.length > 0 ? 'holds' : 'holds nowhere here';
     entries.push({ mark: swatch('deep-area'), text: `${robust} over the tolerances` });
   }
+  if (figure.baseline.length > 0) entries.push({ mark: baselineSample, text: 'baseline' });
   if (figure.point !== null) {
     entries.push({ mark: (x, y) => pointMark(x + 7, y - 4.5, figure), text: 'present gains' });
   }
@@ -194,6 +209,15 @@ function swatch(tint: 'area' | 'deep-area'): KeyEntry['mark'] {
       stroke: ink('quiet'),
       'stroke-width': 0.7,
     });
+}
+
+function baselineSample(x: number, y: number): Svg {
+  return element('path', {
+    d: `M${short(x)},${short(y - 4.5)}h15`,
+    stroke: ink('quiet'),
+    'stroke-width': 1.2,
+    'stroke-dasharray': BASELINE_DASH,
+  });
 }
 
 function pixels(panel: Panel, line: Line): Line {

@@ -1,8 +1,9 @@
 import { area, line } from 'd3';
 import { axesSvg, LABEL_SIZE, lettering, textWidth } from './axes.ts';
 import type { Curve, Line, Point, ResponseFigure } from './data.ts';
-import { DASHES, ink } from './ink.ts';
+import { BASELINE_DASH, DASHES, ink } from './ink.ts';
 import { overlaps } from './label-placement.ts';
+import { labelText } from './label-text.ts';
 import {
   panelOver,
   positionOf,
@@ -106,7 +107,7 @@ function panelSvg(
     ...bands,
     zeroLine(panel),
     ...lines,
-    axesSvg(panel, figure.x, axisLabelOf(curves), isLast),
+    axesSvg(panel, figure.x, { label: axisLabelOf(curves), unit: curves[0]?.unit ?? '' }, isLast),
     ...(needsLabels(figure) ? endLabels(panel, curves, dashes) : []),
     isLast && figure.diverges !== null ? divergenceNote(panel, figure.diverges) : '',
   );
@@ -128,7 +129,7 @@ function axisLabelOf(curves: readonly Curve[]): string {
 /** The first curve solid, each further one with the next pattern; the Baseline dashed. */
 function dashesOf(curves: readonly Curve[]): readonly (string | null)[] {
   let next = 0;
-  return curves.map(({ baseline }) => (baseline ? '5 4' : DASHES[next++ % DASHES.length]));
+  return curves.map(({ baseline }) => (baseline ? BASELINE_DASH : DASHES[next++ % DASHES.length]));
 }
 
 function zeroLine(panel: Panel): Svg {
@@ -193,13 +194,17 @@ function endLabels(
     const box = below(placed, labelBox(left, y, curve.label));
     placed.push(box);
     const colour = ink(curve.baseline ? 'quiet' : 'ink');
-    const style = { size: LABEL_SIZE, fill: colour, class: 'curve-label' };
+    const style = { size: LABEL_SIZE, fill: colour, class: 'curve-label', typeset: curveName };
     const y1 = box.bottom - LABEL_SIZE / 2 - 2;
     return (
       element('path', { d: `M${left},${y1}h${SAMPLE}`, stroke: colour, 'stroke-dasharray': dash }) +
       lettering(left + SAMPLE + 5, box.bottom - 4, curve.label, style)
     );
   });
+}
+
+function curveName(label: string): Svg {
+  return labelText(label, () => true, LABEL_SIZE);
 }
 
 function labelBox(left: number, y: number, text: string): Box {

@@ -1,4 +1,4 @@
-import type { FigureData } from '../figures/index.ts';
+import type { FigureData, RegionFigure, ResponseFigure } from '../figures/index.ts';
 import type {
   Placed,
   Report,
@@ -103,14 +103,30 @@ export function resultMovement(
   };
 }
 
-/** A figure with the curves that it had under the baseline, to be drawn dashed; the figure itself where they are the same. */
+/**
+ * A figure with the curves or boundaries that it had under the baseline, to be drawn dashed; the figure itself where they
+ * are the same.
+ */
 export function figureWithBaseline(
   baseline: Baseline | null,
   key: string,
   now: FigureData,
 ): FigureData {
   const then = baseline?.results.get(key)?.figure;
-  if (!then || then === now || then.kind !== 'response' || now.kind !== 'response') return now;
+  if (!then || then === now) return now;
+  if (then.kind === 'region') return now.kind === 'region' ? regionWithBaseline(then, now) : now;
+  return now.kind === 'response' ? responseWithBaseline(then, now) : now;
+}
+
+function regionWithBaseline(then: RegionFigure, now: RegionFigure): RegionFigure {
+  const samePlane = then.x.label === now.x.label && then.y.label === now.y.label;
+  const pinned = then.boundaries.flatMap(({ lines }) => lines);
+  const present = now.boundaries.flatMap(({ lines }) => lines);
+  if (!samePlane || JSON.stringify(pinned) === JSON.stringify(present)) return now;
+  return { ...now, baseline: pinned };
+}
+
+function responseWithBaseline(then: ResponseFigure, now: ResponseFigure): ResponseFigure {
   const panels = new Set(now.curves.map(({ axisLabel }) => axisLabel));
   const pinned = then.curves
     .filter(({ axisLabel }) => panels.has(axisLabel))

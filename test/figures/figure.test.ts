@@ -35,6 +35,8 @@ function region(): RegionFigure {
     x: { name: 'Kp', label: 'gain Kp, kN m/rad', unit: 'kN m/rad', from: 0, to: 10 },
     y: { name: 'Ki', label: 'gain Ki, kN m/(rad s)', unit: 'kN m/(rad s)', from: 0, to: 10 },
     ...trace,
+    baseline: [],
+    names: ['Kp', 'Ki'],
     point: { x: 8, y: 2, draggable: true },
     notes: [],
   };
@@ -56,6 +58,11 @@ function response(): ResponseFigure {
     diverges: null,
     notes: [],
   };
+}
+
+/** A drawing without the tags by which letters in a text are set. */
+function lettersOf(svg: string): string {
+  return svg.replace(/<\/?tspan[^>]*>/g, '');
 }
 
 const size = { width: 640, height: 420 };
@@ -83,7 +90,7 @@ describe.each(figures)('a %s figure', (name, figure) => {
 
   it('has every axis labelled with quantity and unit', () => {
     const svg = figureSvg(figure, size);
-    expect(svg).toContain(figure.x.label);
+    expect(lettersOf(svg)).toContain(figure.x.label);
     expect(svg).not.toContain('NaN');
   });
 
@@ -97,8 +104,31 @@ it('A region says in words and tints where it holds, and labels every boundary.'
   for (const text of ['holds at nominal values', 'holds over the tolerances', 'present gains']) {
     expect(svg).toContain(text);
   }
-  expect(svg).toContain('Kp &gt; Ki/2');
-  expect(svg).toContain('Ki ≤ 6');
+  expect(lettersOf(svg)).toContain('Kp &gt; Ki/2');
+  expect(lettersOf(svg)).toContain('Ki ≤ 6');
+});
+
+it('Names in labels are set with their subscripts; units and other words are not.', () => {
+  const svg = figureSvg({ ...region(), names: ['Kp'] }, size);
+  const setKp =
+    /<tspan font-style="italic">K<\/tspan><tspan dy="[\d.]+" font-size="[\d.]+">p<\/tspan>/;
+  expect(svg).toMatch(new RegExp(`gain ${setKp.source}<tspan dy="-[\\d.]+">, </tspan>kN m/rad<`));
+  expect(svg).toMatch(new RegExp(`>${setKp.source}<tspan dy="-[\\d.]+"> &gt; </tspan>Ki/2<`));
+});
+
+it('A boundary pinned earlier is dashed, and the key says so.', () => {
+  const pinned: RegionFigure = {
+    ...region(),
+    baseline: [
+      [
+        [0, 0],
+        [10, 10],
+      ],
+    ],
+  };
+  expect(figureSvg(pinned, size)).toMatch(/class="baseline"[^>]*stroke-dasharray/);
+  expect(lettersOf(figureSvg(pinned, size))).toContain('>baseline<');
+  expect(figureSvg(region(), size)).not.toContain('baseline');
 });
 
 it('A region that holds nowhere says so.', () => {

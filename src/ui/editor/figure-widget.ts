@@ -7,7 +7,7 @@ const frames = new WeakMap<HTMLElement, FigureFrame>();
 
 /** A figure under its statement. While its data changes the element stays, so that a drag on it goes on. */
 export class FigureWidget extends WidgetType {
-  /** `figure` is the evaluator's; `drawn` may have the curves of a baseline beside its own. */
+  /** `figure` is the evaluator's; `drawn` may have a baseline beside its own curves or boundaries. */
   constructor(
     private readonly figure: FigureData,
     private readonly drawn: FigureData,
@@ -16,7 +16,7 @@ export class FigureWidget extends WidgetType {
   }
 
   override eq(other: FigureWidget): boolean {
-    return other.figure === this.figure && other.curveCount === this.curveCount;
+    return other.figure === this.figure && other.lineCount === this.lineCount;
   }
 
   override toDOM(view: EditorView): HTMLElement {
@@ -32,9 +32,9 @@ export class FigureWidget extends WidgetType {
     return true;
   }
 
-  /** Tells apart the same figure with and without the curves of a baseline. */
-  private get curveCount(): number {
-    return this.drawn.kind === 'response' ? this.drawn.curves.length : 0;
+  /** Tells apart the same figure with and without a baseline. */
+  private get lineCount(): number {
+    return this.drawn.kind === 'response' ? this.drawn.curves.length : this.drawn.baseline.length;
   }
 
   override destroy(element: HTMLElement): void {
