@@ -8,12 +8,16 @@ import {
   zeroRatio,
   divRatios,
   generatorsOfRatio,
+  polynomialKey,
+  type Polynomial,
   type Generator,
   type Ratio,
 } from '../algebra/index.ts';
+import { Budget, BudgetExceeded } from '../base/index.ts';
 import {
   compileConditions,
   compileRatios,
+  stabilityConditions,
   YES,
   type CompiledConditions,
   type CompiledRatios,
@@ -21,7 +25,7 @@ import {
   type Value,
 } from '../control/index.ts';
 import type { AssumptionStatement } from '../language/index.ts';
-import type { BatchInput } from '../numeric/index.ts';
+import { latinHypercube, seededRandom, type BatchInput } from '../numeric/index.ts';
 import { formulaValue } from './arithmetic.ts';
 import { readAssumption, type AssumptionReading } from './assumptions.ts';
 import type { Catalogue } from './catalogue.ts';
@@ -60,6 +64,10 @@ export interface Evaluated {
   readonly verdicts: Uint8Array;
   readonly exists: Uint8Array;
 }
+
+const CUBE_SEED = 20260101;
+/** Work that may be spent on the conditions of one block. */
+const CONDITIONS_BUDGET = 2_000_000;
 
 /**
  * The numeric stage: numbers of assumptions put into what was derived. A changed number runs nothing but this.
@@ -111,6 +119,26 @@ export class Numbers {
     return reading?.ok && reading.value.value.exact ? exactRatio(reading.value.value) : null;
   }
 
+  /** The conditions under which a block is stable, which no number changes; null where they are too large to find. */
+  stabilityConditions(polynomial: Polynomial): readonly Condition[] | null {
+    return this.queries.get(`stability-conditions:${polynomialKey(polynomial)}`, () => {
+      try {
+        const budget = new Budget(CONDITIONS_BUDGET);
+        return stabilityConditions(polynomial, this.derivations.signOf, budget);
+      } catch (error) {
+        if (error instanceof BudgetExceeded) return null;
+        throw error;
+      }
+    });
+  }
+
+  /** The seeded points in the unit cube at which every box of so many names is looked at. */
+  cube(dimensions: number, points: number): readonly Float64Array[] {
+    return this.queries.get(`cube:${dimensions} ${points}`, () =>
+      latinHypercube(seededRandom(CUBE_SEED), dimensions, points),
+    );
+  }
+
   /** What a symbol stands for in numbers. */
   readonly resolve = (g: Generator): Ratio | 'input' =>
     g.kind === 'symbol' ? (this.derivations.abbreviated(g.name) ?? 'input') : 'input';
@@ -147,7 +175,11 @@ export class Numbers {
   valueOfName(name: string): number | null {
     return this.queries.get(`value of:${name}`, () => {
       const meaning = this.derivations.abbreviated(name);
-      return meaning ? this.valueOfRatio(meaning) : this.nominal(name);
+      if (!meaning) return this.nominal(name);
+      // By the values of the names in it, so that a long chain of parameters is gone through once.
+      const { tape, inputs, outputs } = compileRatios([meaning], () => 'input');
+      const values = inputs.map((input) => this.valueOfName(plainName(input)));
+      return values.includes(null) ? null : tape.evaluate(values as number[])[outputs[0].re];
     });
   }
 

@@ -14,8 +14,8 @@ import {
   type Sign,
 } from '../algebra/index.ts';
 import { Budget, BudgetExceeded, isRefusal } from '../base/index.ts';
-import { negation, stabilityConditions, type Condition } from '../control/index.ts';
-import { latinHypercube, seededRandom } from '../numeric/index.ts';
+import { negation, type Condition } from '../control/index.ts';
+import { seededRandom } from '../numeric/index.ts';
 import type { Derivations } from './derivations.ts';
 import { asMagnitude, type Numbers, type Points } from './numbers.ts';
 
@@ -54,7 +54,7 @@ export function sampleBox(
   const method: Method = monotone && all <= MOST_CORNERS ? 'corners' : 'sampled';
   const samples = method === 'corners' ? 0 : SAMPLES;
   const count = 1 + corners + samples;
-  const cube = latinHypercube(random, names.length, samples);
+  const cube = numbers.cube(names.length, samples);
   const columns = new Map<string, Float64Array>();
   let stride = 1;
   names.forEach((name, k) => {
@@ -150,10 +150,11 @@ export function isMonotoneCondition(
     case 'compare':
       return isMonotoneRelation(condition, names, numbers, derivations);
     case 'stable':
-      return condition.blocks.every((block) =>
-        stabilityConditions(block.polynomial, derivations.signOf).every((part) =>
-          isMonotoneCondition(part, names, numbers, derivations),
-        ),
+      return condition.blocks.every(
+        (block) =>
+          numbers
+            .stabilityConditions(block.polynomial)
+            ?.every((part) => isMonotoneCondition(part, names, numbers, derivations)) ?? false,
       );
     case 'not':
       return (
