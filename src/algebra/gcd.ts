@@ -26,6 +26,7 @@ import { divideExactly, monomialContent, quotientOf } from './quotient.ts';
 import { lastRemainder } from './remainder-sequence.ts';
 import type { Generator, Polynomial } from './ring.ts';
 import { sparseGcd } from './sparse-gcd.ts';
+import { coefficientOf, rowsOver } from './term-groups.ts';
 import { polynomialOfTerms } from './terms.ts';
 
 /**
@@ -85,7 +86,8 @@ export function contentOver(
   generators: ReadonlySet<Generator>,
   budget?: Budget,
 ): Polynomial {
-  return gcdOfMany(coefficientsOver(p, generators), budget);
+  const parts = rowsOver(p, generators).map((rows) => coefficientOf(p, rows, generators));
+  return gcdOfMany(parts, budget);
 }
 
 function commonMonomial(a: Polynomial, b: Polynomial): Polynomial {
@@ -149,25 +151,20 @@ function degreeBounds(
   return bounds;
 }
 
-/** The coefficients of p's distinct monomials in some generators: polynomials in the others. */
-function coefficientsOver(p: Polynomial, removed: ReadonlySet<Generator>): readonly Polynomial[] {
-  return p.generators
-    .filter((g) => removed.has(g))
-    .reduce<readonly Polynomial[]>(
-      (parts, g) =>
-        parts.flatMap((part) => coefficientsIn(part, g).filter((c) => !isZeroPolynomial(c))),
-      [p],
-    );
-}
-
-/** The gcd where it is known to lack some generators: it divides every coefficient. */
+/**
+ * The gcd of two polynomials without monomial factors where it is known to lack some generators: it divides every
+ * coefficient of monomials in those, and is 1 where one of the coefficients is a monomial.
+ */
 function gcdWithout(
   a: Polynomial,
   b: Polynomial,
   absent: ReadonlySet<Generator>,
   budget?: Budget,
 ): Polynomial {
-  return gcdOfMany([...coefficientsOver(a, absent), ...coefficientsOver(b, absent)], budget);
+  const groups = [a, b].map((p) => rowsOver(p, absent));
+  if (groups.some((list) => list.some((rows) => rows.length === 1))) return onePolynomial;
+  const parts = [a, b].flatMap((p, k) => groups[k].map((rows) => coefficientOf(p, rows, absent)));
+  return gcdOfMany(parts, budget);
 }
 
 /** The shared generator with the simplest leading coefficients, which the sparse method has to scale by. */
