@@ -22,3 +22,4 @@ export * from './real-roots.ts';
 export { ResiduePoint } from './residue-point.ts';
 export { areSame } from './sameness.ts';
 export * from './algebraic-number.ts';
+export * from './bernstein.ts';

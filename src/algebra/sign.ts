@@ -10,6 +10,8 @@ import {
   subPolynomials,
   termCount,
 } from './polynomial.ts';
+import { rational } from './rational.ts';
+import { countRealRoots } from './real-roots.ts';
 import type { Generator, Polynomial, Ratio } from './ring.ts';
 
 export type Sign = 'positive' | 'negative' | 'zero' | 'nonnegative' | 'nonpositive' | 'unknown';
@@ -146,8 +148,33 @@ function isRealPolynomial(p: Polynomial): boolean {
 function signOfFactor(p: Polynomial, signOf: SignOf, budget?: Budget): Sign {
   const direct = signByTerms(p, signOf);
   if (isStrict(direct)) return direct;
+  const isAlone = p.generators.length === 1 && termCount(p) > 1;
+  const alone = isAlone ? signOfUnivariate(p, signOf) : 'unknown';
+  if (alone !== 'unknown') return alone;
   const definite = signOfDefinite(p, signOf, budget);
   return definite === 'unknown' ? direct : definite;
+}
+
+const zeroRational = rational(0n);
+
+/** Of higher degrees the real roots are not counted. */
+const LARGEST_COUNTED_DEGREE = 40;
+
+/** The sign of an irreducible sum in one real symbol (no root is 0): that of its end, if it has no root where the symbol lies. */
+function signOfUnivariate(p: Polynomial, signOf: SignOf): Sign {
+  const [g] = p.generators;
+  if (g.kind !== 'symbol' || p.degrees[0] > LARGEST_COUNTED_DEGREE) return 'unknown';
+  const sign = signOf(g);
+  const lead = p.coefficients[0] > 0n ? 'positive' : 'negative';
+  const isEven = p.degrees[0] % 2 === 0;
+  if (sign === 'positive' || sign === 'nonnegative') {
+    return countRealRoots(p, zeroRational) === 0 ? lead : 'unknown';
+  }
+  if (sign === 'negative' || sign === 'nonpositive') {
+    const none = countRealRoots(p, undefined, zeroRational) === 0;
+    return none ? (isEven ? lead : negatedSign(lead)) : 'unknown';
+  }
+  return isEven && countRealRoots(p) === 0 ? lead : 'unknown';
 }
 
 /** The sign of a ratio wherever it is defined. */

@@ -22,6 +22,7 @@ import {
   negation,
   truth,
 } from './conditions.ts';
+import { isImplied } from './implied-condition.ts';
 import { simpleFactors, simpleSign } from './simple-factors.ts';
 import type { Comparison, Condition } from './values.ts';
 
@@ -179,9 +180,44 @@ export function reduceTogether(
       next[i] = reduceCondition(condition, signsUnder(others, signOf), budget);
     });
     const flat = partsOf(allOf(next));
-    if (equalConditions(allOf(flat), allOf(current))) return flat;
+    if (equalConditions(allOf(flat), allOf(current))) return withoutImplied(flat, signOf, budget);
     current = flat;
   }
+}
+
+/** The conditions but those that the others imply, one after the other. */
+function withoutImplied(
+  conditions: readonly Condition[],
+  signOf: SignOf,
+  budget?: Budget,
+): readonly Condition[] {
+  let kept = conditions;
+  for (const condition of conditions) {
+    const others = kept.filter((other) => other !== condition);
+    if (others.length < kept.length && follows(condition, others, signOf, budget)) kept = others;
+  }
+  return kept;
+}
+
+function follows(
+  condition: Condition,
+  others: readonly Condition[],
+  signOf: SignOf,
+  budget?: Budget,
+): boolean {
+  if (condition.kind !== 'compare') return false;
+  const premises = others.flatMap((other) => {
+    const relation = other.kind === 'compare' ? relationOf(other, signOf) : null;
+    return relation?.operator === '>' || relation?.operator === '>='
+      ? [{ polynomial: relation.polynomial, isStrict: relation.operator === '>' }]
+      : [];
+  });
+  const { polynomial, operator } = relationOf(condition, signOf);
+  const shows = (p: Polynomial, isStrict: boolean): boolean =>
+    isImplied(p, isStrict, premises, signOf, budget);
+  if (operator === '=') return false;
+  if (operator === '!=') return shows(polynomial, true) || shows(negPolynomial(polynomial), true);
+  return shows(polynomial, operator === '>');
 }
 
 /** The conditions that a conjunction joins; none for true. */

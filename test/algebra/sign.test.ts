@@ -52,6 +52,12 @@ describe('the sign of a polynomial', () => {
     ['s', 'unknown'],
     ['s^2', 'unknown'],
     ['j^2*J', 'negative'],
+    ['x^4 - x + 1', 'positive'],
+    ['x^4 - x', 'unknown'],
+    ['J^3 - J^2 - J + 2', 'positive'],
+    ['n^3 - n^2 + n - 1', 'negative'],
+    ['n^3 + 2*n^2 + 2', 'unknown'],
+    ['Ki^3', 'nonnegative'],
     ['pi - 0*x', 'positive'],
   ])('%s is %s', (text, expected) => {
     expect(signOfPolynomial(readPolynomial(text), signOf)).toBe(expected);

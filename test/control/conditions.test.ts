@@ -120,6 +120,33 @@ function valueOf(sign: Sign, random: () => number): number {
   return random() < 0.2 ? 0 : random() < 0.5 ? size : -size;
 }
 
+describe('conditions that others imply', () => {
+  const reduced = (...conditions: Condition[]): string =>
+    key(
+      reduceCondition(allOf(conditions), signs({ J: 'positive', Kd: 'positive', Ki: 'positive' })),
+    );
+
+  test('are left out', () => {
+    const strong = is('Kd*Kp - J*Ki', '>', '0');
+    expect(reduced(is('Kp', '>', '0'), strong)).toBe(key(strong));
+    expect(reduced(is('Kp + Kd', '>', '0'), strong)).toBe(key(strong));
+    expect(reduced(is('Kp', '!=', '0'), strong)).toBe(key(strong));
+    expect(reduced(is('x - 1', '>', '0'), is('x', '>', '0'))).toBe(key(is('x - 1', '>', '0')));
+    expect(reduced(is('x - 1', '>=', '0'), is('x', '>=', '0'))).toBe(key(is('x - 1', '>=', '0')));
+  });
+
+  test('are left out where it takes two of the others', () => {
+    const [a, b] = [is('x - 1', '>', '0'), is('y - 1', '>', '0')];
+    expect(reduced(a, b, is('(x - 1)*(y - 1) + J', '>', '0'))).toBe(key(allOf([a, b])));
+  });
+
+  test('stay where the others do not say enough', () => {
+    const [weak, strict] = [is('x', '>=', '0'), is('x', '>', '0')];
+    expect(reduced(weak, is('x - y', '>', '0'))).toBe(key(allOf([weak, is('x - y', '>', '0')])));
+    expect(reduced(strict, is('x*y', '>', '0'))).toContain('y');
+  });
+});
+
 describe('readable conditions', () => {
   test('prefer the gains in their order', () => {
     const c = is('Kd*Kp - J*Ki', '>', '0');
