@@ -1,7 +1,9 @@
 import { laplace, type Generator, type Polynomial, type Ratio } from '../algebra/index.ts';
 import { arrangePolynomial, arrangeRatio } from './arrangement.ts';
+import { arrangeNormalForm } from './normal-form.ts';
 import { latexOf } from './written-latex.ts';
 import { textOf } from './written-text.ts';
+import type { Written } from './written.ts';
 import { layoutOf, type Shape, type Writing } from './writing.ts';
 
 /**
@@ -17,7 +19,13 @@ export function formulaText(
   shape: Shape = 'readable',
   main: Generator = laplace,
 ): string {
-  return textOf(arrangeRatio(r, layoutOf(writing, shape, main)));
+  return textOf(arranged(r, writing, shape, main));
+}
+
+function arranged(r: Ratio, writing: Writing, shape: Shape, main: Generator): Written {
+  if (shape === 'time constants' || shape === 'poles and zeros')
+    return arrangeNormalForm(r, shape, layoutOf(writing));
+  return arrangeRatio(r, layoutOf(writing, shape, main));
 }
 
 /** The same formula as {@link formulaText}, as LaTeX without units. */
@@ -27,7 +35,7 @@ export function formulaLatex(
   shape: Shape = 'readable',
   main: Generator = laplace,
 ): string {
-  return latexOf(arrangeRatio(r, layoutOf(writing, shape, main)));
+  return latexOf(arranged(r, writing, shape, main));
 }
 
 /** A polynomial as re-readable text, in descending powers of s. */

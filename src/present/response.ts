@@ -22,7 +22,7 @@ import {
   type SignedTerm,
   type Written,
 } from './written.ts';
-import { layoutOf, type Layout, type Writing } from './writing.ts';
+import { layoutOf, timeLast, type Layout, type Writing } from './writing.ts';
 
 const time = ratioOf(symbol('t'));
 
@@ -37,7 +37,7 @@ interface Stage {
  * a response in decimals begins with ≈.
  */
 export function responseText(response: Response, writing: Writing): string {
-  const layout = layoutOf(lastInOrder(writing));
+  const layout = layoutOf(timeLast(writing));
   const stages = stagesOf(response, layout).map(({ after, terms }) => {
     const sum = textOf(sumOf(terms));
     return isZeroRatio(after) ? sum : `[${sum} from t = ${textOf(arrangeRatio(after, layout))} on]`;
@@ -48,7 +48,7 @@ export function responseText(response: Response, writing: Writing): string {
 
 /** The same response as {@link responseText}, as LaTeX. */
 export function responseLatex(response: Response, writing: Writing): string {
-  const layout = layoutOf(lastInOrder(writing));
+  const layout = layoutOf(timeLast(writing));
   const stages = stagesOf(response, layout).map(({ after, terms }) => {
     const sum = latexOf(sumOf(terms));
     if (isZeroRatio(after)) return sum;
@@ -56,12 +56,6 @@ export function responseLatex(response: Response, writing: Writing): string {
   });
   const whole = stages.length === 0 ? '0' : stages.join('+');
   return response.exact ? whole : `\\approx ${whole}`;
-}
-
-/** t is written behind all other symbols. */
-function lastInOrder(writing: Writing): Writing {
-  const last = symbol('t');
-  return { ...writing, order: (g) => (g === last ? Number.MAX_SAFE_INTEGER : writing.order(g)) };
 }
 
 /** Terms and impulses by the time at which they begin, the earliest first where times are numbers. */

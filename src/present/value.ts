@@ -6,7 +6,10 @@ import {
   laplace,
   mulRatios,
   negRatio,
+  ratioFromRational,
   ratioOf,
+  rational,
+  symbol,
   zeroRatio,
   type Ratio,
 } from '../algebra/index.ts';
@@ -15,7 +18,7 @@ import { conditionLatex, conditionText } from './condition.ts';
 import { formulaLatex, formulaText, polynomialLatex, polynomialText } from './formula.ts';
 import { matrixLatex, matrixText, routhLatex, routhText } from './table.ts';
 import { wordsLatex } from './words.ts';
-import type { Writing } from './writing.ts';
+import { timeLast, type Writing } from './writing.ts';
 
 /**
  * Any value as text; re-readable wherever the language has a form for it (formulas, conditions, matrices, sums of
@@ -125,6 +128,14 @@ function noValueText(value: NoValue, writing: Writing): string {
 function noValueLatex(value: NoValue, writing: Writing): string {
   if (value.growth === null) return wordsLatex(value.reason);
   const { rate, power } = value.growth;
-  const time = power === 1 ? 't' : `\\frac{t^{${power}}}{${power}!}`;
-  return `\\sim ${formulaLatex(rate, writing)}\\,${time}\\quad\\text{(grows)}`;
+  const law = Array.from({ length: power }, (_, i) => overCount(i + 1)).reduce(
+    (product, factor) => mulRatios(product, factor),
+    rate,
+  );
+  return `\\text{grows as}\\quad ${formulaLatex(law, timeLast(writing))}`;
+}
+
+/** t over a count: their product up to n is tⁿ/n!. */
+function overCount(count: number): Ratio {
+  return mulRatios(ratioOf(symbol('t')), ratioFromRational(rational(1n, BigInt(count))));
 }

@@ -1,4 +1,4 @@
-import { dependsOnLaplace, laplace, type Generator, type Sign } from '../algebra/index.ts';
+import { dependsOnLaplace, laplace, symbol, type Generator, type Sign } from '../algebra/index.ts';
 
 /** What the worksheet knows about its symbols that decides in which order and shape a formula is written. */
 export interface Writing {
@@ -9,11 +9,17 @@ export interface Writing {
   readonly signOf: (g: Generator) => Sign;
 }
 
+/** The same, with the time t written behind all other symbols. */
+export function timeLast(writing: Writing): Writing {
+  const last = symbol('t');
+  return { ...writing, order: (g) => (g === last ? Number.MAX_SAFE_INTEGER : writing.order(g)) };
+}
+
 /**
  * How much of a formula's structure is shown: `readable` pulls out what makes it shorter, `expanded` multiplies out,
- * `factored` shows every factor found.
+ * `factored` shows every factor found; the last two are the normal forms of transfer functions.
  */
-export type Shape = 'readable' | 'expanded' | 'factored';
+export type Shape = 'readable' | 'expanded' | 'factored' | 'time constants' | 'poles and zeros';
 
 /** Everything that decides how a formula is written. Sums are collected by descending powers of `main`. */
 export interface Layout {

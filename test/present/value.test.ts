@@ -160,4 +160,10 @@ describe('values of every kind', () => {
     expect(valueText(value, writing)).toBe(expected);
     katex.renderToString(valueLatex(value, writing), { strict: 'error' });
   });
+
+  it('of a sum that grows multiplies all of it by time', () => {
+    const growth = { rate: readFormula('R + a'), power: 2 };
+    const value: Value = { ...base, kind: 'none', reason: 'grows without bound', growth };
+    expect(valueLatex(value, writing)).toBe('\\text{grows as}\\quad \\frac{t^{2}(R+a)}{2}');
+  });
 });
