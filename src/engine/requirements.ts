@@ -191,7 +191,8 @@ function relationNumbers(
   worst: number,
 ): Numbers3 {
   const none: Numbers3 = { nominal: null, worst: null, limit: null, unit: null };
-  if (condition.kind !== 'compare' || !relationOf(request.statement.condition)) return none;
+  const relation = relationOf(request.statement.condition);
+  if (condition.kind !== 'compare' || !relation) return none;
   const [left, right] = evaluated.columns;
   const limit = right[0];
   if (!Number.isFinite(limit)) return none;
@@ -210,7 +211,7 @@ function relationNumbers(
     worst: ends[1],
     limit: inUnit(limit),
     unit: unit && unitText(unit) !== '' ? unit.text : null,
-    shown: shownMargin(ends, limit, unit),
+    shown: shownMargin(ends, limit, unit, relation.operators[0]),
   };
 }
 
@@ -218,11 +219,12 @@ function shownMargin(
   [nominal, worst]: readonly (number | null)[],
   limit: number,
   unit: Unit | null,
+  operator: Relation['operators'][number],
 ): string {
   const write = (number: number | null) => (number === null ? 'no value' : formatNumber(number, 3));
   const end = unit ? formatValue(limit, unit, { digits: 3 }) : formatNumber(limit, 3);
   const values = nominal === worst ? write(nominal) : `${write(nominal)}, worst ${write(worst)},`;
-  return `${values} of ${end}`;
+  return `${values} ${operator.startsWith('>') ? 'at least' : 'of'} ${end}`;
 }
 
 interface Judgement {
