@@ -41,10 +41,14 @@ function mainLine(content: ResultContent, movement: Movement | null): HTMLElemen
   return line;
 }
 
-function formulaElement(content: ResultContent): HTMLElement {
-  const left = content.nameLatex === null ? '' : `${content.nameLatex} = `;
-  return typeset(`${left}${content.latex}`, 'result');
+function formulaElement({ nameLatex, latex, kind }: ResultContent): HTMLElement {
+  if (nameLatex === null) return typeset(latex ?? '', 'result');
+  // What is no formula of its own but a relation, a list of them or words does not equal its name.
+  const isEqual = FORMULAS.has(kind) && !/^s(=|\\approx)/u.test(latex ?? '');
+  return typeset(`${nameLatex}${isEqual ? ' = ' : '\\colon\\quad '}${latex}`, 'result');
 }
+
+const FORMULAS: ReadonlySet<ResultContent['kind']> = new Set(['value', 'transfer', 'polynomial']);
 
 function figures(content: ResultContent, movement: Movement | null): HTMLElement {
   const made = element('div', 'figures');
@@ -65,7 +69,7 @@ export function movementElement({ was, by }: Movement): HTMLElement {
   return element('span', 'was', withMinus(was), by === null ? null : element('span', 'by', by));
 }
 
-/** Sets a hyphen before a digit as a minus sign, as print does. */
+/** Sets a hyphen before a digit, or between spaces, as a minus sign, as print does. */
 export function withMinus(text: string): string {
-  return text.replace(/(^|[\s(,])-(?=[\d.])/gu, '$1−');
+  return text.replace(/(^|[\s(,])-(?=[\d.])|(\s)-(?=\s)/gu, '$1$2−');
 }
