@@ -162,6 +162,14 @@ export class Numbers {
     return { value, ratios, conditions, inputs };
   }
 
+  /** What is made of a subject as it is derived, in symbols; kept while its derivation stands. Null where it has none. */
+  derivedForm<Form>(subject: Subject, what: string, make: (value: Value) => Form): Form | null {
+    return this.queries.get(`${what}:${subject.key}`, () => {
+      const outcome = subject.derive(BASE_SCOPE);
+      return outcome.ok ? make(outcome.value) : null;
+    });
+  }
+
   /** Names whose nominal is exactly 0 among those that a subject is derived from, derived parameters included. */
   zeros(subject: Subject): readonly string[] {
     return this.queries.get(

@@ -8,7 +8,6 @@ import {
   asRational,
 } from '../algebra/index.ts';
 import type {
-  ArrayValue,
   Condition,
   FormulaValue,
   NoValue,
@@ -20,15 +19,12 @@ import { ALWAYS, allOf, compileRatios, UNDECIDED, YES } from '../control/index.t
 import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
 import { polynomialRoots } from '../numeric/index.ts';
 import {
-  conditionText,
-  formulaLatex,
   formulaText,
   jsonComplex,
   jsonNumber,
   jsonRoots,
   matrixRows,
   rootsLatex,
-  routhRows,
   valueLatex,
   valueText,
   type Writing,
@@ -51,6 +47,7 @@ import type { ResultContent, ResultKind, SpanContent } from './report.ts';
 import { vanishingNotes } from './vanishing.ts';
 import { sampleBox } from './tolerance.ts';
 import { isMonotoneSubject, movingNames, variantsOf } from './variants.ts';
+import { writtenForm, type Written } from './written.ts';
 
 const NOMINAL: Points = { count: 1, columns: new Map() };
 
@@ -73,17 +70,20 @@ export function resultContent(
 ): ResultContent {
   const writing = derivations.writing();
   const nominal = nominalValue(request, numbers, derivations);
-  const formula = formulaOf(value, writing);
+  const written = numbers.derivedForm(request.subject, 'written', (derived) =>
+    writtenForm(derived, derivations.writing()),
+  )!;
+  const { formula } = written;
   const { display } = request;
   const shown = shownText(nominal.value, display, request.hints);
-  const parts = partsOf(value, numbers, writing);
+  const parts = written.array ?? partsOf(value, numbers, writing);
   const hasNoDecibels = Array.isArray(nominal.value) && display.fixed?.logarithmic;
   return {
     name: request.name,
     nameLatex: request.name && nameToLatex(request.name),
     kind: kindOf(value),
     formula,
-    latex: latexOf(value, numbers, writing),
+    latex: latexOf(value, written, numbers),
     value: nominal.value,
     unit: value.kind === 'condition' ? null : coherentText(display.measure),
     shown,
@@ -92,6 +92,7 @@ export function resultContent(
       ...new Set([
         ...derivations.provisions(value),
         ...value.notes,
+        ...written.notes,
         ...request.notes,
         ...display.notes,
         ...(hasNoDecibels
@@ -107,13 +108,6 @@ export function resultContent(
     waitsFor: null,
     dependsOn: [...request.subject.reach],
   };
-}
-
-/** The derived form as re-readable text; null where there is nothing to read. */
-function formulaOf(value: Value, writing: Writing): string | null {
-  if (value.kind === 'none') return null;
-  if (value.kind === 'formula') return formulaText(value.ratio, writing, ...formArguments(value));
-  return valueText(value, writing);
 }
 
 /** The content of a result that a problem stops. */
@@ -387,23 +381,10 @@ export function absentPlace(
   return Object.fromEntries(names.map((name) => [name, sample.columns.get(name)![index]]));
 }
 
-function latexOf(value: Value, numbers: Numbers, writing: Writing): string {
-  if (value.kind === 'roots') {
-    const roots = rootNumbers(value, numbers);
-    return roots ? rootsLatex(roots) : valueLatex(value, writing);
-  }
-  if (value.kind === 'formula' && value.form)
-    return formulaLatex(value.ratio, writing, ...formArguments(value));
-  return valueLatex(value, writing);
-}
-
-/** How `expand`, `factor` and `collect` ask a formula to be written. */
-export function formArguments(
-  value: FormulaValue,
-): [shape?: 'readable' | 'expanded' | 'factored', main?: typeof laplace] {
-  if (value.form?.kind === 'expanded') return ['expanded'];
-  if (value.form?.kind === 'factored') return ['factored'];
-  return value.form?.kind === 'collected' ? ['readable', value.form.by] : [];
+/** Roots are set in numbers where they have any. */
+function latexOf(value: Value, written: Written, numbers: Numbers): string {
+  const roots = value.kind === 'roots' ? rootNumbers(value, numbers) : null;
+  return roots ? rootsLatex(roots) : written.latex;
 }
 
 function rootNumbers(value: RootsValue, numbers: Numbers) {
@@ -420,8 +401,6 @@ function rootNumbers(value: RootsValue, numbers: Numbers) {
 /** The parts of a result, as plain data for the page and for `check --json`. */
 function partsOf(value: Value, numbers: Numbers, writing: Writing): unknown {
   switch (value.kind) {
-    case 'array':
-      return arrayParts(value, writing);
     case 'roots': {
       const roots = rootNumbers(value, numbers);
       return roots && jsonRoots(roots);
@@ -439,12 +418,6 @@ function partsOf(value: Value, numbers: Numbers, writing: Writing): unknown {
     default:
       return null;
   }
-}
-
-function arrayParts(value: ArrayValue, writing: Writing): unknown {
-  const { routh } = value;
-  const conditions = routh.conditions.map((condition) => conditionText(condition, writing));
-  return { rows: routhRows(routh, writing), conditions, counts: routh.counts };
 }
 
 function listParts(value: PartsValue, numbers: Numbers, writing: Writing): unknown {

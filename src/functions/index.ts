@@ -27,6 +27,7 @@ import { systemType } from './system-type.ts';
 import { TRANSFER_PARTS } from './transfer-parts.ts';
 
 export * from './spec.ts';
+export { recordSigns, type UsedSigns } from './used-signs.ts';
 export { SOURCES, sourceNamed, type Source } from './sources.ts';
 export { hiddenNote } from './hidden-modes.ts';
 

@@ -1,6 +1,7 @@
 import { ALWAYS, routhArray, type RouthArray } from '../control/index.ts';
 import { isRefusal, type Refusal } from '../base/index.ts';
 import { loopOf, polynomialOf, ratioOfArgument } from './answer.ts';
+import { recordSigns } from './used-signs.ts';
 import { one, type Argument, type FunctionContext, type WorksheetFunction } from './spec.ts';
 
 export const routh: WorksheetFunction = {
@@ -14,12 +15,14 @@ export const routh: WorksheetFunction = {
   unit: 'unchecked',
   availability: 'now',
   evaluate: ([subject], context) => {
-    const routhOf = arrayOf(subject, context);
+    const signs = recordSigns(context.signOf);
+    const routhOf = arrayOf(subject, { ...context, signOf: signs.signOf });
     if (isRefusal(routhOf)) return routhOf;
     const conditions = routhOf.conditions
       .map(context.readable)
       .filter((c) => c.kind !== 'truth' || !c.value);
-    return { kind: 'array', routh: { ...routhOf, conditions }, when: ALWAYS, notes: routhOf.notes };
+    const notes = [...routhOf.notes, ...signs.notes()];
+    return { kind: 'array', routh: { ...routhOf, conditions }, when: ALWAYS, notes };
   },
 };
 

@@ -238,3 +238,29 @@ routh(p)`;
     expect(conditions('tune Kp from 0 to 9 N m/rad')).toEqual(['Kp > J Ki/(b + Kd)']);
   });
 });
+
+describe('signs', () => {
+  const lines = `
+J is 2 kg m^2
+Kd is 4 N m s/rad
+Ki is 1 N m/(rad s)
+Kp is 3 N m/rad
+tune Kp from 1 to 10 N m/rad
+loop body driven by r
+  J theta'' = (Kp + Ki/s + Kd s) (r - theta)
+routh(body)
+stable(body)`;
+
+  test('that simplified a condition are said beside it', () => {
+    const { result } = evaluateCell(`J, Kd, Ki are positive${lines}`);
+    for (const statement of ['routh(body)', 'stable(body)'])
+      expect(result(statement).notes).toEqual(['It uses that J, Kd and Ki are positive.']);
+  });
+
+  test('that nobody stated are not used, even where the numbers have them', () => {
+    const { result } = evaluateCell(lines);
+    expect(result('stable(body)').formula).toBe('J Kd > 0 and J Ki > 0 and Kd Kp > J Ki');
+    expect(result('stable(body)').notes).toEqual([]);
+    expect(result('stable(body)').value).toBe(true);
+  });
+});
