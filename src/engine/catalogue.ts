@@ -17,6 +17,7 @@ import {
 } from '../language/index.ts';
 import type { Span } from '../base/index.ts';
 import { FUNCTIONS, sourceNamed } from '../functions/index.ts';
+import { dependenciesOf, type Dependencies } from './dependency-order.ts';
 import { takenSignals } from './taken-signals.ts';
 
 /** What introduces a name. */
@@ -57,6 +58,8 @@ export interface Catalogue {
   }[];
   /** Order in which names are introduced. */
   readonly order: ReadonlyMap<string, number>;
+  /** Every name after those that it depends on, so that nothing is evaluated deep in something else. */
+  readonly evaluationOrder: readonly string[];
   /** Names that stand for nothing: in a circle of definitions, defined twice, loops with a signal that is none. */
   readonly faulty: ReadonlySet<string>;
   readonly problems: readonly Problem[];
@@ -140,9 +143,13 @@ class CatalogueBuilder {
     this.checkTypesetting();
     this.checkTunes();
     this.checkHiding();
-    const faulty = new Set([...this.checkCircles(), ...this.ambiguous, ...this.checkSignals()]);
+    const { circles, order: evaluationOrder } = dependenciesOf(this.entries.keys(), (name) =>
+      referencesOf(this.entries.get(name)!, this.entries),
+    );
+    this.checkCircles(circles);
+    const faulty = new Set([...circles.flat(), ...this.ambiguous, ...this.checkSignals()]);
     const { entries, signs, units, tunes, customUnits, order, problems } = this;
-    return { entries, signs, units, tunes, customUnits, order, faulty, problems };
+    return { entries, signs, units, tunes, customUnits, order, evaluationOrder, faulty, problems };
   }
 
   private introduce(name: string, span: Span, entry: Entry): void {
@@ -259,8 +266,7 @@ class CatalogueBuilder {
     return taken.map(({ loop }) => loop);
   }
 
-  private checkCircles(): string[] {
-    const circles = findCircles(this.entries);
+  private checkCircles(circles: Dependencies['circles']): void {
     for (const circle of circles) {
       const lines = circle.map((name) => this.lineOf(this.entries.get(name)!.placed.from));
       for (const name of circle) {
@@ -277,7 +283,6 @@ class CatalogueBuilder {
         );
       }
     }
-    return circles.flat();
   }
 }
 
@@ -316,31 +321,4 @@ export function referencesOf(entry: Entry, entries: ReadonlyMap<string, Entry>):
     default:
       return [];
   }
-}
-
-/** Strongly connected components of more than one name, or of one that refers to itself (Tarjan 1972). */
-function findCircles(entries: ReadonlyMap<string, Entry>): string[][] {
-  const index = new Map<string, number>();
-  const low = new Map<string, number>();
-  const stack: string[] = [];
-  const circles: string[][] = [];
-  const visit = (name: string): void => {
-    index.set(name, index.size);
-    low.set(name, index.get(name)!);
-    stack.push(name);
-    const references = referencesOf(entries.get(name)!, entries);
-    for (const next of references) {
-      if (!index.has(next)) {
-        visit(next);
-        low.set(name, Math.min(low.get(name)!, low.get(next)!));
-      } else if (stack.includes(next)) {
-        low.set(name, Math.min(low.get(name)!, index.get(next)!));
-      }
-    }
-    if (low.get(name) !== index.get(name)) return;
-    const component = stack.splice(stack.indexOf(name));
-    if (component.length > 1 || references.includes(name)) circles.push(component);
-  };
-  for (const name of entries.keys()) if (!index.has(name)) visit(name);
-  return circles;
 }

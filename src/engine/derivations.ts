@@ -28,6 +28,7 @@ import {
 } from '../control/index.ts';
 import { FUNCTIONS, type FunctionContext, type WorksheetFunction } from '../functions/index.ts';
 import {
+  namesIn,
   nearestName,
   type CaseStatement,
   type DefinitionStatement,
@@ -51,6 +52,9 @@ import { BASE_SCOPE, relevantScope, type Scope } from './scope.ts';
 import { outcomeOf, Stop, stopAt, waitFor, type Outcome } from './stop.ts';
 import { readOwnUnits } from './unit-statements.ts';
 import { stopAtUnknownName } from './unknown-name.ts';
+
+/** From so many names behind a name on, they are gone through in order. */
+const LONG_CHAIN = 50;
 
 /**
  * The symbolic stage: what every name stands for in symbols, derived on demand and kept until something that it was
@@ -91,16 +95,12 @@ export class Derivations implements Meanings {
   private collectReach(name: string): ReadonlySet<string> {
     const reach = new Set([name]);
     const { entries, faulty } = this.catalogue;
-    const visit = (next: string): void => {
+    // A set is gone through with what is added on the way.
+    for (const next of reach) {
       const entry = entries.get(next);
-      if (!entry || faulty.has(next)) return;
-      for (const reference of referencesOf(entry, entries)) {
-        if (reach.has(reference)) continue;
-        reach.add(reference);
-        visit(reference);
-      }
-    };
-    visit(name);
+      if (!entry || faulty.has(next)) continue;
+      for (const reference of referencesOf(entry, entries)) reach.add(reference);
+    }
     return reach;
   }
 
@@ -159,6 +159,24 @@ export class Derivations implements Meanings {
     );
   }
 
+  /** Derives the definitions one after the other, each after what it depends on: a long chain is no deep recursion. */
+  prepare(): void {
+    for (const name of this.catalogue.evaluationOrder) {
+      if (this.kindOf(name) !== 'definition') continue;
+      this.definition(name, BASE_SCOPE);
+      if (this.isDerivedParameter(name)) this.signOf(symbol(name));
+    }
+  }
+
+  /** The definitions behind a name, each after what it depends on; empty where they are few. */
+  longChainBehind(name: string): readonly string[] {
+    const reach = this.kindOf(name) === 'definition' ? this.reachOf(name) : null;
+    if (!reach || reach.size < LONG_CHAIN) return [];
+    return this.catalogue.evaluationOrder.filter(
+      (next) => next !== name && reach.has(next) && this.kindOf(next) === 'definition',
+    );
+  }
+
   /** A definition as derived in a scope, parameters of its own kept as symbols. */
   definition(name: string, scope: Scope): Outcome<Value> {
     return this.queries.get(
@@ -179,12 +197,20 @@ export class Derivations implements Meanings {
     );
   }
 
+  /** Whether a loop or a load case stands behind a name. */
+  private standsOnLoop(name: string): boolean {
+    return this.queries.get(`stands on loop:${name}`, () => {
+      const kind = this.kindOf(name);
+      if (kind !== 'definition') return kind === 'loop' || kind === 'case';
+      return namesIn(this.node<DefinitionStatement>(name).formula).some((next) =>
+        this.standsOnLoop(next),
+      );
+    });
+  }
+
   /** What a derived parameter stands for, in assumptions and other derived parameters; null if it is not one. */
   private derivedRatio(name: string): Ratio | null {
-    for (const reached of this.reachOf(name)) {
-      const kind = this.kindOf(reached);
-      if (kind === 'loop' || kind === 'case') return null;
-    }
+    if (this.standsOnLoop(name)) return null;
     const outcome = this.definition(name, BASE_SCOPE);
     if (!outcome.ok || outcome.value.kind !== 'formula' || outcome.value.when !== ALWAYS)
       return null;

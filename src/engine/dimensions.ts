@@ -57,6 +57,8 @@ import {
 export interface DimensionSource {
   readonly statements: readonly Statement[];
   entry(name: string): Statement | null;
+  /** Names to be measured before a name with many behind it, so that a long chain is no deep recursion. */
+  longChainBehind(name: string): readonly string[];
   /** The typed unit of an assumption, '' for none; or of a `has unit` statement; null for a symbol without either. */
   unitText(name: string): string | null;
   signalsOf(loop: LoopStatement): ReadonlySet<string>;
@@ -392,6 +394,13 @@ class DimensionCheck {
     const known = this.names.get(name);
     if (known) return known;
     if (this.started.has(name)) return FREE;
+    for (const earlier of this.source.longChainBehind(name)) this.measureNew(earlier);
+    return this.measureNew(name);
+  }
+
+  private measureNew(name: string): Measure {
+    const known = this.names.get(name);
+    if (known) return known;
     this.started.add(name);
     const measure = this.introducedMeasure(name);
     this.names.set(name, measure);

@@ -14,7 +14,7 @@ interface Memo {
   value: unknown;
   compute: () => unknown;
   equal: (a: unknown, b: unknown) => boolean;
-  reads: Memo[];
+  reads: Set<Memo>;
   changedAt: number;
   verifiedAt: number;
   running: boolean;
@@ -59,7 +59,7 @@ export class Queries {
       value: undefined,
       compute,
       equal: equal as Memo['equal'],
-      reads: [],
+      reads: new Set(),
       changedAt: 0,
       verifiedAt: 0,
       running: false,
@@ -78,7 +78,7 @@ export class Queries {
         value,
         compute: () => value,
         equal: Object.is,
-        reads: [],
+        reads: new Set(),
         changedAt: this.revision,
         verifiedAt: Infinity,
         running: false,
@@ -90,7 +90,7 @@ export class Queries {
   }
 
   private record(memo: Memo): void {
-    this.running.at(-1)?.reads.push(memo);
+    this.running.at(-1)?.reads.add(memo);
   }
 
   private refresh(memo: Memo, key: string): void {
@@ -114,7 +114,7 @@ export class Queries {
   private run(memo: Memo): void {
     const before = memo.reads;
     memo.running = true;
-    memo.reads = [];
+    memo.reads = new Set();
     this.running.push(memo);
     this.evaluations++;
     try {

@@ -65,7 +65,7 @@ export class Statements {
 
   /** The report on a statement; `lineOf` tells the line of a name that it waits for. */
   reportOn(node: Statement, lineOf: LineOf): StatementReport {
-    const report = this.queries.get(`statement:${this.keyOf(node)}`, () => this.makeReport(node));
+    const report = this.queries.get(`statement:${this.keyOf(node)}`, () => this.guarded(node));
     return placeWaiting(report, this.waitingFor(node), lineOf);
   }
 
@@ -78,6 +78,12 @@ export class Statements {
     const known = this.keys.get(node) ?? String(++this.count);
     this.keys.set(node, known);
     return known;
+  }
+
+  /** Whatever goes wrong in one statement is kept in it: the others have their reports. */
+  private guarded(node: Statement): StatementReport {
+    const outcome = outcomeOf(node.span, () => this.makeReport(node));
+    return outcome.ok ? outcome.value : failedReport(node, problemsOf(outcome));
   }
 
   private makeReport(node: Statement): StatementReport {
@@ -376,6 +382,7 @@ export class Statements {
       const statements = this.queries.get('structure', () => this.structure(), sameStatements);
       return checkDimensions({
         statements,
+        longChainBehind: (name) => this.derivations.longChainBehind(name),
         entry: (name) => this.entryStatement(name),
         unitText: (name) => this.unitText(name),
         signalsOf: (loop) => {
@@ -455,6 +462,16 @@ function firstStopped(outcomes: readonly Outcome<unknown>[]): Outcome<unknown> |
 
 function problemsOf(outcome: Outcome<unknown> | null): readonly Problem[] {
   return outcome && !outcome.ok && outcome.problem ? [outcome.problem] : [];
+}
+
+function failedReport(node: Statement, problems: readonly Problem[]): StatementReport {
+  const name = node.kind === 'definition' ? node.name : null;
+  const hasResult = node.kind === 'definition' || node.kind === 'formula' || node.kind === 'draw';
+  return {
+    result: hasResult ? erroneousContent(name, node.kind === 'draw' ? 'figure' : 'value') : null,
+    requirement: node.kind === 'require' ? stoppedRequirement(node) : null,
+    problems,
+  };
 }
 
 function unavailable(
