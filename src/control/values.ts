@@ -40,6 +40,7 @@ export interface FormulaValue extends ValueBase {
 export type WrittenForm =
   | { readonly kind: 'expanded' }
   | { readonly kind: 'factored' }
+  | { readonly kind: 'time constants' | 'poles and zeros' }
   | { readonly kind: 'collected'; readonly by: Generator };
 
 /** A value that does not exist or is infinite, with the reason in words. Never a problem. */
@@ -105,13 +106,30 @@ export interface TextValue extends ValueBase {
 
 export type SourceKind = 'constant' | 'drifting' | 'impulsive' | 'periodic' | 'random' | 'initial';
 
-/** One source's share of a signal: X(s) = transform · e^(−s·after). */
+/**
+ * White noise: what stands behind every random source. Terms of one `id` and one density are the same noise on several
+ * paths; all others are independent.
+ */
+export interface WhiteNoise {
+  readonly id: string;
+  /** One-sided, per Hz. */
+  readonly density: Ratio;
+}
+
+/**
+ * One source's share of a signal: X(s) = transform · e^(−s·after). A random share has no transform of its own: there
+ * `transform` is the transfer function from the white noise to the signal.
+ */
 export interface SignalTerm {
   readonly input: string;
   readonly source: SourceKind;
   readonly transform: Ratio;
   /** Seconds by which the source begins later; zero if it does not. */
   readonly after: Ratio;
+  /** Of a random share only. */
+  readonly noise?: WhiteNoise;
+  /** Of a periodic share only: the angular frequency of its line. */
+  readonly frequency?: Ratio;
 }
 
 export interface SignalValue extends ValueBase {

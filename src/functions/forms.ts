@@ -54,4 +54,18 @@ export const FORMS: readonly WorksheetFunction[] = [
     [one('s', 'name')],
     ([, by]) => ({ kind: 'collected', by: nameOf(by).generator }),
   ),
+  written(
+    'time_constant_form',
+    'A transfer function as a gain, powers of s and factors 1 + T s.',
+    'J, b, K are positive\ntime_constant_form(K/(s (J s + b)))',
+    [],
+    () => ({ kind: 'time constants' }),
+  ),
+  written(
+    'pole_zero_form',
+    'A transfer function as a gain, powers of s and factors s + a.',
+    'J, b, K are positive\npole_zero_form(K/(s (J s + b)))',
+    [],
+    () => ({ kind: 'poles and zeros' }),
+  ),
 ];
