@@ -22,16 +22,19 @@ export function routhText(array: RouthArray, writing: Writing): string {
 /** A Routh array as LaTeX, and below it the conditions that keep its first column positive, one a line. */
 export function routhLatex(array: RouthArray, writing: Writing): string {
   const lines = [arrayLatex(array, writing), ...verdictLines(array.conditions, writing)];
-  return `\\begin{array}{l} ${lines.join(' \\\\[8pt] ')} \\end{array}`;
+  return `\\begin{array}{l} ${lines.join(' \\\\ ')} \\end{array}`;
 }
+
+/** A line that keeps away from the one above. */
+const ROOM = '\\rule{0pt}{2.1em}';
 
 /** "stable if c₁", "and c₂", …; a word where the conditions are settled. */
 function verdictLines(conditions: readonly Condition[], writing: Writing): string[] {
   const whole = allOf(conditions);
-  if (whole.kind === 'truth') return [whole.value ? '\\text{stable}' : '\\text{not stable}'];
+  if (whole.kind === 'truth') return [`${ROOM}\\text{${whole.value ? 'stable' : 'not stable'}}`];
   return conditions.map((condition, i) => {
     const start = i === 0 ? 'stable if' : 'and';
-    return `\\text{${start}}\\quad \\displaystyle ${conditionLatex(condition, writing)}`;
+    return `${ROOM}\\text{${start}}\\quad \\displaystyle ${conditionLatex(condition, writing)}`;
   });
 }
 
@@ -44,8 +47,7 @@ function arrayLatex(array: RouthArray, writing: Writing): string {
     const mark = special === null ? '' : `\\;\\leftarrow\\text{ ${special}}`;
     return [powerLatex(power), ...cells, ...padding].join(' & ') + mark;
   });
-  const body = rows.join(' \\\\[4pt] ');
-  return `\\begin{array}{c|${'c'.repeat(columns)}} ${body} \\end{array}`;
+  return `\\begin{array}{c|${'c'.repeat(columns)}} ${rowsLatex(rows)} \\end{array}`;
 }
 
 /** Characters of an exact number in an array; a longer one, such as a fraction of products, is rounded for reading. */
@@ -64,6 +66,14 @@ function cellLatex(entry: Ratio, writing: Writing): string {
   return latex.includes('\\frac') ? `\\displaystyle ${latex}` : latex;
 }
 
+/** Rows one below the other; one with fractions in full size needs more room below it. */
+function rowsLatex(rows: readonly string[]): string {
+  const separated = rows.slice(0, -1).map((row) => {
+    return `${row} \\\\[${row.includes('\\frac') ? '10pt' : '3pt'}]`;
+  });
+  return [...separated, ...rows.slice(-1)].join(' ');
+}
+
 function powerLatex(power: number): string {
   return `s^{${power}}`;
 }
@@ -79,7 +89,7 @@ export function matrixText(rows: readonly (readonly Ratio[])[], writing: Writing
 export function matrixLatex(rows: readonly (readonly Ratio[])[], writing: Writing): string {
   if (isSingle(rows)) return formulaLatex(rows[0][0], writing);
   const lines = rows.map((row) => row.map((entry) => cellLatex(entry, writing)).join(' & '));
-  return `\\begin{bmatrix} ${lines.join(' \\\\[4pt] ')} \\end{bmatrix}`;
+  return `\\begin{bmatrix} ${rowsLatex(lines)} \\end{bmatrix}`;
 }
 
 /** The entries of a matrix as re-readable formulas. */
