@@ -1,5 +1,6 @@
 import {
   asRational,
+  derivativeRatio,
   dependsOn,
   fractionOfRatio,
   laplace,
@@ -9,11 +10,12 @@ import {
   divRatios,
   generatorsOfRatio,
   polynomialKey,
+  ratioKey,
   type Polynomial,
   type Generator,
   type Ratio,
 } from '../algebra/index.ts';
-import { Budget, BudgetExceeded } from '../base/index.ts';
+import { Budget, BudgetExceeded, isRefusal } from '../base/index.ts';
 import {
   compileConditions,
   compileRatios,
@@ -68,6 +70,8 @@ export interface Evaluated {
 const CUBE_SEED = 20260101;
 /** Work that may be spent on the conditions of one block. */
 const CONDITIONS_BUDGET = 2_000_000;
+/** Work that may be spent on one derivative. */
+const DERIVATIVE_BUDGET = 400_000;
 
 /**
  * The numeric stage: numbers of assumptions put into what was derived. A changed number runs nothing but this.
@@ -125,6 +129,24 @@ export class Numbers {
       try {
         const budget = new Budget(CONDITIONS_BUDGET);
         return stabilityConditions(polynomial, this.derivations.signOf, budget);
+      } catch (error) {
+        if (error instanceof BudgetExceeded) return null;
+        throw error;
+      }
+    });
+  }
+
+  /** A formula with derived parameters opened, kept over changes of numbers. */
+  opened(ratio: Ratio): Ratio {
+    return this.queries.get(`opened:${ratioKey(ratio)}`, () => this.derivations.open(ratio));
+  }
+
+  /** The derivative of a formula, kept over changes of numbers; null where it has none or is too large to find. */
+  derivative(ratio: Ratio, g: Generator): Ratio | null {
+    return this.queries.get(`derivative:${g.key}:${ratioKey(ratio)}`, () => {
+      try {
+        const derivative = derivativeRatio(ratio, g, new Budget(DERIVATIVE_BUDGET));
+        return isRefusal(derivative) ? null : derivative;
       } catch (error) {
         if (error instanceof BudgetExceeded) return null;
         throw error;

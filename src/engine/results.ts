@@ -336,7 +336,7 @@ function spanOf(
     high = Math.max(high, value);
   }
   const magnitude = variants
-    .map(({ compiled }) => asMagnitude(derivations.open((compiled!.value as FormulaValue).ratio)))
+    .map(({ compiled }) => asMagnitude(numbers.opened((compiled!.value as FormulaValue).ratio)))
     .find(
       (part) => part && sample.method === 'corners' && changesSign(part.inner, sample, numbers),
     );

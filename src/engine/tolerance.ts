@@ -1,5 +1,4 @@
 import {
-  derivativeRatio,
   dependsOn,
   generatorsOfRatio,
   numberToRational,
@@ -100,11 +99,9 @@ export function isMonotone(
   derivations: Derivations,
 ): boolean {
   try {
-    const opened = holdNominals(derivations.open(ratio), numbers);
-    return (
-      opened !== null &&
-      names.every((name) => isMonotoneIn(opened, name, signOverBox(numbers, derivations)))
-    );
+    const opened = holdNominals(numbers.opened(ratio), numbers);
+    const signOf = signOverBox(numbers, derivations);
+    return opened !== null && names.every((name) => isMonotoneIn(opened, name, signOf, numbers));
   } catch (error) {
     if (error instanceof BudgetExceeded) return false;
     throw error;
@@ -125,14 +122,19 @@ function holdNominals(ratio: Ratio, numbers: Numbers): Ratio | null {
   return isRefusal(substituted) ? null : substituted;
 }
 
-function isMonotoneIn(ratio: Ratio, name: string, signOf: (g: Generator) => Sign): boolean {
+function isMonotoneIn(
+  ratio: Ratio,
+  name: string,
+  signOf: (g: Generator) => Sign,
+  numbers: Numbers,
+): boolean {
   const g = symbol(name);
   if (!dependsOn(ratio, g)) return true;
   const budget = new Budget(PROOF_BUDGET);
   const denominator = signOfPolynomial(ratio.den, signOf, budget);
   if (denominator !== 'positive' && denominator !== 'negative') return false;
-  const derivative = derivativeRatio(ratio, g, budget);
-  return !isRefusal(derivative) && signOfRatio(derivative, signOf, budget) !== 'unknown';
+  const derivative = numbers.derivative(ratio, g);
+  return derivative !== null && signOfRatio(derivative, signOf, budget) !== 'unknown';
 }
 
 /** Whether a condition's truth over the box is settled by the corners: each of its relations is monotone. */
@@ -183,8 +185,8 @@ function isMonotoneRelation(
   // Between corners of either side a monotone quantity passes through the value that it must not have.
   if (operator === '!=') return false;
   const isUpper = operator === '<' || operator === '<=';
-  const magnitude = asMagnitude(derivations.open(left));
-  const rightFixed = names.every((name) => !dependsOn(derivations.open(right), symbol(name)));
+  const magnitude = asMagnitude(numbers.opened(left));
+  const rightFixed = names.every((name) => !dependsOn(numbers.opened(right), symbol(name)));
   if (magnitude && magnitude.factor > 0 && isUpper && rightFixed) {
     return isMonotone(magnitude.inner, names, numbers, derivations);
   }

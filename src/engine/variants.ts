@@ -92,6 +92,6 @@ function isMonotoneValue(
   if (value.kind === 'condition')
     return isMonotoneCondition(value.condition, names, numbers, derivations);
   if (value.kind !== 'formula') return true;
-  const opened = derivations.open(value.ratio);
+  const opened = numbers.opened(value.ratio);
   return isMonotone(asMagnitude(opened)?.inner ?? opened, names, numbers, derivations);
 }
