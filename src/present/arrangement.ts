@@ -64,6 +64,9 @@ function shorter(first: Written, second: Written): Written {
 
 /** One fraction with whole numbers. */
 function wholeForm(num: Polynomial, den: Polynomial, layout: Layout): Written {
+  if (layout.shape === 'expanded') {
+    return fractionWith(polynomialForm(num, 1n, layout), polynomialForm(den, 1n, layout));
+  }
   const top = factorsOf(num, layout);
   const bottom = factorsOf(den, layout);
   const number = writeNumber(top.number, bottom.number);

@@ -57,6 +57,12 @@ describe('a formula is written as an engineer writes it', () => {
 });
 
 describe('the shape of a formula can be asked for', () => {
+  it('expanded: above and below the line', () => {
+    expect(formulaText(readFormula('Kp/(3 s (T1 s + 1) (T2 s + 1))'), writing, 'expanded')).toBe(
+      'Kp/(3 T1 T2 s^3 + 3 T1 s^2 + 3 T2 s^2 + 3 s)',
+    );
+  });
+
   it('expanded: every product multiplied out, collected by nothing', () => {
     expect(formulaText(readFormula('(a + c) s (s + 1)'), writing, 'expanded')).toBe(
       'a s^2 + c s^2 + a s + c s',
