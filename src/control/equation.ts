@@ -36,13 +36,13 @@ function signsAgree(found: Sign, wanted: Sign): boolean {
   return !(clashes[wanted]?.includes(found) ?? false);
 }
 
-/** a x² = −c for an unknown of known sign. */
+/** a x² = −c for an unknown of known sign; null where no real number solves it. */
 function solveSquare(
   factor: Polynomial,
   unknown: Generator,
   signOf: SignOf,
   budget?: Budget,
-): Ratio | Refusal {
+): Ratio | null | Refusal {
   const [c, b, a] = coefficientsIn(factor, unknown);
   if (degreeIn(factor, unknown) !== 2 || !isZeroPolynomial(b)) {
     return refuse(
@@ -51,7 +51,9 @@ function solveSquare(
     );
   }
   const sign = signOf(unknown);
-  const root = sqrtOf(negRatio(divRatios(ratioFromPolynomial(c), ratioFromPolynomial(a))), budget);
+  const square = negRatio(divRatios(ratioFromPolynomial(c), ratioFromPolynomial(a)));
+  if (signOfRatio(square, signOf) === 'negative') return null;
+  const root = sqrtOf(square, budget);
   if (sign === 'positive' || sign === 'nonnegative') return root;
   if (sign === 'negative' || sign === 'nonpositive') return negRatio(root);
   return refuse(
@@ -65,7 +67,7 @@ function solveFactor(
   unknown: Generator,
   signOf: SignOf,
   budget?: Budget,
-): Ratio | Refusal {
+): Ratio | null | Refusal {
   if (degreeIn(factor, unknown) !== 1) return solveSquare(factor, unknown, signOf, budget);
   const [rest, coefficient] = coefficientsIn(factor, unknown);
   return negRatio(divRatios(ratioFromPolynomial(rest), ratioFromPolynomial(coefficient), budget));
@@ -103,6 +105,7 @@ export function solutionsFor(
   const solutions: Ratio[] = [];
   for (const factor of factors) {
     const solution = solveFactor(factor, unknown, signOf, budget);
+    if (solution === null) continue;
     if (isRefusal(solution)) return solution;
     certifySolution(equation, unknown, solution);
     if (signsAgree(signOfRatio(solution, signOf), signOf(unknown))) solutions.push(solution);

@@ -100,8 +100,11 @@ function solveEquation(
 ): Value | Refusal {
   const solutions = solutionsFor(left, right, unknown, signOf, budget);
   if (isRefusal(solutions)) return solutions;
-  if (solutions.length === 0)
-    return absentAnswer(`no ${unknown.name} of the sign assumed solves this`);
+  if (solutions.length === 0) {
+    const kind = signOf(unknown) === 'unknown' ? 'no real' : 'no';
+    const sign = signOf(unknown) === 'unknown' ? '' : ' of the sign assumed';
+    return absentAnswer(`${kind} ${unknown.name}${sign} solves this`);
+  }
   if (solutions.length === 1) return formulaAnswer(solutions[0], { when });
   return {
     kind: 'parts',
