@@ -94,9 +94,9 @@ describe('numbers worked by hand', () => {
     // k d = −m a − F: the spring carries the inertia and the wind
     ['boat-mast.md', 'd_way', -(14 * 2.5 + 60) / 22000],
     ['boat-mast.md', 'f_m', Math.sqrt(22000 / 14) / (2 * Math.PI)],
-    ['boat-mast.md', 'ζ_m', 420 / (2 * Math.sqrt(22000 * 14))],
+    ['boat-mast.md', 'zeta_m', 420 / (2 * Math.sqrt(22000 * 14))],
     // the stiffness Kp is left once Kg has cancelled the toppling moment
-    ['boat-mast.md', 'φ_way', (9 * 0.035 * 2.5 + 0.4) / (0.85 * 14 ** 2)],
+    ['boat-mast.md', 'phi_way', (9 * 0.035 * 2.5 + 0.4) / (0.85 * 14 ** 2)],
     // the integral term follows an inflow R t with the error R/Ki; three presses an hour
     ['tank-level.md', 'e_morning', -(3 * 0.35e-3) / 3600 / 20e-6],
     ['tank-level.md', 'e_hour', (2.5 * 0.35e-3 * 7200) / 3600 ** 2 / 20e-6],
@@ -108,10 +108,10 @@ describe('numbers worked by hand', () => {
     ['belt-drive.md', 'e_run', (0.072 * 40) / 6],
     // Kp e = v, and the height arrives late by Td
     ['warehouse-lift.md', 'lag_r', 0.6 / 3.2 - 0.6 * 0.024],
-    // moment balance of two belts: 2 k h² φ = −a W
-    ['warehouse-lift.md', 'φ_L', (-0.25 * 1500) / (2 * 250e3 * 0.9 ** 2)],
-    ['warehouse-lift.md', 'ω_t', Math.sqrt((2 * 250e3 * 0.9 ** 2) / 110)],
-    // coefficient matching: C s² + (U + G + G Kp) s + G Ki = C (s² + 2 ζ ω s + ω²)
+    // moment balance of two belts: 2 k h² phi = −a W
+    ['warehouse-lift.md', 'phi_L', (-0.25 * 1500) / (2 * 250e3 * 0.9 ** 2)],
+    ['warehouse-lift.md', 'omega_t', Math.sqrt((2 * 250e3 * 0.9 ** 2) / 110)],
+    // coefficient matching: C s² + (U + G + G Kp) s + G Ki = C (s² + 2 zeta omega s + omega²)
     ['greenhouse-heater.md', 'Kp', (2 * 0.9 * 4e-3 * 1.8e6 - 2400 - 3100) / 3100],
     ['greenhouse-heater.md', 'Ki', (1.8e6 * 4e-3 ** 2) / 3100],
     // heat balance at rest: G u = U T_f

@@ -1,4 +1,4 @@
-import { invariant } from '../base/index.ts';
+import { invariant, spend } from '../base/index.ts';
 import { laplace } from './generator.ts';
 import { absolute, bitLength, integerGcd } from './integer.ts';
 import {
@@ -62,6 +62,17 @@ function signAt(p: readonly bigint[], x: Rational): -1 | 0 | 1 {
   return value < 0n ? -1 : value > 0n ? 1 : 0;
 }
 
+/** A gcd of long integers takes about as many steps as they have bits, each over their whole length. */
+function spendOnContent(coefficients: readonly bigint[]): void {
+  const bits = coefficients.reduce((most, c) => Math.max(most, bitLength(c)), 0);
+  spend(
+    undefined,
+    coefficients.length * bits * (1 + bits / 2000),
+    'a Sturm sequence',
+    `${bits} bits`,
+  );
+}
+
 /** −(a mod b) up to a positive factor, without integer content. */
 function negatedRemainder(a: readonly bigint[], b: readonly bigint[]): readonly bigint[] {
   const rest = [...a];
@@ -73,6 +84,7 @@ function negatedRemainder(a: readonly bigint[], b: readonly bigint[]): readonly 
     for (let k = 0; k < b.length; k += 1) rest[shift + k] -= factor * b[k];
   }
   const short = ascending(rest.slice(0, b.length - 1));
+  spendOnContent(short);
   const content = short.reduce(integerGcd, 0n);
   return short.map((c) => -c / content);
 }

@@ -1,11 +1,12 @@
 import {
   addMatrices,
   addRatios,
+  dependsOn,
   divRatios,
-  equalRatios,
   functionOf,
   inverseMatrix,
   isZeroRatio,
+  laplace,
   mulRatios,
   multiplyMatrices,
   negRatio,
@@ -173,6 +174,8 @@ export function powValues(a: Value, b: Value, span: Span): Value {
   if (!exponent) return powerOfSymbol(a, b, span);
   if (exponent.d === 1n) return integerPower(a, Number(exponent.n), span);
   if (exponent.d === 2n && a.kind === 'formula') {
+    if (dependsOn(a.ratio, laplace))
+      stopAt(span, 'bad-exponent', 'A root acts on parameters, and this depends on s.');
     return formulaValue(powRatio(sqrtOf(a.ratio), Number(exponent.n)), inherited(a, b));
   }
   stopAt(
@@ -217,9 +220,4 @@ function matrixPower(a: MatrixValue, exponent: number, span: Span): Value {
   let power: Value = a;
   for (let k = 1; k < exponent; k++) power = mulValues(power, a, span);
   return power;
-}
-
-/** Whether two values are the same formula. */
-export function sameFormula(a: Value, b: Value): boolean {
-  return a.kind === 'formula' && b.kind === 'formula' && equalRatios(a.ratio, b.ratio);
 }

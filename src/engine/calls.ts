@@ -14,11 +14,13 @@ import {
   sourceNamed,
   type Argument,
   type Parameter,
+  type ParameterKind,
   type WorksheetFunction,
 } from '../functions/index.ts';
 import { formatExpression, nearestName, type Call, type Expression } from '../language/index.ts';
 import { formulaValue, kindInWords } from './arithmetic.ts';
 import { constantOf } from './constants.ts';
+import { angularOf, cyclesIn } from './cycles.ts';
 import { parameterOf, replacementsOf } from './replacements.ts';
 
 import type { LoopRecord, Meanings } from './meanings.ts';
@@ -86,7 +88,7 @@ function readArguments(
   checkCount(call, spec);
   const inside = withUnknowns(call, spec, scope, meanings);
   return call.args.map((arg, index) =>
-    readArgument(parameterAt(spec, index), arg, spec, inside, meanings),
+    readArgument(parameterAt(spec, index), arg, spec, call, inside, meanings),
   );
 }
 
@@ -144,6 +146,7 @@ function readArgument(
   parameter: Parameter,
   arg: Expression,
   spec: WorksheetFunction,
+  call: Call,
   scope: Scope,
   meanings: Meanings,
 ): Argument {
@@ -170,7 +173,10 @@ function readArgument(
     case 'rows':
       return rowsArgument(arg, scope, meanings);
     case 'signal':
-      return { kind: 'signal', signal: signalArgument(arg, spec, scope, meanings) };
+      return { kind: 'signal', signal: signalArgument(arg, spec, call, scope, meanings) };
+    case 'frequency':
+    case 'angular frequency':
+      return { kind: 'value', value: frequencyArgument(parameter, arg, spec, scope, meanings) };
     case 'parameter':
     case 'formula':
     case 'matrix':
@@ -178,6 +184,13 @@ function readArgument(
       return { kind: 'value', value: valueArgument(parameter, arg, spec, scope, meanings) };
   }
 }
+
+/** Kinds of arguments that do not depend on s. */
+const FREE_OF_S: ReadonlySet<ParameterKind> = new Set([
+  'parameter',
+  'frequency',
+  'angular frequency',
+]);
 
 function valueArgument(
   parameter: Parameter,
@@ -195,7 +208,7 @@ function valueArgument(
     return value;
   }
   if (value.kind !== 'formula') wrongKind(arg, spec, 'a formula', value);
-  if (parameter.takes === 'parameter' && dependsOn(value.ratio, laplace)) {
+  if (FREE_OF_S.has(parameter.takes) && dependsOn(value.ratio, laplace)) {
     stopAt(
       arg.span,
       'not-a-parameter',
@@ -203,6 +216,20 @@ function valueArgument(
     );
   }
   return value;
+}
+
+/** A frequency of either kind as an angular frequency, in rad/s. */
+function frequencyArgument(
+  parameter: Parameter,
+  arg: Expression,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): Value {
+  const value = valueArgument(parameter, arg, spec, scope, meanings);
+  if (value.kind !== 'formula') return value;
+  const cycles = cyclesIn(arg, meanings) ?? (parameter.takes === 'frequency' ? 1 : 0);
+  return cycles === 1 ? { ...value, ratio: angularOf(value.ratio) } : value;
 }
 
 function wrongKind(arg: Expression, spec: WorksheetFunction, wanted: string, value: Value): never {
@@ -295,17 +322,18 @@ function rowsArgument(arg: Expression, scope: Scope, meanings: Meanings): Argume
 function signalArgument(
   arg: Expression,
   spec: WorksheetFunction,
+  call: Call,
   scope: Scope,
   meanings: Meanings,
 ): SignalValue {
   const value = meanings.evaluate(arg, scope);
   if (value.kind === 'signal') return value;
   if (value.kind !== 'formula') wrongKind(arg, spec, 'a signal', value);
-  if (value.origin === 'transfer') transferRefused(arg, spec);
+  if (value.origin === 'transfer') transferRefused(arg, spec, call);
   return signalOfTransform(value.ratio, formatExpression(arg), value);
 }
 
-function transferRefused(arg: Expression, spec: WorksheetFunction): never {
+function transferRefused(arg: Expression, spec: WorksheetFunction, call: Call): never {
   const text = formatExpression(arg);
   const at = arg.span;
   stopAt(
@@ -316,7 +344,7 @@ function transferRefused(arg: Expression, spec: WorksheetFunction): never {
     [
       {
         title: `Gain at rest: dc_gain(${text})`,
-        edits: [{ span: at, insert: `dc_gain(${text})` }],
+        edits: [{ span: call.span, insert: `dc_gain(${text})` }],
       },
       { title: `Unit step: ${text}/s`, edits: [{ span: at, insert: `${text}/s` }] },
     ],

@@ -1,5 +1,4 @@
 import {
-  addRatios,
   asRational,
   isZeroRatio,
   laplace,
@@ -289,9 +288,4 @@ function initialTransfer(
   });
   const closed = demand(closeLoop(rows, loop.unknowns, [...loop.inputs, input], budget), span);
   return demand(transferFunction(closed, input, signal), span).ratio;
-}
-
-/** Total transform of a signal's terms that begin at once; used where only sums matter. */
-export function totalTransform(signal: SignalValue): Ratio {
-  return signal.terms.reduce((total, term) => addRatios(total, term.transform), zeroRatio);
 }

@@ -39,6 +39,7 @@ import {
 import { conditionText, formulaText, valueText, type Writing } from '../present/index.ts';
 import type { CustomUnits, Unit } from '../units/index.ts';
 import { formulaValue } from './arithmetic.ts';
+import { typedNominal } from './assumptions.ts';
 import { readCase, signalIn, type CaseRecord } from './cases.ts';
 import { referencesOf, type Catalogue, type Entry } from './catalogue.ts';
 import { constantOf } from './constants.ts';
@@ -450,6 +451,19 @@ export class Derivations implements Meanings {
 
   customUnits(): CustomUnits {
     return this.queries.get('custom-units', () => readOwnUnits(this.catalogue), sameUnits);
+  }
+
+  unitTextOf(name: string): string | null {
+    return this.queries.get(`unit of:${name}`, () => {
+      const entry = this.catalogue.entries.get(name);
+      if (entry?.kind === 'assumption' && entry.node.kind === 'assumption')
+        return typedNominal(entry.node).unit;
+      return this.catalogue.units.get(name)?.unit ?? null;
+    });
+  }
+
+  formulaOf(name: string): Expression | null {
+    return this.kindOf(name) === 'definition' ? this.node<DefinitionStatement>(name).formula : null;
   }
 
   knownNames(): readonly string[] {

@@ -1,4 +1,4 @@
-import { parseRational, ratioFromRational } from '../algebra/index.ts';
+import { parseRational, ratioFromRational, type Rational } from '../algebra/index.ts';
 import type { Span } from '../base/index.ts';
 import {
   allOf,
@@ -15,6 +15,7 @@ import type {
   Derivative,
   Expression,
   Member,
+  NumberLiteral,
   Product,
   Sum,
   With,
@@ -42,7 +43,7 @@ export function evaluate(expression: Expression, scope: Scope, meanings: Meaning
   const inner = (part: Expression) => evaluate(part, scope, meanings);
   switch (expression.kind) {
     case 'number':
-      return formulaValue(ratioFromRational(parseRational(expression.text)));
+      return formulaValue(ratioFromRational(numberOf(expression)));
     case 'quantity':
       return formulaValue(quantityRatio(expression, meanings));
     case 'name':
@@ -80,6 +81,15 @@ export function evaluate(expression: Expression, scope: Scope, meanings: Meaning
     case 'text':
       return misplaced(expression);
   }
+}
+
+/** A number is refused where a double cannot hold it. */
+function numberOf({ text, span }: NumberLiteral): Rational {
+  const size = Math.abs(Number(text));
+  const isTooSmall = size < 1e-300 && /[1-9]/.test(text.split(/e/i)[0]);
+  if (size > 1e300 || isTooSmall)
+    stopAt(span, 'number-range', `\`${text}\` is not a number within 1e±300.`);
+  return parseRational(text);
 }
 
 function misplaced(expression: Expression): never {

@@ -39,6 +39,10 @@ export interface Meanings {
   functionNames(): readonly string[];
   functionContext(scope: Scope): FunctionContext;
   customUnits(): CustomUnits;
+  /** The unit that a name was given in, as typed; null where none is. */
+  unitTextOf(name: string): string | null;
+  /** The formula that defines a name; null where none does. */
+  formulaOf(name: string): Expression | null;
   knownNames(): readonly string[];
   /** Loops that have a signal of this name, for hints. */
   loopsWithSignal(name: string): readonly string[];

@@ -9,7 +9,6 @@ import {
   rational,
   type Ratio,
 } from '../algebra/index.ts';
-import { isRefusal } from '../base/index.ts';
 import type { InUnit, Quantity } from '../language/index.ts';
 import {
   parseUnit,
@@ -66,9 +65,4 @@ function decibelRatio(text: string): Ratio {
     logarithm,
   );
   return ratioOf(functionOf('exp', [exponent]));
-}
-
-/** Whether a text is a unit that the worksheet knows. */
-export function isUnitText(text: string, units: CustomUnits): boolean {
-  return !isRefusal(parseUnit(text, units));
 }

@@ -29,9 +29,9 @@ import {
   valueText,
   type Writing,
 } from '../present/index.ts';
-import type { Unit } from '../units/index.ts';
+import { formatNumber, unitText, valueIn, type Unit } from '../units/index.ts';
 import type { Derivations } from './derivations.ts';
-import { coherentText, showSpan, showValue, type Display } from './display.ts';
+import { coherentText, showSpan, showValue, unitFor, type Display } from './display.ts';
 import { failureOf } from './failures.ts';
 import {
   asMagnitude,
@@ -315,7 +315,13 @@ function complexText(
   display: Display,
   hints: readonly Unit[],
 ): string {
-  return `${showValue(re, display, hints)} ${im < 0 ? '-' : '+'} j ${showValue(Math.abs(im), display, hints)}`;
+  const unit = unitFor(display, Math.hypot(re, im), hints);
+  const [real, imaginary] = [re, Math.abs(im)].map((part) =>
+    formatNumber(unit ? valueIn(part * display.factor, unit) : part),
+  );
+  const number = `${real} ${im < 0 ? '-' : '+'} j ${imaginary}`;
+  const text = unit ? unitText(unit) : '';
+  return text ? `(${number}) ${text}` : number;
 }
 
 function spanOf(

@@ -17,6 +17,7 @@ import { Numbers } from './numbers.ts';
 import { Queries } from './queries.ts';
 import { referenceProblems, referenceRows } from './reference-rows.ts';
 import type { Placed, Report, RequirementContent, ResultContent } from './report.ts';
+import { Respelling, typedSpellings } from './typed-names.ts';
 import { Statements } from './statements.ts';
 import { unitProblems } from './unit-statements.ts';
 
@@ -56,6 +57,7 @@ class WorksheetSession implements Session {
   private readonly derivations = new Derivations(this.queries);
   private readonly numbers = new Numbers(this.queries, this.derivations);
   private readonly statements = new Statements(this.queries, this.derivations, this.numbers);
+  private readonly respelling = new Respelling();
   private document: WorksheetDocument | undefined;
 
   get evaluationCount(): number {
@@ -74,7 +76,8 @@ class WorksheetSession implements Session {
         ['statements', this.document.statements.map((placed) => placed.node)],
       ]),
     );
-    return this.report(this.document, catalogue, lineOf);
+    this.respelling.use(typedSpellings(this.document));
+    return this.respelling.of(this.report(this.document, catalogue, lineOf));
   }
 
   private report(
@@ -82,6 +85,7 @@ class WorksheetSession implements Session {
     catalogue: Catalogue,
     lineOf: (offset: number) => number,
   ): Report {
+    this.derivations.prepare();
     const results: Placed<ResultContent>[] = [];
     const requirements: Placed<RequirementContent>[] = [];
     const problems: Problem[] = [

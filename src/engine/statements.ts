@@ -11,7 +11,6 @@ import {
 } from '../language/index.ts';
 import { formatValue, parseUnit, type Unit } from '../units/index.ts';
 import { isRefusal } from '../base/index.ts';
-import { typedNominal } from './assumptions.ts';
 import type { Catalogue } from './catalogue.ts';
 import type { Derivations } from './derivations.ts';
 import { checkDimensions, type DimensionReport } from './dimensions.ts';
@@ -384,7 +383,7 @@ export class Statements {
         statements,
         longChainBehind: (name) => this.derivations.longChainBehind(name),
         entry: (name) => this.entryStatement(name),
-        unitText: (name) => this.unitText(name),
+        unitText: (name) => this.derivations.unitTextOf(name),
         signalsOf: (loop) => {
           const record = this.derivations.loop(loop.name, BASE_SCOPE);
           return new Set(
@@ -417,15 +416,6 @@ export class Statements {
     });
   }
 
-  private unitText(name: string): string | null {
-    return this.queries.get(`unit of:${name}`, () => {
-      const entry = this.catalogue.entries.get(name);
-      if (entry?.kind === 'assumption' && entry.node.kind === 'assumption')
-        return typedNominal(entry.node).unit;
-      return this.catalogue.units.get(name)?.unit ?? null;
-    });
-  }
-
   private get catalogue(): Catalogue {
     return this.queries.input<Catalogue>('catalogue');
   }
@@ -436,7 +426,8 @@ export class Statements {
       'unit-hints',
       () => {
         const texts = new Set<string>();
-        for (const name of this.catalogue.entries.keys()) texts.add(this.unitText(name) ?? '');
+        for (const name of this.catalogue.entries.keys())
+          texts.add(this.derivations.unitTextOf(name) ?? '');
         return [...texts]
           .map((text) => parseUnit(text, this.derivations.customUnits()))
           .filter((unit) => !isRefusal(unit)) as Unit[];

@@ -1,15 +1,13 @@
 export * from './ast.ts';
 export * from './document.ts';
-export { FIGURES } from './figures.ts';
 export * from './formatting.ts';
 export * from './formula.ts';
-export { CONSTANT_NAMES, KEYWORDS, RESERVED, canonicalName, isReserved } from './names.ts';
+export { KEYWORDS, RESERVED, canonicalName, isReserved } from './names.ts';
 export * from './placing.ts';
 export type { Cell, ProseBlock, Reference } from './prose.ts';
 export * from './spelling.ts';
-export { SIGNS } from './statement-source.ts';
 export * from './text-position.ts';
 export * from './traversal.ts';
 export * from './typesetting.ts';
 export type { NameKind, UnitVocabulary, Vocabulary } from './vocabulary.ts';
-export { CELL_INFO, loopParser, worksheetParser } from './worksheet-parser.ts';
+export { CELL_INFO, worksheetParser } from './worksheet-parser.ts';

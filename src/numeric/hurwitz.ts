@@ -1,8 +1,13 @@
-import { invariant } from '../base/index.ts';
+import { BudgetExceeded } from '../base/index.ts';
 
 /** Far beyond the degree of any loop; one element more than the coefficients is needed. */
 const LARGEST_DEGREE = 200;
 const scratch = new Float64Array(LARGEST_DEGREE + 2);
+
+function refuseDegree(degree: number): void {
+  if (degree > LARGEST_DEGREE)
+    throw new BudgetExceeded('a Routh test in numbers', `degree ${degree}`);
+}
 
 /** A first element within this many roundings of the terms it is the difference of counts as zero: on the boundary. */
 const NEAR_ZERO = 16 * Number.EPSILON;
@@ -17,7 +22,7 @@ const NEAR_ZERO = 16 * Number.EPSILON;
  * Source: F. R. Gantmacher, The Theory of Matrices, vol. 2, 1959, chapter XV, section 3 (Routh's scheme).
  */
 export function isHurwitz(coefficients: Float64Array, offset: number, degree: number): boolean {
-  invariant(degree <= LARGEST_DEGREE, `a Routh test of degree ${degree}`);
+  refuseDegree(degree);
   for (let k = 0; k <= degree; k++) scratch[k] = coefficients[offset + k]!;
   return isScratchHurwitz(degree);
 }
@@ -33,7 +38,7 @@ export function hurwitzVerdicts(
   count: number,
 ): Uint8Array {
   const degree = coefficients.length - 1;
-  invariant(degree <= LARGEST_DEGREE, `a Routh test of degree ${degree}`);
+  refuseDegree(degree);
   const columns = coefficients.map((column) =>
     typeof column === 'number' ? new Float64Array(count).fill(column) : column,
   );

@@ -12,7 +12,7 @@ export {
   subtractComplex,
 } from './complex.ts';
 export type { MultipleRoot } from './roots.ts';
-export { LARGEST_DEGREE, polynomialRoots, rootsWithMultiplicity } from './roots.ts';
+export { polynomialRoots, rootsWithMultiplicity } from './roots.ts';
 export { hurwitzVerdicts, isHurwitz } from './hurwitz.ts';
 export type { BatchInput } from './tape.ts';
 export { Tape } from './tape.ts';

@@ -1,19 +1,19 @@
-import { invariant } from '../base/index.ts';
+import { BudgetExceeded } from '../base/index.ts';
 import { aberthRoots } from './aberth.ts';
 import type { Complex } from './complex.ts';
 import { scalePolynomial } from './polynomial-scale.ts';
 import { settleRoots } from './root-clusters.ts';
 
-/** The largest degree that {@link polynomialRoots} takes. */
-export const LARGEST_DEGREE = 60;
+/** Beyond this degree the roots of a polynomial in doubles say little. */
+const LARGEST_DEGREE = 60;
 
 /**
  * The roots of a polynomial with real coefficients, highest power first, each as often as its multiplicity.
  *
  * Leading zeros are dropped; a constant has no roots. Complex roots come as exact conjugate pairs, and a cluster that
  * the rounding of the coefficients explains as one multiple root is returned as one value, repeated. Sorted by
- * falling real part, then by falling imaginary part. Where a coefficient is not finite, all roots are NaN. Degree
- * at most 60. Cost: about degree² operations times ten, in doubled precision.
+ * falling real part, then by falling imaginary part. Where a coefficient is not finite, all roots are NaN. Above
+ * degree 60 the budget counts as spent. Cost: about degree² operations times ten, in doubled precision.
  *
  * Source: O. Aberth, Iteration methods for finding all zeros of a polynomial simultaneously, Mathematics of Computation
  * 27 (1973), 339–344; starting points after D. A. Bini, Numerical computation of polynomial zeros by means of Aberth's
@@ -22,10 +22,12 @@ export const LARGEST_DEGREE = 60;
  * @example polynomialRoots([1, 0, 4]) // [{ re: 0, im: 2 }, { re: 0, im: -2 }]
  */
 export function polynomialRoots(coefficients: readonly number[]): Complex[] {
-  invariant(
-    coefficients.length <= LARGEST_DEGREE + 1,
-    `roots of degree ${coefficients.length - 1}`,
-  );
+  if (coefficients.length > LARGEST_DEGREE + 1) {
+    throw new BudgetExceeded(
+      'finding the roots of a polynomial',
+      `degree ${coefficients.length - 1}`,
+    );
+  }
   if (!coefficients.every(Number.isFinite)) {
     return coefficients.slice(1).map(() => ({ re: NaN, im: NaN }));
   }

@@ -29,11 +29,6 @@ export function mulDimensions(a: Dimension, b: Dimension): Dimension {
   return dimensionOf(a.exponents.map((exponent, i) => exponent + b.exponents[i]!));
 }
 
-/** The dimension of a quotient. */
-export function divDimensions(a: Dimension, b: Dimension): Dimension {
-  return dimensionOf(a.exponents.map((exponent, i) => exponent - b.exponents[i]!));
-}
-
 /** The dimension of a power with the rational exponent `numerator/denominator`. */
 export function powDimension(base: Dimension, numerator: number, denominator = 1): Dimension {
   return dimensionOf(base.exponents.map((exponent) => (exponent * numerator) / denominator));

@@ -2,15 +2,12 @@ export type { Dimension } from './dimension.ts';
 export {
   dimensionless,
   dimensionOf,
-  divDimensions,
   equalDimensions,
-  mulDimensions,
   powDimension,
 } from './dimension.ts';
 export type { Counted } from './dimension-text.ts';
 export { dimensionText } from './dimension-text.ts';
 export type { ExactFactor, Unit } from './unit.ts';
-export { unitOne } from './unit.ts';
 export type { CustomUnits } from './unit-parse.ts';
 export { isUnitSymbol, parseUnit } from './unit-parse.ts';
 export type { Ratio } from './ratio.ts';

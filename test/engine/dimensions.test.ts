@@ -15,9 +15,9 @@ function problemsOf(statements: string): readonly string[] {
 
 describe('dimensions', () => {
   test.each([
-    ['x = T + theta', 'T + theta', '`T + θ` adds N m to rad.'],
-    ['x = theta + T', 'theta + T', '`θ + T` adds rad to N m.'],
-    ['x = T - theta', 'T - theta', '`T - θ` subtracts rad from N m.'],
+    ['x = T + theta', 'T + theta', '`T + theta` adds N m to rad.'],
+    ['x = theta + T', 'theta + T', '`theta + T` adds rad to N m.'],
+    ['x = T - theta', 'T - theta', '`T - theta` subtracts rad from N m.'],
     ['x = 2 T + m1 + 3', '2 T + m1 + 3', '`2 T + m1` adds N m to kg.'],
     ['x = T/(m1 + T)', '(m1 + T)', '`m1 + T` adds kg to N m.'],
     [
@@ -110,7 +110,7 @@ loop a driven by r, w
 case c of a
   w = step(3 N m)
   r = step(2 mrad)`);
-    expect(problems).toEqual(["error at ‹J theta'' = T + theta + w›: `T + θ` adds N m to rad."]);
+    expect(problems).toEqual(["error at ‹J theta'' = T + theta + w›: `T + theta` adds N m to rad."]);
   });
 
   test('are refused where one equation contradicts the others', () => {
@@ -163,7 +163,7 @@ case d of a
       'error at ‹2 m›: `2 [m]` is in m, and a time is needed here.',
     ]);
     expect(cell('w = step(3 N m)\n  omega starts at 3 rad')).toEqual([
-      'error at ‹omega starts at 3 rad›: `ω` is in rad/s, and `3 [rad]` is in rad.',
+      'error at ‹omega starts at 3 rad›: `omega` is in rad/s, and `3 [rad]` is in rad.',
     ]);
   });
 });

@@ -165,6 +165,6 @@ draw response of c.y, c.e over 4 s`);
       evaluateCell(body('draw response of storm.e over 20 s', '30 N m/(rad s)')),
       'response',
     );
-    expect(figure.diverges).toContain('storm.e grows without bound: the block of θ, T');
+    expect(figure.diverges).toContain('storm.e grows without bound: the block of theta, T');
   });
 });

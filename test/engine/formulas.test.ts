@@ -176,6 +176,20 @@ describe('names before a bracket', () => {
   });
 });
 
+describe('a call before a bracket', () => {
+  const loop = "loop az driven by w\n  x' = w - 2 x\n";
+
+  test('is not a value at a point, and the product needs a space', () => {
+    const cell = `${loop}y = az(w -> x)(0)`;
+    expect(evaluateCell(cell).problems).toEqual([
+      'error at ‹az(w -> x)(›: `az(w -> x)(…)` can be a product or a value at a point: to multiply write a space before the bracket, to evaluate write `az(w -> x) with s = …`.',
+    ]);
+    expect(afterFix(cell, 'multiply')).toBe(`${loop}y = az(w -> x) (0)`);
+    expect(evaluateCell(`${loop}y = az(w -> x) with s = 0`).result('y').value).toBe(0.5);
+    expect(evaluateCell(`${loop}y = sqrt(4) (3)`).result('y').value).toBe(6);
+  });
+});
+
 describe('half-typed and mistyped formulas', () => {
   test.each([
     ['x =', '=', '`=` needs a formula after it, but the line ends.'],
@@ -203,6 +217,9 @@ describe('half-typed and mistyped formulas', () => {
     ['x = a/0', 'a/0', 'This divides by an expression that is identically 0.'],
     ['x = a/(b - b)', 'a/(b - b)', 'This divides by an expression that is identically 0.'],
     ["x = a'", "a'", "`'` is the time derivative of a signal, and `a` is an assumption."],
+    ['x = s^0.5', 's^0.5', 'A root acts on parameters, and this depends on s.'],
+    ['x = 1e400', '1e400', '`1e400` is not a number within 1e±300.'],
+    ['x = 1e-400 a', '1e-400', '`1e-400` is not a number within 1e±300.'],
     ['x = a^1000', 'a^1000', 'The exponent 1000 is beyond 500.'],
     ['x = a^b', 'a^b', 'An exponent is a number; write other powers with exp and log.'],
     ['x = sqrt(s)', 's', 'sqrt acts on parameters, and `s` depends on s.'],
@@ -253,6 +270,24 @@ describe('functions of parameters', () => {
       expect(cell.result(name).notes).toEqual([
         'No value at the nominal: the formula divides by 0 there, or is not real.',
       ]);
+    }
+  });
+
+  test('a complex number is shown with its unit behind', () => {
+    const cell = evaluateCell(
+      'w0 is 2 rad/s\nk is 3 N m/rad\nC = k + k s/w0\nx = C(2 j)\ny = 2 + j',
+    );
+    expect(cell.result('x').value).toEqual([3, 3]);
+    expect(cell.result('x').shown).toBe('(3 + j 3) N m/rad');
+    expect(cell.result('y').shown).toBe('2 + j 1');
+  });
+
+  test('a transfer function where a signal is wanted is refused, and the fixes mend it', () => {
+    const cell = "loop az driven by w\n  x' = w - 2 x\ny = final(az(w -> x))";
+    for (const title of ['Gain at rest: dc_gain(az(w -> x))', 'Unit step: az(w -> x)/s']) {
+      const fixed = evaluateCell(afterFix(cell, title));
+      expect(fixed.problems).toEqual([]);
+      expect(fixed.result('y').value).toBe(0.5);
     }
   });
 

@@ -10,7 +10,7 @@ case let_go of swing
   phi starts at p
   phi' starts at v`;
 
-/** J φ'' = −d φ' − k φ holds at t = 0+ too, with φ = p and φ' = v. */
+/** J phi'' = −d phi' − k phi holds at t = 0+ too, with phi = p and phi' = v. */
 describe('derivatives of a signal that starts at a value of its own', () => {
   it.each([
     ['initial(let_go.phi)', 'p'],

@@ -22,8 +22,8 @@ loop drive driven by r
   T = k e
   e = r - theta`);
     expect(report.loops.map(({ content }) => [content.inputs, content.unknowns])).toEqual([
-      [['T', 'w'], ['θ']],
-      [['r'], ['θ', 'T', 'e']],
+      [['T', 'w'], ['theta']],
+      [['r'], ['theta', 'T', 'e']],
     ]);
   });
 
@@ -94,7 +94,7 @@ loop drive driven by r
     ],
     [
       "theta' = torque + u\n  torque = -3 thta",
-      'a has 2 equations for 3 unknowns (θ, torque, thta). Is thta a misspelt theta?',
+      'a has 2 equations for 3 unknowns (theta, torque, thta). Is thta a misspelt theta?',
     ],
     [
       'x + y = u\n  2 x + 2 y = u',
@@ -204,7 +204,7 @@ one(r -> theta)`);
 
   test('leaves an input without an equation among the unknowns', () => {
     expect(evaluateCell(`${DRIVE}\nloop one driven by r\n  uses stage`).problems).toEqual([
-      'error at ‹one›: one has 1 equation for 3 unknowns (θ, T, w). Add an equation, name the missing inputs after `driven by`, or give a coefficient its value.',
+      'error at ‹one›: one has 1 equation for 3 unknowns (theta, T, w). Add an equation, name the missing inputs after `driven by`, or give a coefficient its value.',
     ]);
   });
 });

@@ -217,7 +217,7 @@ describe('signals', () => {
   test('that are misspelt are named with the count of equations', () => {
     const cell = "loop az driven by w\n  theta'' = torque - 3 theta'\n  torque = w - 2 thta\n";
     expect(problemsOf(cell)).toEqual([
-      'error at ‹az›: az has 2 equations for 3 unknowns (θ, torque, thta). Is thta a misspelt theta?',
+      'error at ‹az›: az has 2 equations for 3 unknowns (theta, torque, thta). Is thta a misspelt theta?',
     ]);
   });
 });

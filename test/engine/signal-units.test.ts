@@ -34,7 +34,7 @@ loop a driven by w
   T = -k theta - c x
   x = theta`);
     expect(problems).toEqual([
-      'error at ‹x = theta›: The two sides do not fit: `x` is in [x], and `θ` is in [x] s.',
+      'error at ‹x = theta›: The two sides do not fit: `x` is in [x], and `theta` is in [x] s.',
     ]);
   });
 
