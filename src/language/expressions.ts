@@ -6,6 +6,7 @@ import {
   failBareFraction,
   isShortChain,
   refuseBracketAfter,
+  refuseBracketAfterCall,
   refuseEvaluation,
   refuseLooseBracket,
   refusePlusMinus,
@@ -298,9 +299,12 @@ function readNamed(reader: LineReader): Expression {
   if (!reader.isAt('(')) return nameOf(token);
   const use = bracketUse(reader, token);
   if (use === 'multiply') return nameOf(token);
-  return reader.nested(() =>
-    use === 'call' ? readCall(reader, token) : readEvaluation(reader, token, use),
-  );
+  return reader.nested(() => {
+    if (use !== 'call') return readEvaluation(reader, token, use);
+    const call = readCall(reader, token);
+    refuseBracketAfterCall(reader, call);
+    return call;
+  });
 }
 
 /** Reads `C(s)`, `L(0)` and `L(j w)`; a bracket that holds no such point is left to be a factor. */

@@ -74,6 +74,19 @@ export function refuseBracketAfter(reader: LineReader, member: Expression): void
     );
 }
 
+/** `az(w -> e)(0)` could be meant as a product or as a value at a point. */
+export function refuseBracketAfterCall(reader: LineReader, call: Expression): void {
+  const bracket = reader.peek();
+  if (!bracket || !reader.isAt('(') || bracket.spaced) return;
+  const shown = reader.text(call.span);
+  reader.refuse(
+    coverSpans(call.span, bracket),
+    'call-before-bracket',
+    `\`${shown}(…)\` can be a product or a value at a point: to multiply write a space before the bracket, to evaluate write \`${shown} with s = …\`.`,
+    [{ title: 'multiply', edits: [insertion(bracket.from, ' ')] }],
+  );
+}
+
 /**
  * Why a formula has no derivative written with `'`, or null. What a definition stands for, and what takes the name of a
  * signal in a loop, the engine knows.
