@@ -28,17 +28,3 @@ it('the first load takes less than 600 kB of compressed script and asks only thi
   expect(total).toBeGreaterThan(50_000);
   expect(total).toBeLessThan(600_000);
 });
-
-it('the worksheet is readable within a second', async () => {
-  const { page } = await openPage(browser, { 'tank.md': TANK });
-  await new WorksheetPage(page).settled();
-  const times: number[] = [];
-  // The best of five: other tests run beside this one.
-  for (let load = 0; load < 5; load++) {
-    await page.reload();
-    await page.getByText('The level of a buffer tank').waitFor();
-    times.push(await page.evaluate(() => performance.now()));
-    await new WorksheetPage(page).settled();
-  }
-  expect(Math.min(...times)).toBeLessThan(1000);
-});

