@@ -28,6 +28,7 @@ import {
 } from './requirements.ts';
 import { absentPlace, erroneousContent, resultContent, type ResultRequest } from './results.ts';
 import { BASE_SCOPE } from './scope.ts';
+import { signConflict } from './sign-conflicts.ts';
 import { outcomeOf, type Outcome } from './stop.ts';
 
 /** What one statement comes to; spans of problems are relative to it. */
@@ -151,8 +152,17 @@ export class Statements {
     for (const name of this.reachOfStatement(node)) {
       const entry = this.entryStatement(name);
       if (entry && entry !== node && hasError(this.dimensions().problems.get(entry))) return name;
+      if (this.isContradicted(name)) return name;
     }
     return null;
+  }
+
+  /** Whether the value of a name contradicts the sign that is stated of it; what was derived with that sign is wrong. */
+  private isContradicted(name: string): boolean {
+    return this.queries.get(`contradicted:${name}`, () => {
+      const sign = this.catalogue.signs.get(name)?.sign;
+      return sign !== undefined && signConflict(name, sign, this.numbers) !== null;
+    });
   }
 
   private reachOfStatement(node: Statement): ReadonlySet<string> {

@@ -36,6 +36,10 @@ export interface WorksheetFunction {
 export type ParameterKind =
   /** A formula without s: a parameter. */
   | 'parameter'
+  /** A frequency in Hz or in rad/s, handed on as an angular frequency; without a unit it is taken in Hz. */
+  | 'frequency'
+  /** The same, taken in rad/s where it has no unit. */
+  | 'angular frequency'
   /** A rational function of s, or a parameter. */
   | 'formula'
   /** A signal `storm.e`, or a formula in s taken as its transform. */
@@ -71,6 +75,14 @@ export function one(name: string, takes: ParameterKind): Parameter {
 /** A required argument that is a quantity slot. */
 export function slot(name: string): Parameter {
   return { name, takes: 'parameter', count: 'one', slot: true };
+}
+
+/** A required frequency, in Hz or in rad/s; `unitless` is what it is in without a unit. */
+export function frequencySlot(
+  name: string,
+  unitless: 'frequency' | 'angular frequency',
+): Parameter {
+  return { name, takes: unitless, count: 'one', slot: true };
 }
 
 /** An argument that may be left out. */
