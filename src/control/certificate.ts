@@ -10,6 +10,7 @@ import {
   mulImages,
   quotientAt,
   sumOfImages,
+  type Image,
   type Values,
 } from './point-arithmetic.ts';
 import { functionsOfS } from './s-polynomial.ts';
@@ -162,6 +163,40 @@ export function certifyFinalValue(terms: readonly SignalTerm[], value: Ratio): v
     const rest = addImages([0, ...sum.num], scaled, point).slice(0, order + 1);
     return order < 0 ? null : rest.every((c) => c === 0);
   });
+}
+
+/** Checks ∫|H|² df in closed form by Åström's recursion on the coefficients, which goes another way. */
+export function certifyNoiseBandwidth(transfer: Ratio, value: Ratio): void {
+  certifyAtPoints('a noise bandwidth does not agree with the recursion for it', (seed) => {
+    const point = new ResiduePoint(seed);
+    const [top, bottom] = [imageOf(transfer.num, point), imageOf(transfer.den, point)];
+    if (!top || !bottom) return null;
+    const power = whiteNoisePowerAt(top, bottom, point);
+    const doubled = dotAt([2], [point.ratio(value)], point);
+    return agree([power, doubled]);
+  });
+}
+
+/**
+ * The integral I of K. J. Åström at a point, for ascending coefficients; null where a step would divide by zero there.
+ * Source: K. J. Åström, Introduction to Stochastic Control Theory, Academic Press, 1970, chapter 5, section 3 (from
+ * memory).
+ */
+function whiteNoisePowerAt(top: Image, bottom: Image, { field }: ResiduePoint): number | null {
+  let a = [...bottom].reverse();
+  let b = Array.from({ length: a.length - 1 }, (_, i) => top[a.length - 2 - i] ?? 0);
+  let sum = 0;
+  while (a.length > 1) {
+    if (a[0] === 0 || a[1] === 0) return null;
+    const inverse = field.inverse(a[1]);
+    const half = field.inverse(field.mul(2, a[0]));
+    sum = field.add(sum, field.mul(field.mul(field.mul(b[0], b[0]), half), inverse));
+    const [alpha, beta] = [a[0], b[0]].map((lead) => field.mul(lead, inverse));
+    const odd = a.map((c, i) => (i % 2 === 1 ? c : 0));
+    b = b.map((c, i) => field.sub(c, field.mul(beta, odd[i + 1]))).slice(1);
+    a = a.map((c, i) => field.sub(c, field.mul(alpha, odd[i + 1] ?? 0))).slice(1);
+  }
+  return sum;
 }
 
 /** Checks the rows of a Routh array above the first special one: each of them follows from the two above. */

@@ -33,7 +33,7 @@ export function plainValue(base: Base, ratio: Ratio): FormulaValue {
 }
 
 /** Names joined as in a sentence. */
-function listed(names: readonly string[]): string {
+export function listed(names: readonly string[]): string {
   if (names.length < 2) return names.join('');
   return `${names.slice(0, -1).join(', ')} and ${names[names.length - 1]}`;
 }
@@ -46,7 +46,7 @@ function unsettledReason(part: Settling, words: string): string {
 }
 
 /** Why a signal can never settle, as far as that is known without numbers; else what must be stable. */
-function settledUnder(
+export function settledUnder(
   x: SignalValue,
   signOf: SignOf,
   budget?: Budget,

@@ -1,0 +1,183 @@
+import {
+  addRatios,
+  isZeroRatio,
+  mulRatios,
+  ratioFromRational,
+  ratioKey,
+  rational,
+  signOfRatio,
+  sumRatios,
+  zeroRatio,
+} from '../algebra/index.ts';
+import type { Ratio, SignOf } from '../algebra/index.ts';
+import { isRefusal, type Budget, type Refusal } from '../base/index.ts';
+import { allOf, compare } from './conditions.ts';
+import { finalValue, noValue, plainValue, settledUnder } from './final-value.ts';
+import { squaredGain } from './frequency-point.ts';
+import { rootOfSquare } from './magnitude.ts';
+import { letsWhiteNoiseThrough, noiseBandwidth } from './noise-bandwidth.ts';
+import { powerOfS } from './s-polynomial.ts';
+import { stable } from './stability.ts';
+import type { Condition, FormulaValue, NoValue, SignalTerm, SignalValue } from './values.ts';
+import { distinct, linesOf, squaredAmplitude, steadyUnder } from './vibration.ts';
+
+/** One white noise with all its paths to a signal. */
+interface NoisePath {
+  readonly input: string;
+  /** One-sided, per Hz. */
+  readonly density: Ratio;
+  readonly transfer: Ratio;
+}
+
+/** The white noises behind a signal; paths of the same noise are added before they are squared. */
+function noisePaths(x: SignalValue): readonly NoisePath[] {
+  const paths = new Map<string, NoisePath>();
+  for (const { noise, input, transform } of x.terms) {
+    if (!noise) continue;
+    const key = `${noise.id} ${ratioKey(noise.density)}`;
+    const known = paths.get(key);
+    const transfer = known ? addRatios(known.transfer, transform) : transform;
+    paths.set(key, { input, density: noise.density, transfer });
+  }
+  return [...paths.values()].filter(({ transfer }) => !isZeroRatio(transfer));
+}
+
+function randomTerms(x: SignalValue): readonly SignalTerm[] {
+  return x.terms.filter((term) => term.noise);
+}
+
+/** What must hold for the noise in a signal to be stationary, or why it never is. */
+function stationaryUnder(
+  x: SignalValue,
+  paths: readonly NoisePath[],
+  signOf: SignOf,
+  budget?: Budget,
+): Condition | { readonly reason: string } {
+  const wandering = paths.find(({ transfer }) => powerOfS(transfer.den) > 0);
+  if (wandering) {
+    return {
+      reason: `the noise in ${wandering.input} is integrated on its way to ${x.name} (a pole at s = 0): its variance grows without bound`,
+    };
+  }
+  const settled = settledUnder({ ...x, terms: randomTerms(x) }, signOf, budget);
+  if ('reason' in settled) return settled;
+  const densities = paths
+    .filter(
+      ({ density }) => !['positive', 'nonnegative', 'zero'].includes(signOfRatio(density, signOf)),
+    )
+    .map(({ density }) => compare(density, '>=', zeroRatio));
+  return allOf([stable(settled.open), ...densities]);
+}
+
+/** Densities are one-sided everywhere, which is said wherever one goes in or comes out. */
+const ONE_SIDED = 'Power spectral densities are one-sided, per Hz.';
+
+/**
+ * The variance of the random part of a signal, Σ S · ∫₀^∞ |H(j2πf)|² df over the independent noises, each of one-sided
+ * density S per Hz.
+ *
+ * No value where it is infinite, with the path named: white noise that does not roll off, an integration, a mode that does
+ * not decay. Exact, with symbols as far as `noiseBandwidth` goes; it stands where the blocks are stable.
+ * Source: see {@link noiseBandwidth}.
+ */
+export function varianceOf(
+  x: SignalValue,
+  signOf: SignOf,
+  budget?: Budget,
+): FormulaValue | NoValue {
+  const paths = noisePaths(x);
+  if (paths.length === 0) return plainValue(withNote(x, `No noise acts on ${x.name}.`), zeroRatio);
+  const through = paths.find(({ transfer }) => letsWhiteNoiseThrough(transfer));
+  if (through) {
+    const reason = `the variance is infinite: white noise at ${through.input} reaches ${x.name} without rolling off at high frequencies`;
+    return noValue(x, reason);
+  }
+  const stationary = stationaryUnder(x, paths, signOf, budget);
+  if ('reason' in stationary) return noValue(x, stationary.reason);
+  const variances = paths.map(({ density, transfer }) =>
+    mulRatios(density, noiseBandwidth(transfer, budget), budget),
+  );
+  const when = allOf([x.when, stationary]);
+  return plainValue({ ...withNote(x, ONE_SIDED), when }, sumRatios(variances, budget));
+}
+
+function withNote({ when, notes }: SignalValue, note: string): Pick<SignalValue, 'when' | 'notes'> {
+  return { when, notes: [...notes, note] };
+}
+
+/**
+ * The one-sided power spectral density per Hz of the random part of a signal at a frequency.
+ *
+ * `frequency`: ω in rad/s. No value where the noise is not stationary. Refused for functions of s other than dead time.
+ * Source: J. H. Laning, R. H. Battin, Random Processes in Automatic Control, McGraw-Hill, 1956, chapter 5 (from memory).
+ */
+export function densityOf(
+  x: SignalValue,
+  frequency: Ratio,
+  signOf: SignOf,
+  budget?: Budget,
+): FormulaValue | NoValue | Refusal {
+  const paths = noisePaths(x);
+  if (paths.length === 0) return plainValue(withNote(x, `No noise acts on ${x.name}.`), zeroRatio);
+  const stationary = stationaryUnder(x, paths, signOf, budget);
+  if ('reason' in stationary) return noValue(x, stationary.reason);
+  let sum = zeroRatio;
+  for (const { density, transfer } of paths) {
+    const gain = squaredGain(transfer, frequency);
+    if (isRefusal(gain)) return gain;
+    sum = addRatios(sum, mulRatios(density, gain, budget), budget);
+  }
+  return plainValue({ ...withNote(x, ONE_SIDED), when: allOf([x.when, stationary]) }, sum);
+}
+
+const HALF = ratioFromRational(rational(1n, 2n));
+
+/** The mean square of the sines in a signal, under the conditions that they are steady and of different frequencies. */
+function periodicSquare(
+  x: SignalValue,
+  signOf: SignOf,
+  budget?: Budget,
+): FormulaValue | NoValue | Refusal {
+  const lines = linesOf(x);
+  const conditions: Condition[] = [x.when];
+  let sum = zeroRatio;
+  for (const [index, line] of lines.entries()) {
+    const steady = steadyUnder(x, line.terms, signOf, budget);
+    if ('reason' in steady) return noValue(x, steady.reason);
+    const square = squaredAmplitude(line);
+    if (isRefusal(square)) return square.code === 'resonance' ? noValue(x, square.reason) : square;
+    sum = addRatios(sum, mulRatios(HALF, square), budget);
+    const apart = lines.slice(0, index).map((other) => distinct(other.frequency, line.frequency)!);
+    conditions.push(steady, ...apart);
+  }
+  return plainValue({ when: allOf(conditions), notes: x.notes }, sum);
+}
+
+/** The shares of a signal that are neither random nor periodic. */
+function steadyPart(x: SignalValue): SignalValue {
+  return { ...x, terms: x.terms.filter((term) => !term.noise && !term.frequency) };
+}
+
+/**
+ * The root mean square of the random and periodic parts of a signal, in the long run.
+ *
+ * Constant parts do not count, which is said. No value where the signal drifts, or where `varianceOf` or `amplitudeOf` has
+ * none.
+ */
+export function rmsOf(
+  x: SignalValue,
+  signOf: SignOf,
+  budget?: Budget,
+): FormulaValue | NoValue | Refusal {
+  const rest = finalValue(steadyPart(x), signOf, budget);
+  if (rest.kind === 'none') return noValue(x, `${x.name} drifts: ${rest.reason}`);
+  const variance = varianceOf(x, signOf, budget);
+  if (variance.kind === 'none') return variance;
+  const periodic = periodicSquare(x, signOf, budget);
+  if (isRefusal(periodic) || periodic.kind === 'none') return periodic;
+  const square = addRatios(variance.ratio, periodic.ratio, budget);
+  const left = isZeroRatio(rest.ratio) ? [] : ['The constant part is not counted.'];
+  const notes = [...variance.notes, ...left];
+  const when = allOf([variance.when, periodic.when, rest.when]);
+  return plainValue({ when, notes }, rootOfSquare(square, signOf, budget));
+}
