@@ -1,11 +1,8 @@
 import { Budget, currentBudget, spend } from '../base/index.ts';
 import { contentIn } from './gcd.ts';
-import { absolute } from './integer.ts';
 import {
-  addPolynomials,
   coefficientsIn,
   comparePolynomials,
-  constantPolynomial,
   contentOf,
   degreeIn,
   generatorPolynomial,
@@ -14,17 +11,14 @@ import {
   isZeroPolynomial,
   leadingCoefficientSign,
   mulPolynomials,
-  negPolynomial,
   normalPart,
-  powPolynomial,
   scalePolynomial,
   subPolynomials,
 } from './polynomial.ts';
 import { polynomialKey } from './key.ts';
-import { imageAt, termValues } from './point-image.ts';
-import { ElementSequence, fieldNumber } from './prime-field.ts';
-import { divideExactly, monomialContent, quotientOf } from './quotient.ts';
+import { monomialContent, quotientOf } from './quotient.ts';
 import { squareFreeFactors, squareRootOfPolynomial, type PowerFactor } from './square-free.ts';
+import { splitMultivariate } from './multivariate-factor.ts';
 import type { Generator, Polynomial } from './ring.ts';
 import { factorUnivariate } from './univariate-factor.ts';
 
@@ -35,9 +29,9 @@ export interface Factorization {
 }
 
 /**
- * Factors a polynomial over ℤ. Monomials, contents in each generator, repeated factors, all factors of a polynomial
- * in one generator or of degree at most two in some generator, and factors linear in some generator are found. Other
- * factors may stay together (cost grows too fast otherwise), but the product is always p.
+ * Factors a polynomial over ℤ: monomials, contents in each generator, repeated factors, then factors of degree one
+ * or two in some generator, of one generator, and of several. Where coefficients are too large for the lifting or
+ * factors at points too many, factors may stay together, but the product is always p.
  */
 export function factorPolynomial(p: Polynomial, budget?: Budget): Factorization {
   if (isZeroPolynomial(p)) return { unit: 0n, factors: [] };
@@ -120,8 +114,8 @@ function splitSquareFree(p: Polynomial, budget?: Budget): Polynomial[] {
   if (degree === 1) return [p];
   if (degree === 2) return splitQuadratic(p, g, budget);
   if (p.generators.length === 1) return factorUnivariate(p, g, budget);
-  const factor = findLinearFactor(p, budget);
-  return factor ? [factor, ...splitSquareFree(quotientOf(p, factor, budget), budget)] : [p];
+  const pair = splitMultivariate(p, budget);
+  return pair ? pair.flatMap((part) => splitSquareFree(part, budget)) : [p];
 }
 
 /** p = a x² + b x + c, primitive in x, splits exactly where b² − 4ac is a square r²: into 2 a x + b ± r. */
@@ -135,66 +129,4 @@ function splitQuadratic(p: Polynomial, g: Generator, budget?: Budget): Polynomia
   const linear = subPolynomials(subPolynomials(twice, scalePolynomial(b, -1n)), root);
   const factor = normalPart(quotientOf(linear, contentIn(linear, g, budget), budget));
   return [factor, quotientOf(p, factor, budget)];
-}
-
-const MOST_CANDIDATES = 4096;
-
-/** A factor a x + b in some generator x, or null: a divides the leading coefficient in x and b the trailing one. */
-function findLinearFactor(p: Polynomial, budget?: Budget): Polynomial | null {
-  for (const g of p.generators) {
-    const coefficients = coefficientsIn(p, g);
-    const leads = divisorsOf(coefficients[coefficients.length - 1], budget);
-    const trails = divisorsOf(coefficients[0], budget);
-    if (leads.length * trails.length > MOST_CANDIDATES) continue;
-    budget?.spend(2 * leads.length * trails.length, 'factoring a polynomial');
-    const vanishes = rootTest(p, g);
-    for (const a of leads) {
-      for (const b of trails.flatMap((trail) => [trail, negPolynomial(trail)])) {
-        if (!vanishes(a, b)) continue;
-        const factor = addPolynomials(mulPolynomials(a, generatorPolynomial(g)), b);
-        const normal = normalPart(factor);
-        if (divideExactly(p, normal, budget)) return normal;
-      }
-    }
-  }
-  return null;
-}
-
-/** All divisors with positive leading coefficients, as far as factors are found and integers are small. */
-function divisorsOf(p: Polynomial, budget?: Budget): readonly Polynomial[] {
-  const { unit, factors } = factorPolynomial(p, budget);
-  return factors.reduce<readonly Polynomial[]>(
-    (divisors, { factor, multiplicity }) =>
-      divisors.flatMap((divisor) =>
-        Array.from({ length: multiplicity + 1 }, (_, k) =>
-          mulPolynomials(divisor, powPolynomial(factor, k)),
-        ),
-      ),
-    integerDivisors(absolute(unit)).map(constantPolynomial),
-  );
-}
-
-const LARGEST_CONTENT = 10_000n;
-
-/** The positive divisors of n; of a large n only 1 and n itself. */
-function integerDivisors(n: bigint): readonly bigint[] {
-  if (n > LARGEST_CONTENT) return [1n, n];
-  const numbers = Array.from({ length: Number(n) }, (_, k) => BigInt(k + 1));
-  return numbers.filter((k) => n % k === 0n);
-}
-
-/** A test, at one point modulo a prime, of whether −b/a can be a root of p in g. */
-function rootTest(p: Polynomial, g: Generator): (a: Polynomial, b: Polynomial) => boolean {
-  const field = fieldNumber(0);
-  const elements = new ElementSequence(23);
-  const point = new Map(p.generators.map((other) => [other, elements.next(field)]));
-  const image = imageAt(p, g, point, field);
-  const valueAt = (q: Polynomial): number =>
-    termValues(q, point, field).reduce((sum, value) => field.add(sum, value), 0);
-  return (a, b) => {
-    const lead = valueAt(a);
-    if (lead === 0) return true;
-    const root = field.mul(field.sub(0, valueAt(b)), field.inverse(lead));
-    return image.reduceRight((sum, c) => field.add(field.mul(sum, root), c), 0) === 0;
-  };
 }

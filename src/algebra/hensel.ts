@@ -1,6 +1,6 @@
 import type { Budget } from '../base/index.ts';
 import { spend } from '../base/index.ts';
-import { modulo } from './integer.ts';
+import { inverseOf, modulo } from './integer.ts';
 import type { PrimeField } from './prime-field.ts';
 import { bezoutModulo, multiplyModulo, trimmed, type PrimePolynomial } from './prime-polynomial.ts';
 
@@ -92,16 +92,4 @@ export function liftFactors(
     ...liftFactors(parts.g, left, field, modulus, budget),
     ...liftFactors(parts.h, right, field, modulus, budget),
   ];
-}
-
-/** The inverse of a unit modulo m, by the extended Euclidean algorithm. */
-function inverseOf(a: bigint, m: bigint): bigint {
-  let [older, newer] = [m, modulo(a, m)];
-  let [olderFactor, newerFactor] = [0n, 1n];
-  while (newer > 1n) {
-    const quotient = older / newer;
-    [older, newer] = [newer, older - quotient * newer];
-    [olderFactor, newerFactor] = [newerFactor, olderFactor - quotient * newerFactor];
-  }
-  return modulo(newerFactor, m);
 }

@@ -47,3 +47,15 @@ export function modulo(a: bigint, m: bigint): bigint {
   const rest = a % m;
   return rest < 0n ? rest + m : rest;
 }
+
+/** The inverse of a unit modulo m, by the extended Euclidean algorithm. */
+export function inverseOf(a: bigint, m: bigint): bigint {
+  let [older, newer] = [m, modulo(a, m)];
+  let [olderFactor, newerFactor] = [0n, 1n];
+  while (newer > 1n) {
+    const quotient = older / newer;
+    [older, newer] = [newer, older - quotient * newer];
+    [olderFactor, newerFactor] = [newerFactor, olderFactor - quotient * newerFactor];
+  }
+  return modulo(newerFactor, m);
+}

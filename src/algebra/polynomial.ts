@@ -136,6 +136,23 @@ function mapCoefficients(p: Polynomial, change: (coefficient: bigint) => bigint)
   return Object.freeze({ ...p, coefficients: p.coefficients.map(change) });
 }
 
+/** p with every coefficient changed; terms whose coefficient becomes 0 are dropped. */
+export function mapTerms(p: Polynomial, change: (coefficient: bigint) => bigint): Polynomial {
+  const mapped = mapCoefficients(p, change);
+  if (!mapped.coefficients.includes(0n)) return mapped;
+  const width = p.generators.length;
+  const kept = [...mapped.coefficients.keys()].filter((i) => mapped.coefficients[i] !== 0n);
+  const exponents = new Int32Array(kept.length * width);
+  kept.forEach((i, to) =>
+    exponents.set(p.exponents.subarray(i * width, (i + 1) * width), to * width),
+  );
+  return polynomialOfTerms(
+    p.generators,
+    exponents,
+    kept.map((i) => mapped.coefficients[i]),
+  );
+}
+
 export function negPolynomial(p: Polynomial): Polynomial {
   return mapCoefficients(p, (coefficient) => -coefficient);
 }

@@ -93,6 +93,54 @@ describe('factors', () => {
     );
   });
 
+  it.each<[string[]]>([
+    [['y*z + x + 20', 'x*y + z + 10', 'x*z + y + 30']],
+    [['x^3*(z + y) + z - 11', 'x^2*(z^2 + y^2) + y + 90']],
+    [['y*z^3 + x*y*z + y^2 + x^3', 'x*(z^4 + 1) + z + x^3*y^2']],
+  ])(
+    'of the product of %j are these (P. S. Wang, Math. Comp. 32 (1978), 1215–1231, examples; from memory)',
+    (texts) => {
+      const written = texts.map(readPolynomial);
+      const result = factorPolynomial(productOfPolynomials(written));
+      expect(result.factors.map((f) => polynomialKey(f.factor)).sort()).toEqual(
+        written.map(polynomialKey).sort(),
+      );
+    },
+  );
+
+  it.each<[string, string[]]>([
+    [
+      '(a*s^3 + b^3*s + a^3 - 2)*(b*s^3 + a^3 + 5*b^3*s + 7)*(s^3 + a^3*b^3 + 1)',
+      ['a*s^3 + b^3*s + a^3 - 2', 'b*s^3 + a^3 + 5*b^3*s + 7', 's^3 + a^3*b^3 + 1'],
+    ],
+    ['s^9 - a^9*b^9', ['s - a*b', 's^2 + s*a*b + a^2*b^2', 's^6 + s^3*a^3*b^3 + a^6*b^6']],
+    ['s^4 + s^3*a^3*b^3 + a^4 + b^4', ['s^4 + s^3*a^3*b^3 + a^4 + b^4']],
+    [
+      '(123456789012345678901*s^3 + a^3*b)*(s^3 - 98765432109876543210*a^4 + b^3)',
+      ['123456789012345678901*s^3 + a^3*b', 's^3 - 98765432109876543210*a^4 + b^3'],
+    ],
+  ])('of %s, of high degree in every symbol, are found by lifting', (text, expected) => {
+    const found = factorPolynomial(readPolynomial(text)).factors;
+    expect(found.map(({ factor }) => polynomialKey(factor)).sort()).toEqual(
+      expected.map((q) => polynomialKey(readPolynomial(q))).sort(),
+    );
+  });
+
+  it('of high degree in every symbol are found however the product was grouped', () => {
+    const p = nonzeroPolynomials({ generators: 3, terms: 4, degree: 4, size: 30n });
+    fc.assert(
+      fc.property(p, p, p, (a, b, c) => {
+        const whole = factorPolynomial(productOfPolynomials([a, b, c]));
+        expect(equalPolynomials(expand(whole), productOfPolynomials([a, b, c]))).toBe(true);
+        const apart = [a, b, c].flatMap((q) => factorPolynomial(q).factors);
+        expect(new Set(whole.factors.map((f) => polynomialKey(f.factor)))).toEqual(
+          new Set(apart.map((f) => polynomialKey(f.factor))),
+        );
+      }),
+      { ...RUNS, numRuns: 40 },
+    );
+  });
+
   it('of zero and of numbers are none', () => {
     expect(factorPolynomial(zeroPolynomial)).toEqual({ unit: 0n, factors: [] });
     expect(factorPolynomial(readPolynomial('-12'))).toEqual({ unit: -12n, factors: [] });
