@@ -202,7 +202,10 @@ export class Desk {
   private outline(): void {
     if (this.outlining !== null) clearTimeout(this.outlining);
     this.outlining = null;
-    this.headings = this.editor.headings;
+    const { headings, complete } = this.editor.headings;
+    this.headings = headings;
+    // A long worksheet is parsed bit by bit, so that typing does not wait for it.
+    if (!complete) this.outlining = setTimeout(() => this.outline(), OUTLINE_WITHIN);
   }
 
   private take(sheet: Sheet): void {

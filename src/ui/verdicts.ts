@@ -26,9 +26,16 @@ export function worstVerdict(verdicts: readonly Verdict[]): Verdict | null {
   );
 }
 
-/** The line of the title bar: "6 of 8 met · 1 at nominal only · 1 not met"; null without requirements. */
-export function verdictSummary(requirements: readonly RequirementContent[]): string | null {
-  if (requirements.length === 0) return null;
+/**
+ * The line of the title bar: "6 of 8 met · 1 at nominal only · 1 not met · 2 errors"; null without requirements and
+ * errors.
+ */
+export function verdictSummary(
+  requirements: readonly RequirementContent[],
+  errors: number,
+): string | null {
+  const faults = errors === 0 ? null : `${errors} ${errors === 1 ? 'error' : 'errors'}`;
+  if (requirements.length === 0) return faults;
   const count = (verdict: Verdict) =>
     requirements.filter((requirement) => requirement.verdict === verdict).length;
   const rest: [number, string][] = [
@@ -39,6 +46,7 @@ export function verdictSummary(requirements: readonly RequirementContent[]): str
   return [
     `${count('met')} of ${requirements.length} met`,
     ...rest.filter(([number]) => number > 0).map(([number, words]) => `${number} ${words}`),
+    ...(faults === null ? [] : [faults]),
   ].join(' · ');
 }
 

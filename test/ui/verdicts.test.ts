@@ -9,15 +9,20 @@ const of = (...verdicts: Verdict[]): RequirementContent[] =>
 
 describe('words of verdicts', () => {
   it('summarises the verdicts, naming only those that occur', () => {
-    expect(verdictSummary(of('met', 'met at nominal only', 'not met', 'met'))).toBe(
+    expect(verdictSummary(of('met', 'met at nominal only', 'not met', 'met'), 0)).toBe(
       '2 of 4 met · 1 at nominal only · 1 not met',
     );
-    expect(verdictSummary(of('met', 'met'))).toBe('2 of 2 met');
-    expect(verdictSummary(of('undecided'))).toBe('0 of 1 met · 1 undecided');
+    expect(verdictSummary(of('met', 'met'), 0)).toBe('2 of 2 met');
+    expect(verdictSummary(of('undecided'), 0)).toBe('0 of 1 met · 1 undecided');
+  });
+
+  it('counts errors, also where nothing is required', () => {
+    expect(verdictSummary(of('met'), 2)).toBe('1 of 1 met · 2 errors');
+    expect(verdictSummary([], 1)).toBe('1 error');
   });
 
   it('says nothing where nothing is required', () => {
-    expect(verdictSummary([])).toBeNull();
+    expect(verdictSummary([], 0)).toBeNull();
   });
 
   it('never calls a sampled verdict plainly met', () => {

@@ -1,6 +1,6 @@
 import { isolateHistory } from '@codemirror/commands';
 import { Compartment, EditorSelection, EditorState, type Text } from '@codemirror/state';
-import { EditorView, highlightSpecialChars } from '@codemirror/view';
+import { EditorView, highlightSpecialChars, placeholder } from '@codemirror/view';
 import type { VocabularyWord } from '../../engine/index.ts';
 import { completing, setVocabulary } from './completion.ts';
 import { editorKeys, enterFromReading } from './editor-keys.ts';
@@ -16,6 +16,10 @@ import { revealing } from './revealed.ts';
 import { isCurrent, sheetKeeping, showSheet, type Sheet } from './sheet-field.ts';
 import { typesetting } from './typesetting.ts';
 import { worksheetLanguage } from './worksheet-language.ts';
+
+/** What an empty worksheet says. */
+const BEGINNING =
+  'An empty worksheet. Begin with a title, `# Tank level`. Prose is Markdown; assumptions, loops and requirements stand in a cell: a line ```loop, the statements, a line ```.';
 
 export interface EditorEvents {
   /** The text changed; `text` is as edited, with `\n` between lines. */
@@ -152,6 +156,7 @@ export class WorksheetEditor {
         highlighting,
         highlightSpecialChars(),
         EditorView.lineWrapping,
+        placeholder(BEGINNING),
         EditorView.contentAttributes.of({ 'aria-label': 'Worksheet text', spellcheck: 'false' }),
         revealing,
         sheetKeeping,

@@ -1,6 +1,12 @@
 import katex from 'katex';
 
 const MOST_KEPT = 2000;
+
+/** Characters of LaTeX above which a formula fills screens and takes seconds to set. */
+const LONGEST = 20_000;
+
+/** Macros that the user's LaTeX may open, loops among them; a result may open as many as it has characters. */
+const MOST_OPENED = 2000;
 const kept = new Map<string, HTMLElement>();
 
 /**
@@ -22,13 +28,17 @@ export function typeset(latex: string, style: 'text' | 'result' | 'display'): HT
 function render(latex: string, style: 'text' | 'result' | 'display'): HTMLElement {
   const holder = document.createElement('span');
   holder.className = `mathematics mathematics-${style}`;
+  if (latex.length > LONGEST) {
+    holder.textContent = 'This formula is too long to be set.';
+    return holder;
+  }
   katex.render(style === 'result' ? `\\displaystyle ${latex}` : latex, holder, {
     displayMode: style === 'display',
     throwOnError: false,
     errorColor: 'var(--ink-soft)',
     strict: 'ignore',
     trust: false,
-    maxExpand: 500,
+    maxExpand: style === 'result' ? LONGEST : MOST_OPENED,
   });
   return holder;
 }
