@@ -119,7 +119,7 @@ class CatalogueBuilder {
         for (const name of node.names) this.readUnit(name.name, name.span, node.unit, placed);
         break;
       case 'tune':
-        this.tunes.set(node.name, { node, placed });
+        this.readTune(node, placed);
         break;
       case 'unit':
         this.customUnits.push({ node, placed });
@@ -142,6 +142,7 @@ class CatalogueBuilder {
     this.checkDuplicates();
     this.checkTypesetting();
     this.checkTunes();
+    this.checkUnits();
     this.checkHiding();
     const { circles, order: evaluationOrder } = dependenciesOf(this.entries.keys(), (name) =>
       referencesOf(this.entries.get(name)!, this.entries),
@@ -168,8 +169,28 @@ class CatalogueBuilder {
 
   private readUnit(name: string, span: Span, unit: string, placed: PlacedStatement): void {
     this.note(name);
-    this.units.set(name, { unit, placed, span });
+    const earlier = this.units.get(name);
+    if (earlier) this.refuseAgain(`${nameToText(name)} has a unit`, span, placed, earlier.placed);
+    else this.units.set(name, { unit, placed, span });
     this.symbols.push({ name, span, entry: { kind: 'symbol', node: placed.node, placed } });
+  }
+
+  private readTune(node: TuneStatement, placed: PlacedStatement): void {
+    const earlier = this.tunes.get(node.name);
+    if (earlier) {
+      const what = `${nameToText(node.name)} is tuned`;
+      this.refuseAgain(what, node.nameSpan, placed, earlier.placed);
+    } else this.tunes.set(node.name, { node, placed });
+  }
+
+  private refuseAgain(
+    what: string,
+    span: Span,
+    placed: PlacedStatement,
+    earlier: PlacedStatement,
+  ): void {
+    const message = `${what} in line ${this.lineOf(earlier.from)} already; keep one.`;
+    this.problems.push(errorAt(offsetSpan(span, placed.from), 'given-again', message));
   }
 
   private note(name: string): void {
@@ -241,6 +262,16 @@ class CatalogueBuilder {
             : `${name} has no value to tune; add \`${name} is …\`.`,
         ),
       );
+    }
+  }
+
+  /** `has unit` is for a symbol without a value: a value brings its own unit. */
+  private checkUnits(): void {
+    for (const [name, { placed, span }] of this.units) {
+      const entry = this.entries.get(name);
+      if (!entry || entry.kind === 'symbol') continue;
+      const message = `${nameToText(name)} is given in line ${this.lineOf(entry.placed.from)}, which gives its unit too; take this line away.`;
+      this.problems.push(errorAt(offsetSpan(span, placed.from), 'unit-of-value', message));
     }
   }
 

@@ -166,6 +166,35 @@ describe('names of a worksheet', () => {
   });
 });
 
+describe('statements on a name', () => {
+  test.each([
+    ['q has unit N/m\nq has unit N', 'q', 'q has a unit in line 2 already; keep one.'],
+    [
+      'tune k from 1 to 2\nk is 1\ntune k from 1 to 3',
+      'k',
+      'k is tuned in line 2 already; keep one.',
+    ],
+    [
+      'q has unit N/m\nq is 3 N/m',
+      'q',
+      'q is given in line 3, which gives its unit too; take this line away.',
+    ],
+    [
+      'q has unit N/m\nq = 3',
+      'q',
+      'q is given in line 3, which gives its unit too; take this line away.',
+    ],
+    ['tune k from 1 to 2', 'k', 'k has no value to tune; add `k is …`.'],
+    [
+      'tune k from 1 to 2\nk = 3',
+      'k',
+      'k is not an assumption, so it cannot be tuned; give it a value with `k is …`.',
+    ],
+  ])('are refused where they say it again or need more: %s', (cell, at, message) => {
+    expect(problemsOf(cell)).toEqual([`error at ‹${at}›: ${message}`]);
+  });
+});
+
 describe('signals', () => {
   const loop = "loop az driven by w\n  x' = 2 w - 4 x\n";
 
