@@ -1,14 +1,19 @@
 import {
+  compareRational,
   dependsOn,
+  generatorsOf,
   generatorsOfRatio,
   numberToRational,
   ratioFromRational,
   signOfPolynomial,
-  signOfRatio,
+  signOverBox,
+  substitutePolynomial,
   substituteRatio,
   subRatios,
   symbol,
   type Generator,
+  type Polynomial,
+  type Range,
   type Ratio,
   type Sign,
 } from '../algebra/index.ts';
@@ -35,6 +40,8 @@ const SAMPLES = 2000;
 const SEED = 20260101;
 /** Work that may be spent on proving that a formula is monotone. */
 const PROOF_BUDGET = 400_000;
+/** Work that may be spent on one sign over the box, where the signs of the symbols leave it open. */
+const BOX_BUDGET = 20_000;
 
 /**
  * The points at which a quantity is judged over its tolerances: the corners alone where it is proved monotone in every
@@ -78,7 +85,7 @@ function levelsOf([low, high]: readonly [number, number]): readonly number[] {
 }
 
 /** The sign of a symbol over the whole tolerance box. */
-function signOverBox(numbers: Numbers, derivations: Derivations): (g: Generator) => Sign {
+function signsOverBox(numbers: Numbers, derivations: Derivations): (g: Generator) => Sign {
   return (g) => {
     if (g.kind !== 'symbol') return derivations.signOf(g);
     const nominal = numbers.nominal(g.name);
@@ -100,7 +107,7 @@ export function isMonotone(
 ): boolean {
   try {
     const opened = holdNominals(numbers.opened(ratio), numbers);
-    const signOf = signOverBox(numbers, derivations);
+    const signOf = signsOverBox(numbers, derivations);
     return opened !== null && names.every((name) => isMonotoneIn(opened, name, signOf, numbers));
   } catch (error) {
     if (error instanceof BudgetExceeded) return false;
@@ -130,12 +137,36 @@ function isMonotoneIn(
 ): boolean {
   const g = symbol(name);
   if (!dependsOn(ratio, g)) return true;
-  const budget = new Budget(PROOF_BUDGET);
-  const denominator = signOfPolynomial(ratio.den, signOf, budget);
+  const denominator = signOver(ratio.den, signOf, numbers);
   if (denominator !== 'positive' && denominator !== 'negative') return false;
   const derivative = numbers.derivative(ratio, g);
-  return derivative !== null && signOfRatio(derivative, signOf, budget) !== 'unknown';
+  if (derivative === null) return false;
+  const parts = [derivative.num, derivative.den];
+  return parts.every((p) => signOver(p, signOf, numbers) !== 'unknown');
 }
+
+/** The sign of a polynomial over the box: from the signs of its symbols, else from its Bernstein coefficients. */
+function signOver(p: Polynomial, signOf: (g: Generator) => Sign, numbers: Numbers): Sign {
+  const known = signOfPolynomial(p, signOf, new Budget(PROOF_BUDGET));
+  if (known !== 'unknown') return known;
+  const fixed = new Map<Generator, Ratio>();
+  for (const g of generatorsOf(p)) {
+    const range = rangeOf(g, numbers);
+    if (range && isFixed(range)) fixed.set(g, ratioFromRational(range.low));
+  }
+  const { num } = substitutePolynomial(p, fixed);
+  const sign = signOverBox(num, (g) => rangeOf(g, numbers), new Budget(BOX_BUDGET));
+  return sign === 'mixed' || sign === 'undecided' ? 'unknown' : sign;
+}
+
+function rangeOf(g: Generator, numbers: Numbers): Range | null {
+  const nominal = g.kind === 'symbol' ? numbers.nominal(g.name) : null;
+  if (nominal === null) return null;
+  const [low, high] = numbers.bounds(g.name) ?? [nominal, nominal];
+  return { low: numberToRational(low), high: numberToRational(high) };
+}
+
+const isFixed = ({ low, high }: Range): boolean => compareRational(low, high) === 0;
 
 /** Whether a condition's truth over the box is settled by the corners: each of its relations is monotone. */
 export function isMonotoneCondition(

@@ -22,6 +22,7 @@ describe('a span over the tolerances', () => {
     ['sqrt(a b)', 2.121320344, 2.774887385],
     ['nominal(a) + b', 4.5, 5.5],
     ['abs(a - b)', 0.3, 1.7],
+    ['a^2 - 4 a b', -25.96, -14.76],
     ['-2 abs(a - 2 [m])', -0.4, 0],
   ])('of %s, which is monotone, is that of the corners', (formula, low, high) => {
     expect(spanOf(formula)).toEqual(['corners', null, low, high]);
@@ -29,7 +30,6 @@ describe('a span over the tolerances', () => {
 
   test.each([
     ['(a - 2 [m])^2', 0, 0.04, 2002],
-    ['a^2 - 4 a b', -25.96, -14.76, 2004],
     ['max(a, b)', 2.5, 3.5, 2004],
   ])('of %s, which is not proved monotone, is sampled, and says so', (formula, low, high, n) => {
     expect(spanOf(formula)).toEqual(['sampled', n, low, high]);
