@@ -139,8 +139,8 @@ describe('numbers worked by hand', () => {
     const [J1, J2, k, c] = [0.012, 0.06, 900, 0.6];
     const limit = (c * k * (J1 + J2) ** 2) / (J1 * J2 * k - c ** 2 * (J1 + J2));
     const solved = reportOn('belt-drive.md').results.find(
-      ({ content }) => content.formula?.startsWith('Kv > 0 and Kv < ') === true,
+      ({ content }) => content.formula?.startsWith('0 < Kv < ') === true,
     );
-    expect(solved?.content.formula).toBe(`Kv > 0 and Kv < ${limit === 4.5 ? '9/2' : limit}`);
+    expect(solved?.content.formula).toBe(`0 < Kv < ${limit === 4.5 ? '9/2' : limit}`);
   });
 });
