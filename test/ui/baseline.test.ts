@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import type { ResponseFigure } from '../../src/figures/index.ts';
+import type { RegionFigure, ResponseFigure } from '../../src/figures/index.ts';
 import {
   assumptionWas,
   distance,
@@ -101,6 +101,29 @@ describe('figures under a baseline', () => {
       ['e', false],
       ['e, baseline', true],
     ]);
+  });
+
+  it('have the boundaries as they were, where these moved in the same plane', () => {
+    const side = { name: 'Kp', label: 'gain Kp', unit: '', from: 0, to: 10 };
+    const plane = (at: number, label = 'gain Kp'): RegionFigure => ({
+      kind: 'region',
+      title: null,
+      x: { ...side, label },
+      y: { ...side, name: 'Ki' },
+      nominalArea: [],
+      toleranceArea: null,
+      boundaries: [{ label: 'Kp > 1', latex: null, lines: [[[at, 0]]], elsewhere: [] }],
+      baseline: [],
+      names: [],
+      point: null,
+      notes: [],
+    });
+    const results = [placed(result({ name: 'f', figure: plane(1) }))];
+    const drawn = (now: RegionFigure) =>
+      figureWithBaseline(pinBaseline(report({ results }), ''), 'f', now) as RegionFigure;
+    expect(drawn(plane(2)).baseline).toEqual([[[1, 0]]]);
+    expect(drawn(plane(1)).baseline).toEqual([]);
+    expect(drawn(plane(2, 'gain Kp, N m/rad')).baseline).toEqual([]);
   });
 
   it('are left as they are where nothing changed, is pinned, or can be compared', () => {

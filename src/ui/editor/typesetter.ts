@@ -168,6 +168,7 @@ class Typesetter {
 
   private inlineNode(node: SyntaxNode): void {
     const { name, from, to } = node;
+    if (isBracketed(node) || isBracketed(node.parent)) return;
     const mark = INLINE_MARKS[name];
     if (mark) this.made.push(mark.range(from, to));
     if (HIDDEN_MARKS.has(name)) this.hide(from, to);
@@ -217,6 +218,11 @@ class Typesetter {
       if (line.to >= node.to) break;
     }
   }
+}
+
+/** Whether this is words in brackets, `[1]` or `[rad/s]`, which the grammar takes for a link though it leads nowhere. */
+function isBracketed(node: SyntaxNode | null): boolean {
+  return (node?.name === 'Link' || node?.name === 'Image') && node.getChild('URL') === null;
 }
 
 function depthOf(node: SyntaxNode): number {

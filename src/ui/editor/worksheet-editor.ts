@@ -19,7 +19,7 @@ import { worksheetLanguage } from './worksheet-language.ts';
 
 /** What an empty worksheet says. */
 const BEGINNING =
-  'An empty worksheet. Begin with a title, `# Tank level`. Prose is Markdown; assumptions, loops and requirements stand in a cell: a line ```loop, the statements, a line ```.';
+  'An empty worksheet. Begin with a title, as in “# Tank level”. Prose is Markdown; statements stand in a cell: a line ```loop, the statements, a line ```.';
 
 export interface EditorEvents {
   /** The text changed; `text` is as edited, with `\n` between lines. */

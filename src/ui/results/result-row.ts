@@ -41,10 +41,10 @@ function mainLine(content: ResultContent, movement: Movement | null): HTMLElemen
   return line;
 }
 
-function formulaElement({ nameLatex, latex, kind }: ResultContent): HTMLElement {
+function formulaElement({ nameLatex, latex, formula, kind }: ResultContent): HTMLElement {
   if (nameLatex === null) return typeset(latex ?? '', 'result');
   // What is no formula of its own but a relation, a list of them or words does not equal its name.
-  const isEqual = FORMULAS.has(kind) && !/^s(=|\\approx)/u.test(latex ?? '');
+  const isEqual = formula !== null && FORMULAS.has(kind) && !/^s(=|\\approx)/u.test(latex ?? '');
   return typeset(`${nameLatex}${isEqual ? ' = ' : '\\colon\\quad '}${latex}`, 'result');
 }
 

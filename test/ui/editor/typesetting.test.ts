@@ -40,6 +40,14 @@ function fresh(state: EditorState): string[] {
 }
 
 describe('typesetting', () => {
+  it('leaves words in brackets that lead nowhere as they are', () => {
+    const marked = (text: string) => held(stateOf(`# Title\n\n${text}\n`)).slice(3);
+    expect(marked('As in [1], in [rad/s].')).toEqual([]);
+    expect(marked('As in [the report](report.md).')).toContainEqual(
+      expect.stringMatching(/ link$/),
+    );
+  });
+
   it('hides the markup of prose, joins the lines of a paragraph, and sets cells apart', () => {
     const text = '# Drive\n\nA *b*\nc $x$.\n\n```loop\nJ is 3\n```\n';
     expect(held(stateOf(text))).toEqual(
