@@ -1,19 +1,21 @@
-import type { Problem } from '../base/index.ts';
+import { errorAt, type Problem } from '../base/index.ts';
 import {
   nameToLatex,
+  nameToText,
   placeProblem,
   type AssumptionStatement,
   type PlacedStatement,
   type Statement,
 } from '../language/index.ts';
 import { formatNumber, unitText, unitToLatex, valueIn } from '../units/index.ts';
-import { contradiction, readBounds } from './assumptions.ts';
+import { readBounds } from './assumptions.ts';
 import { referencesOf, type Catalogue } from './catalogue.ts';
 import { freeReferences } from './references.ts';
 import type { Derivations } from './derivations.ts';
 import type { Numbers } from './numbers.ts';
 import type { Queries } from './queries.ts';
 import type { AssumptionContent, Placed } from './report.ts';
+import { signConflict } from './sign-conflicts.ts';
 import { outcomeOf } from './stop.ts';
 
 export interface AssumptionRows {
@@ -37,8 +39,9 @@ export function assumptionRows(
   for (const placed of statements) {
     const place = { from: placed.from, to: placed.to, line: lineOf(placed.from) };
     const { node } = placed;
+    problems.push(...signProblems(node, placed, catalogue, numbers, lineOf));
     if (node.kind === 'assumption' && catalogue.entries.get(node.name)?.node === node) {
-      problems.push(...assumptionProblems(node, placed, catalogue, derivations, numbers, lineOf));
+      problems.push(...assumptionProblems(node, placed, catalogue, derivations, numbers));
       rows.push({
         ...place,
         content: assumptionContent(
@@ -79,21 +82,40 @@ function usedNames(
   return used;
 }
 
+/** The error of a value or a tolerance that contradicts a sign statement. */
+function signProblems(
+  node: Statement,
+  placed: PlacedStatement,
+  catalogue: Catalogue,
+  numbers: Numbers,
+  lineOf: (offset: number) => number,
+): Problem[] {
+  if (node.kind !== 'assumption' && node.kind !== 'definition') return [];
+  const stated = catalogue.signs.get(node.name);
+  if (!stated || catalogue.entries.get(node.name)?.node !== node) return [];
+  const conflict = signConflict(node.name, stated.sign, numbers);
+  if (!conflict) return [];
+  const reading = numbers.reading(node.name);
+  const unit = reading?.ok ? reading.value.unit : null;
+  const [low, high] = [conflict.low, conflict.high].map((si) =>
+    formatNumber(unit ? valueIn(si, unit) : si),
+  );
+  const ends = low === high ? `is ${low}` : `can be from ${low} to ${high}`;
+  const what = `${nameToText(node.name)} ${ends} ${unit ? unit.text : ''}`.trim();
+  const message = `${what}, which contradicts that it is ${stated.sign} (line ${lineOf(stated.placed.from)}).`;
+  return [placeProblem(errorAt(node.nameSpan, 'sign-contradicted', message), placed.from)];
+}
+
 function assumptionProblems(
   node: AssumptionStatement,
   placed: PlacedStatement,
   catalogue: Catalogue,
   derivations: Derivations,
   numbers: Numbers,
-  lineOf: (offset: number) => number,
 ): Problem[] {
   const reading = numbers.reading(node.name);
   if (!reading) return [];
   if (!reading.ok) return reading.problem ? [placeProblem(reading.problem, placed.from)] : [];
-  const sign = catalogue.signs.get(node.name);
-  const contradicted =
-    sign &&
-    contradiction(reading.value, node.name, sign.sign, lineOf(sign.placed.from), node.nameSpan);
   const tune = catalogue.tunes.get(node.name);
   const tuned =
     tune &&
@@ -107,7 +129,6 @@ function assumptionProblems(
       ),
     );
   return [
-    ...(contradicted ? [placeProblem(contradicted, placed.from)] : []),
     ...(tune && tuned && !tuned.ok && tuned.problem
       ? [placeProblem(tuned.problem, tune.placed.from)]
       : []),

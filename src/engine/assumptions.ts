@@ -1,18 +1,9 @@
-import { errorAt, type Problem, type Span } from '../base/index.ts';
 import {
-  nameToText,
   type AssumptionStatement,
   type Quantity,
-  type Sign,
   type ToleranceClause,
 } from '../language/index.ts';
-import {
-  formatNumber,
-  valueIn,
-  type CustomUnits,
-  type SiQuantity,
-  type Unit,
-} from '../units/index.ts';
+import { type CustomUnits, type SiQuantity, type Unit } from '../units/index.ts';
 import { siOfQuantity, unitOfQuantity } from './quantities.ts';
 import { outcomeOf, stopAt, type Outcome } from './stop.ts';
 
@@ -199,36 +190,4 @@ export function readBounds(
       'The range runs backwards; the smaller number comes first.',
     );
   return [low, high];
-}
-
-const HOLDS: Readonly<Record<Sign, (low: number, high: number) => boolean>> = {
-  positive: (low) => low > 0,
-  negative: (_, high) => high < 0,
-  nonnegative: (low) => low >= 0,
-  real: () => true,
-};
-
-/** The error of a value or a tolerance that contradicts a sign statement, or null. */
-export function contradiction(
-  reading: AssumptionReading,
-  name: string,
-  sign: Sign,
-  signLine: number,
-  span: Span,
-): Problem | null {
-  const { low, high } = reading.tolerance ?? {
-    low: reading.value.value,
-    high: reading.value.value,
-  };
-  if (HOLDS[sign](low, high)) return null;
-  const typed = (si: number) => formatNumber(valueIn(si, reading.unit));
-  const what =
-    reading.tolerance === null
-      ? `is ${typed(low)} ${reading.unit.text}`.trim()
-      : `can be from ${typed(low)} to ${typed(high)} ${reading.unit.text}`.trim();
-  return errorAt(
-    span,
-    'sign-contradicted',
-    `${nameToText(name)} ${what}, which contradicts that it is ${sign} (line ${signLine}).`,
-  );
 }

@@ -213,6 +213,11 @@ export class Numbers {
     });
   }
 
+  /** What a derived parameter stands for; null for any other name. */
+  meaning(name: string): Ratio | null {
+    return this.derivations.abbreviated(name);
+  }
+
   /** Whether a derived parameter depends on a toleranced name other than through `nominal`. */
   movesWithTolerance(name: string): boolean {
     return this.inputsOf(name).some((input) => this.bounds(input) !== null);
@@ -223,7 +228,7 @@ export class Numbers {
   }
 
   /** The assumptions behind a derived parameter, those held by `nominal` left out. */
-  private inputsOf(name: string): readonly string[] {
+  inputsOf(name: string): readonly string[] {
     return this.queries.get(`parameter-inputs:${name}`, () => {
       const meaning = this.derivations.abbreviated(name);
       if (!meaning) return [];
@@ -234,7 +239,7 @@ export class Numbers {
   }
 
   /** The values of a derived parameter at points. */
-  private columnOf(name: string, points: Points): Float64Array {
+  valuesOf(name: string, points: Points): Float64Array {
     const meaning = this.derivations.abbreviated(name)!;
     const { tape, inputs, outputs } = compileRatios([meaning], this.resolve);
     return tape.evaluateBatch(this.inputs(inputs, points), points.count)[outputs[0].re];
@@ -329,7 +334,7 @@ export class Numbers {
     const fixed = zero.filter((name) => !moving.includes(name));
     const varying = [
       ...[...points.columns].filter(([name]) => subject.reach.has(name)),
-      ...moving.map((name) => [name, this.columnOf(name, points)] as const),
+      ...moving.map((name) => [name, this.valuesOf(name, points)] as const),
     ];
     const groups = new Map<string, { zeros: string[]; indices: number[] }>();
     for (let i = 0; i < points.count; i++) {

@@ -152,7 +152,7 @@ export class Statements {
     for (const name of this.reachOfStatement(node)) {
       const entry = this.entryStatement(name);
       if (entry && entry !== node && hasError(this.dimensions().problems.get(entry))) return name;
-      if (this.isContradicted(name)) return name;
+      if (!('name' in node && node.name === name) && this.isContradicted(name)) return name;
     }
     return null;
   }
