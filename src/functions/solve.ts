@@ -138,12 +138,19 @@ function solveStable(
   const conditions = blocks.flatMap((block) =>
     stabilityConditions(block.polynomial, context.signOf, context.budget),
   );
+  const notes = new Set<string>();
   const solved = conditions.map((condition): Condition => {
     if (condition.kind !== 'compare') return condition;
     const answer = solveInequality(condition, gain, context.signOf, context.budget);
-    return isRefusal(answer) ? context.readable(condition) : answer;
+    if (!isRefusal(answer)) return answer;
+    if (answer.code === 'not-linear') notes.add(unsolvedNote(gain));
+    return context.readable(condition);
   });
-  return conditionAnswer(allOf(solved));
+  return { kind: 'condition', condition: allOf(solved), when: ALWAYS, notes: [...notes] };
+}
+
+function unsolvedNote({ name }: Generator): string {
+  return `A condition is not linear in ${name}; with numbers for all other symbols, stable(… with (…)), the intervals of ${name} are exact.`;
 }
 
 /** Digits of an end that no square root writes exactly, unless more are asked for. */

@@ -1,11 +1,13 @@
 import { describe, expect, test, vi } from 'vitest';
 import {
+  algebraicToNumber,
   coefficientsIn,
   derivativeRatio,
   equalRatios,
   factorPolynomial,
   fractionOfRatio,
   gcdPolynomials,
+  generatorsOf,
   isConstantPolynomial,
   isZeroPolynomial,
   isZeroRatio,
@@ -27,8 +29,10 @@ import {
   partialFractions,
   solveLinearFor,
   stabilityConditions,
+  stableIntervals,
   transferFunction,
   YES,
+  type GainInterval,
 } from '../../src/control/index.ts';
 import {
   polynomialRoots,
@@ -394,6 +398,44 @@ describe('control', () => {
       expect(verdict === YES).toBe(largest < 0);
     });
     expect(compared).toBeGreaterThan(1500);
+  });
+});
+
+/** The gains of an interval: its ends as numbers. */
+function endsOf({ from, to }: GainInterval): readonly [number, number] {
+  return [from ? algebraicToNumber(from) : -Infinity, to ? algebraicToNumber(to) : Infinity];
+}
+
+describe('one gain', () => {
+  test('1 000 loops are stable just at the gains of their intervals', () => {
+    const seen = { stable: 0, unstable: 0 };
+    problems(1000, (random) => {
+      const gain = variable(SYMBOLS[0]);
+      const part = (low: number, high: number): Formula =>
+        number(BigInt(randomInteger(random, low, high)));
+      const degree = randomInteger(random, 1, 4);
+      const p = Array.from({ length: degree + 1 }, (_, k) => {
+        const share =
+          random() < 0.6
+            ? product(part(-3, 4), power(gain, randomInteger(random, 1, 2)))
+            : part(0, 5);
+        return product(sum(part(0, 9), share), power(S, k));
+      }).reduce(sum).exact.num;
+      if (!generatorsOf(p).includes(laplace)) return;
+      const intervals = stableIntervals([p], SYMBOLS[0]).map(endsOf);
+      for (let point = 0; point < 6; point += 1) {
+        const value = randomInteger(random, -4000, 4000) / 512;
+        if (intervals.flat().some((end) => Math.abs(end - value) < 1e-4)) continue;
+        const roots = polynomialRoots(numbersAt(p, { [SYMBOLS[0].name]: value }));
+        const largest = Math.max(...roots.map((root) => root.re));
+        if (roots.length === 0 || Math.abs(largest) < 1e-6) continue;
+        const isInside = intervals.some(([low, high]) => low < value && value < high);
+        expect(isInside).toBe(largest < 0);
+        seen[isInside ? 'stable' : 'unstable'] += 1;
+      }
+    });
+    expect(seen.stable).toBeGreaterThan(500);
+    expect(seen.unstable).toBeGreaterThan(500);
   });
 });
 

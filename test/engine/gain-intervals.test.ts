@@ -44,6 +44,18 @@ describe('the intervals of stable gains', () => {
     expect(solved('(s^2 + 2 s + K (2 - K)) (s + K^2 - 1)').formula).toBe('1 < K < 2');
   });
 
+  it('are conditions where other symbols stand, with what would make them intervals', () => {
+    const { result } = evaluateCell(
+      'K is 3\na is 2\na, K are positive\nx = solve(stable(s^3 + a s^2 + K s + 2), K)\n' +
+        'y = solve(stable(s^3 + a s^2 + (K^2 + K) s + 2), K)',
+    );
+    expect(result('x')).toMatchObject({ formula: 'K > 2/a' });
+    expect(result('y').formula).toBe('K^2 a + K a > 2');
+    expect(result('y').notes).toContain(
+      'A condition is not linear in K; with numbers for all other symbols, stable(… with (…)), the intervals of K are exact.',
+    );
+  });
+
   it('refuse digits beyond measure', () => {
     expect(solved('s + K', ', 1001').problems).toEqual([expect.stringContaining('1000')]);
   });
