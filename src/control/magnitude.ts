@@ -3,6 +3,7 @@ import {
   constantPolynomial,
   divRatios,
   factorPolynomial,
+  isConstantPolynomial,
   isZeroRatio,
   mulRatios,
   negRatio,
@@ -59,6 +60,9 @@ function rootParts(p: Polynomial, signOf: SignOf, budget?: Budget): RootParts {
 export function rootOfSquare(square: Ratio, signOf: SignOf, budget?: Budget): Ratio {
   if (isZeroRatio(square)) return square;
   const [top, bottom] = [square.num, square.den].map((p) => rootParts(p, signOf, budget));
-  const inside = sqrtOf(ratio(top.inside, bottom.inside, budget), budget);
+  const root = (p: Polynomial): Ratio => sqrtOf(ratioFromPolynomial(p), budget);
+  const inside = isConstantPolynomial(top.inside)
+    ? divRatios(root(top.inside), root(bottom.inside), budget)
+    : sqrtOf(ratio(top.inside, bottom.inside, budget), budget);
   return mulRatios(divRatios(top.outside, bottom.outside), inside, budget);
 }

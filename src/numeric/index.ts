@@ -13,6 +13,7 @@ export {
 } from './complex.ts';
 export type { MultipleRoot } from './roots.ts';
 export { polynomialRoots, rootsWithMultiplicity } from './roots.ts';
+export { noiseBandwidthOf } from './noise-bandwidth.ts';
 export { hurwitzVerdicts, isHurwitz } from './hurwitz.ts';
 export type { BatchInput } from './tape.ts';
 export { Tape } from './tape.ts';

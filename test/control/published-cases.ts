@@ -12,8 +12,8 @@ export interface PublishedCase {
   readonly how: string;
 }
 
-const CASES: readonly PublishedCase[] = JSON.parse(
-  readFileSync(new URL('../data/control-cases.json', import.meta.url), 'utf8'),
+const CASES: readonly PublishedCase[] = ['control', 'noise'].flatMap((name) =>
+  JSON.parse(readFileSync(new URL(`../data/${name}-cases.json`, import.meta.url), 'utf8')),
 );
 
 /** Cases of a topic and kind as rows for `test.each`: the title shows the source and how it was checked. */
