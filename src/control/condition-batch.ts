@@ -92,26 +92,16 @@ class ConditionCompiler {
   }
 }
 
-/** Two numbers this close, relative to the larger, count as equal. */
-const EQUAL = 1e-9;
+/** Two numbers this close, relative to the smaller, are equal but for the rounding of their computation. */
+const EQUAL = 1e-12;
 
 function compareVerdict(operator: Comparison, left: number, right: number): 0 | 1 | 2 {
   if (Number.isNaN(left) || Number.isNaN(right)) return UNDECIDED;
-  switch (operator) {
-    case '>':
-      return left > right ? YES : NO;
-    case '>=':
-      return left >= right ? YES : NO;
-    case '<':
-      return left < right ? YES : NO;
-    case '<=':
-      return left <= right ? YES : NO;
-    default: {
-      const gap = Math.abs(left - right);
-      const equal = left === right || gap <= EQUAL * Math.max(Math.abs(left), Math.abs(right));
-      return equal === (operator === '=') ? YES : NO;
-    }
-  }
+  const gap = Math.abs(left - right);
+  const isEqual = left === right || gap <= EQUAL * Math.min(Math.abs(left), Math.abs(right));
+  if (isEqual) return operator === '=' || operator === '<=' || operator === '>=' ? YES : NO;
+  const isLess = operator === '<' || operator === '<=';
+  return operator === '!=' || (operator !== '=' && isLess === left < right) ? YES : NO;
 }
 
 type Columns = readonly Float64Array[];

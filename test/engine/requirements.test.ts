@@ -91,6 +91,17 @@ require x1 <= 6 m`);
     expect(content.notes).toEqual(['met (sampled, n = 2002): looked at, not proved.']);
   });
 
+  test('at its limit but for rounding is met, and strictly it is not', () => {
+    // 2 · 1.1 + 3.5 is 5.7 on paper, and 5.7000000000000002 in doubles.
+    expect(verdictOf('x1 <= 5.7 m').verdict).toBe('met');
+    expect(verdictOf('x1 < 5.7 m').verdict).toBe('met at nominal only');
+    const tenths = evaluateCell(
+      'p is 0.1\nq is 0.2\nrequire p + q <= 0.3 # R-1\nrequire p + q > 0.3 # R-2',
+    );
+    expect(tenths.requirement('R-1').verdict).toBe('met');
+    expect(tenths.requirement('R-2').verdict).toBe('not met');
+  });
+
   test('with 0 as its limit needs no unit, with another bare limit it is an error with the fix', () => {
     expect(verdictOf('x1 > 0').verdict).toBe('met');
     const cell = evaluateCell(`${LENGTHS}require x1 < 6`);
