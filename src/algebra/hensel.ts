@@ -1,6 +1,6 @@
 import type { Budget } from '../base/index.ts';
 import { spend } from '../base/index.ts';
-import { inverseOf, modulo } from './integer.ts';
+import { inverseOf, longWork, modulo } from './integer.ts';
 import type { PrimeField } from './prime-field.ts';
 import { bezoutModulo, multiplyModulo, trimmed, type PrimePolynomial } from './prime-polynomial.ts';
 
@@ -85,7 +85,7 @@ export function liftFactors(
   const { s, t } = bezoutModulo(trimmed([...g]), h, field);
   let parts: Split = { g: widen(g), h: widen(h), s: widen(s), t: widen(t) };
   for (let m = BigInt(field.prime) ** 2n; m <= modulus; m *= m) {
-    spend(budget, f.length ** 2, 'factoring a polynomial');
+    spend(budget, f.length ** 2 * longWork(m), 'factoring a polynomial');
     parts = henselStep(f, parts, m);
   }
   return [

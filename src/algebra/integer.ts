@@ -30,6 +30,11 @@ export function bitLength(a: bigint): number {
   return 4 * hex.length - Math.clz32(parseInt(hex[0], 16)) + 28;
 }
 
+/** The work of one product of integers as long as a: 1 for short ones, for long ones by the square of their length. */
+export function longWork(a: bigint): number {
+  return 1 + Math.floor(bitLength(a) ** 2 / 2 ** 20);
+}
+
 /** The largest integer whose square is at most a ≥ 0 (Newton's iteration from above). */
 export function integerSquareRoot(a: bigint): bigint {
   invariant(a >= 0n, 'square root of a negative integer');

@@ -83,15 +83,21 @@ function isSquareFree(image: Polynomial, g: Generator): boolean {
   return isConstantPolynomial(gcdPolynomials(image, derivativePolynomial(image, g)));
 }
 
+/** 0 at first, then more and more often another small number: every one that is not 0 costs terms. */
+function coordinate(turn: number, elements: ElementSequence): bigint {
+  const field = fieldNumber(0);
+  const span = Math.ceil(turn / 2);
+  const moved = elements.next(field) % POINTS_TRIED < turn;
+  return moved ? BigInt((elements.next(field) % (2 * span + 1)) - span) : 0n;
+}
+
 /** The point, of a few at which p keeps its degree and is square-free, with the fewest factors; null if none is found. */
 function bestExpansion(p: Polynomial, main: Generator, budget?: Budget): Expansion | null {
   const others = p.generators.filter((g) => g !== main);
   const elements = new ElementSequence(5);
-  const field = fieldNumber(0);
   const found: Expansion[] = [];
   for (let turn = 0; turn < POINTS_TRIED && found.length < POINTS_COMPARED; turn += 1) {
-    const span = Math.ceil(turn / 2);
-    const point = others.map(() => BigInt((elements.next(field) % (2 * span + 1)) - span));
+    const point = others.map(() => coordinate(turn, elements));
     const image = imageIn(p, others, point);
     if (degreeIn(image, main) < degreeIn(p, main) || !isSquareFree(image, main)) continue;
     found.push({ main, others, point, images: factorUnivariate(normalPart(image), main, budget) });

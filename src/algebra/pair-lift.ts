@@ -1,6 +1,6 @@
 import type { Budget } from '../base/index.ts';
 import { spend } from '../base/index.ts';
-import { inverseOf, modulo } from './integer.ts';
+import { inverseOf, longWork, modulo } from './integer.ts';
 import {
   addPolynomials,
   coefficientsIn,
@@ -116,6 +116,7 @@ class Diophantine {
   }
 
   private reduce(p: Polynomial): Polynomial {
+    spend(this.budget, termCount(p), STEP);
     return symmetricResidues(p, this.problem.prime);
   }
 
@@ -139,7 +140,7 @@ function divideInMain(
   const divisor = coefficientsIn(b, main).map((c) => c.coefficients[0] ?? 0n);
   const inverse = inverseOf(divisor[divisor.length - 1], prime);
   const quotient: bigint[] = [];
-  spend(budget, rest.length * divisor.length, STEP);
+  spend(budget, rest.length * divisor.length * longWork(prime), STEP);
   for (let shift = rest.length - divisor.length; shift >= 0; shift -= 1) {
     const factor = modulo(rest[shift + divisor.length - 1] * inverse, prime);
     quotient[shift] = factor;

@@ -2,7 +2,7 @@ import { invariant, spend } from '../base/index.ts';
 import type { Budget } from '../base/index.ts';
 import { frameForProduct, frameForSum, keysIn, placesIn, unionOfGenerators } from './frame.ts';
 import type { Frame } from './frame.ts';
-import { absolute, integerGcd } from './integer.ts';
+import { absolute, bitLength, integerGcd } from './integer.ts';
 import { polynomialKey } from './key.ts';
 import type { Generator, Polynomial } from './ring.ts';
 import {
@@ -12,6 +12,7 @@ import {
   polynomialOfUnsortedTerms,
   type PackedTerms,
 } from './terms.ts';
+import { addWide, multiplyWide, wideWork } from './wide-terms.ts';
 
 const noExponents = new Int32Array(0);
 
@@ -174,26 +175,8 @@ function packed(p: Polynomial, frame: Frame): PackedTerms {
 
 function combine(a: Polynomial, b: Polynomial, sign: 1 | -1): Polynomial {
   const frame = frameForSum(a, b);
-  if (!frame) return byFirstGenerator(a, b, (x, y) => combine(x, y, sign));
+  if (!frame) return addWide(a, b, sign > 0 ? 1n : -1n);
   return polynomialOfPacked(mergeTerms(packed(a, frame), packed(b, frame), sign), frame);
-}
-
-/** Where keys would not fit: term by term in the first generator, whose coefficients have one generator less. */
-function byFirstGenerator(
-  a: Polynomial,
-  b: Polynomial,
-  operation: (x: Polynomial, y: Polynomial) => Polynomial,
-): Polynomial {
-  const [first] = unionOfGenerators(a.generators, b.generators);
-  const left = coefficientsIn(a, first);
-  const right = coefficientsIn(b, first);
-  const length = Math.max(left.length, right.length);
-  return polynomialFromCoefficients(
-    Array.from({ length }, (_, k) =>
-      operation(left[k] ?? zeroPolynomial, right[k] ?? zeroPolynomial),
-    ),
-    first,
-  );
 }
 
 export function addPolynomials(a: Polynomial, b: Polynomial): Polynomial {
@@ -225,16 +208,22 @@ function productOfRows(a: PackedTerms, from: number, to: number, b: PackedTerms)
   return mergeTerms(productOfRows(a, from, middle, b), productOfRows(a, middle, to, b));
 }
 
-function mulByFirstGenerator(a: Polynomial, b: Polynomial, budget?: Budget): Polynomial {
-  const [first] = unionOfGenerators(a.generators, b.generators);
-  const left = coefficientsIn(a, first);
-  const right = coefficientsIn(b, first);
-  const length = left.length + right.length - 1;
-  const products = Array.from({ length }, (_, k) => {
-    const parts = left.map((x, i) => mulPolynomials(x, right[k - i] ?? zeroPolynomial, budget));
-    return sumPolynomials(parts);
-  });
-  return polynomialFromCoefficients(products, first);
+/** About the bits of p's coefficients, from three of them; numbers of one machine word count as none. */
+function coefficientBits(p: Polynomial): number {
+  const { coefficients } = p;
+  const sample = [0, coefficients.length >> 1, coefficients.length - 1].map((i) => coefficients[i]);
+  return sample.reduce((most, c) => Math.max(most, isWord(c) ? 0 : bitLength(c)), 0);
+}
+
+const WORD = 1n << 62n;
+
+function isWord(c: bigint): boolean {
+  return c < WORD && c > -WORD;
+}
+
+/** The work of one product of coefficients of a and b: 1 for short ones, for long ones by their lengths. */
+export function coefficientWork(a: Polynomial, b: Polynomial): number {
+  return 1 + Math.ceil((coefficientBits(a) * coefficientBits(b)) / 2 ** 20);
 }
 
 /** The product; cost: terms of a times terms of b, and a logarithm for sorting. */
@@ -243,9 +232,10 @@ export function mulPolynomials(a: Polynomial, b: Polynomial, budget?: Budget): P
   if (isConstantPolynomial(a)) return scalePolynomial(b, a.coefficients[0]);
   if (isConstantPolynomial(b)) return scalePolynomial(a, b.coefficients[0]);
   const pairs = termCount(a) * termCount(b);
-  spend(budget, pairs, 'the product of two polynomials', () => `${pairs} terms`);
   const frame = frameForProduct(a, b);
-  if (!frame) return mulByFirstGenerator(a, b, budget);
+  const work = pairs * coefficientWork(a, b) * (frame ? 1 : wideWork(a));
+  spend(budget, work, 'the product of two polynomials', () => `${pairs} terms`);
+  if (!frame) return multiplyWide(a, b);
   const [short, long] = termCount(a) < termCount(b) ? [a, b] : [b, a];
   const terms = productOfRows(packed(short, frame), 0, termCount(short), packed(long, frame));
   return polynomialOfPacked(terms, frame);

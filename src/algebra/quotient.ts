@@ -3,14 +3,13 @@ import type { Budget } from '../base/index.ts';
 import { frameOf, keysIn, placesIn } from './frame.ts';
 import type { Frame } from './frame.ts';
 import {
-  coefficientsIn,
+  coefficientWork,
   constantPolynomial,
   degreeIn,
   isConstantPolynomial,
   isZeroPolynomial,
   leadingCoefficientIn,
   mulPolynomials,
-  polynomialFromCoefficients,
   generatorPower,
   subPolynomials,
   termCount,
@@ -18,6 +17,7 @@ import {
 } from './polynomial.ts';
 import type { Generator, Polynomial } from './ring.ts';
 import { polynomialOfPacked, type PackedTerms } from './terms.ts';
+import { divideWide } from './wide-terms.ts';
 
 /** The products quotient[row] · divisor[column] still to be subtracted, largest monomial on top (a binary heap). */
 class ProductHeap {
@@ -95,7 +95,8 @@ function quotientKey(
 }
 
 /**
- * The quotient of packed terms if the division is exact, term by term from the top with a heap of pending products.
+ * The quotient of packed terms if the division is exact, term by term from the top with a heap of pending products;
+ * `work` is spent for each term.
  *
  * Source: M. Monagan, R. Pearce, "Sparse polynomial division using a heap", Journal of Symbolic Computation 46
  * (2011), section 2.
@@ -105,6 +106,7 @@ function dividePacked(
   b: PackedTerms,
   weights: readonly number[],
   bounds: readonly number[],
+  work: number,
   budget?: Budget,
 ): PackedTerms | null {
   const keys: number[] = [];
@@ -124,28 +126,11 @@ function dividePacked(
     if (rest === 0n) continue;
     const quotient = quotientKey(key, b.keys[0], weights, bounds);
     if (quotient < 0 || rest % lead !== 0n) return null;
-    spend(budget, b.keys.length, 'an exact division');
+    spend(budget, work, 'an exact division');
     keys.push(quotient);
     coefficients.push(rest / lead);
     if (b.keys.length > 1) heap.push(quotient + b.keys[1], keys.length - 1, 1);
   }
-}
-
-/** Long division in the first generator, for polynomials whose keys would not fit. */
-function divideByFirstGenerator(a: Polynomial, b: Polynomial, budget?: Budget): Polynomial | null {
-  const [first] = a.generators;
-  const rest = [...coefficientsIn(a, first)];
-  const divisor = coefficientsIn(b, first);
-  const quotient: Polynomial[] = [];
-  for (let k = rest.length - divisor.length; k >= 0; k -= 1) {
-    const head = divideExactly(rest[k + divisor.length - 1], divisor[divisor.length - 1], budget);
-    if (!head) return null;
-    quotient[k] = head;
-    divisor.forEach((d, i) => {
-      rest[k + i] = subPolynomials(rest[k + i], mulPolynomials(head, d, budget));
-    });
-  }
-  return rest.every(isZeroPolynomial) ? polynomialFromCoefficients(quotient, first) : null;
 }
 
 /** The degrees that the quotient would have in each generator of a, or null where b has a higher degree. */
@@ -174,11 +159,12 @@ export function divideExactly(a: Polynomial, b: Polynomial, budget?: Budget): Po
   const bounds = quotientDegrees(a, b);
   if (!bounds) return null;
   const frame = frameOf(a.generators, a.degrees);
-  if (!frame) return divideByFirstGenerator(a, b, budget);
+  const work = termCount(b) * coefficientWork(a, b);
+  if (!frame) return divideWide(a, b, work, budget);
   const dividend = { keys: keysIn(a, frame), coefficients: a.coefficients };
   const divisor = { keys: keysIn(b, frame), coefficients: b.coefficients };
   if (!lastTermsDivide(dividend, divisor, frame, bounds)) return null;
-  const quotient = dividePacked(dividend, divisor, frame.weights, bounds, budget);
+  const quotient = dividePacked(dividend, divisor, frame.weights, bounds, work, budget);
   return quotient && polynomialOfPacked(quotient, frame);
 }
 

@@ -23,6 +23,10 @@ interface Layout {
   readonly polynomial: Polynomial;
   readonly powers: Int32Array;
   readonly rows: Int32Array;
+  /** The degrees in the others. */
+  readonly degrees: readonly number[];
+  /** The coefficients modulo a prime; those of the last prime are kept. */
+  readonly residues: (field: PrimeField) => Float64Array;
 }
 
 /** One monomial of the skeleton. */
@@ -62,7 +66,19 @@ function layOut(p: Polynomial, main: Generator, others: readonly Generator[]): L
       else rows[i * others.length + target] = exponent;
     }
   });
-  return { polynomial: p, powers, rows };
+  const degrees = others.map((g) => Math.max(0, degreeIn(p, g)));
+  return { polynomial: p, powers, rows, degrees, residues: residuesOf(p) };
+}
+
+function residuesOf(p: Polynomial): (field: PrimeField) => Float64Array {
+  let kept: Float64Array | null = null;
+  let keptPrime = 0;
+  return (field) => {
+    if (kept && keptPrime === field.prime) return kept;
+    kept = Float64Array.from(p.coefficients, (c) => field.reduce(c));
+    keptPrime = field.prime;
+    return kept;
+  };
 }
 
 /** Values of a polynomial's terms along the points r, r², r³ … of some variables, the others fixed. */
@@ -79,14 +95,22 @@ class Progression {
   ) {
     const { polynomial, rows } = layout;
     const width = ratios.length + fixed.length;
+    const tables = powerTables(layout, [...ratios, ...fixed], field);
+    const residues = layout.residues(field);
     this.values = new Float64Array(polynomial.coefficients.length);
     this.steps = new Float64Array(polynomial.coefficients.length);
-    polynomial.coefficients.forEach((coefficient, i) => {
-      const row = rows.subarray(i * width, (i + 1) * width);
-      this.steps[i] = monomialValue(row, ratios, 0, field);
-      const constant = monomialValue(row, fixed, ratios.length, field);
-      this.values[i] = field.mul(field.reduce(coefficient), constant);
-    });
+    for (let i = 0; i < polynomial.coefficients.length; i += 1) {
+      this.steps[i] = termProduct(1, rows, i * width, tables, 0, ratios.length, field);
+      this.values[i] = termProduct(
+        residues[i],
+        rows,
+        i * width,
+        tables,
+        ratios.length,
+        width,
+        field,
+      );
+    }
     this.size = layout.powers.reduce((highest, power) => Math.max(highest, power), 0) + 1;
   }
 
@@ -100,6 +124,33 @@ class Progression {
     }
     return trimmed(coefficients);
   }
+}
+
+/** The powers of a value for each of the other generators, up to their degrees. */
+function powerTables(
+  { degrees }: Layout,
+  values: readonly number[],
+  field: PrimeField,
+): Float64Array[] {
+  return values.map((value, k) => field.powers(value, degrees[k]));
+}
+
+/** `start` times the powers of columns from … to − 1 in a row of exponents. */
+function termProduct(
+  start: number,
+  rows: Int32Array,
+  row: number,
+  tables: readonly Float64Array[],
+  from: number,
+  to: number,
+  field: PrimeField,
+): number {
+  let product = start;
+  for (let k = from; k < to; k += 1) {
+    const exponent = rows[row + k];
+    if (exponent > 0) product = field.mul(product, tables[k][exponent]);
+  }
+  return product;
 }
 
 function monomialValue(
@@ -213,6 +264,12 @@ class ImageFinder {
     count: number,
     field: PrimeField,
   ): PrimePolynomial[] | null {
+    const terms = this.a.powers.length + this.b.powers.length + this.gamma.powers.length;
+    spend(
+      this.budget,
+      Math.ceil((terms * (1 + ratios.length + fixed.length)) / 8),
+      'a greatest common divisor',
+    );
     const [a, b, gamma] = [this.a, this.b, this.gamma].map(
       (layout) => new Progression(layout, ratios, fixed, field),
     );

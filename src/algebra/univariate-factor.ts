@@ -1,7 +1,7 @@
 import type { Budget } from '../base/index.ts';
 import { spend } from '../base/index.ts';
 import { liftFactors } from './hensel.ts';
-import { absolute, integerSquareRoot, modulo } from './integer.ts';
+import { absolute, integerSquareRoot, longWork, modulo } from './integer.ts';
 import {
   coefficientsIn,
   constantPolynomial,
@@ -63,8 +63,8 @@ function* choices(count: number, size: number, from = 0): Iterable<readonly numb
 export function factorUnivariate(p: Polynomial, g: Generator, budget?: Budget): Polynomial[] {
   const f = coefficientsIn(p, g).map((c) => c.coefficients[0] ?? 0n);
   if (f.length <= 2) return [p];
+  spend(budget, f.length ** 3, 'factoring a polynomial', `degree ${f.length - 1}`);
   const { field, factors } = fewestFactors(f);
-  spend(budget, f.length ** 3, 'factoring a polynomial');
   if (factors.length === 1) return [p];
   const bound = coefficientBound(f);
   let modulus = BigInt(field.prime);
@@ -110,7 +110,7 @@ function combine(
 ): Polynomial[] {
   for (let size = 1; 2 * size <= lifted.length; size += 1) {
     for (const chosen of choices(lifted.length, size)) {
-      budget?.spend(p.degrees[0] ** 2, 'factoring a polynomial');
+      spend(budget, p.degrees[0] ** 2 * longWork(modulus), 'factoring a polynomial');
       const parts = chosen.map((k) => lifted[k]);
       const factor = candidate(p.coefficients[0], parts, modulus, g);
       const cofactor = divideExactly(p, factor, budget);
