@@ -199,13 +199,23 @@ function whiteNoisePowerAt(top: Image, bottom: Image, { field }: ResiduePoint): 
   return sum;
 }
 
-/** Checks the rows of a Routh array above the first special one: each of them follows from the two above. */
-export function certifyRouth(p: Polynomial, rows: readonly RouthRow[]): void {
+/** A row whose elements have values at a point; `special` where a rule for zeros made it. */
+interface ElementRow {
+  readonly entries: readonly Pick<Ratio, 'num' | 'den'>[];
+  readonly special: RouthRow['special'];
+}
+
+/**
+ * Checks the rows of a Routh array above the first special one: each of them follows from the two above.
+ *
+ * `descending`: the coefficients of the polynomial, that of the highest power of s first.
+ */
+export function certifyRouth(descending: readonly Polynomial[], rows: readonly ElementRow[]): void {
   const special = rows.findIndex((row) => row.special !== null);
   const regular = special < 0 ? rows : rows.slice(0, special);
   certifyAtPoints('a row of the Routh array does not follow from those above it', (seed) => {
     const point = new ResiduePoint(seed);
-    const wanted = routhRowsAt(p, regular.length, point);
+    const wanted = routhRowsAt(descending, regular.length, point);
     const found = regular.map((row) => row.entries.map((entry) => point.ratio(entry)));
     if (!wanted || !found.every(areKnown)) return null;
     return wanted.every((row, k) => found[k].every((value, i) => value === (row[i] ?? 0)));
@@ -214,14 +224,14 @@ export function certifyRouth(p: Polynomial, rows: readonly RouthRow[]): void {
 
 /** The first rows of the Routh array of a polynomial at a point; null where a first element vanishes there. */
 function routhRowsAt(
-  p: Polynomial,
+  descending: readonly Polynomial[],
   count: number,
   point: ResiduePoint,
 ): readonly (readonly number[])[] | null {
   const { field } = point;
-  const descending = imageOf(p, point)?.toReversed();
-  if (!descending) return null;
-  const rows = [0, 1].map((from) => descending.filter((_, i) => i % 2 === from));
+  const values: Values = descending.map((c) => point.polynomial(c));
+  if (!areKnown(values)) return null;
+  const rows = [0, 1].map((from) => values.filter((_, i) => i % 2 === from));
   while (rows.length < count) {
     const [above, row] = rows.slice(-2);
     if (!row[0]) return null;

@@ -8,6 +8,7 @@ import {
 } from '../algebra/index.ts';
 import type { Polynomial } from '../algebra/index.ts';
 import type { Budget } from '../base/index.ts';
+import { certifyRouth } from './certificate.ts';
 
 /** A row of the Routh array without fractions: its entries are minors of the Hurwitz matrix. */
 export interface MinorRow {
@@ -65,7 +66,13 @@ export function hurwitzDeterminants(
   descending: readonly Polynomial[],
   budget?: Budget,
 ): readonly Polynomial[] {
-  return minorRows(descending, budget)
-    .slice(1)
-    .map((row) => row.entries[0]);
+  const rows = minorRows(descending, budget);
+  certifyRouth(
+    descending,
+    rows.map(({ entries, divisor }) => ({
+      entries: entries.map((num) => ({ num, den: divisor })),
+      special: null,
+    })),
+  );
+  return rows.slice(1).map((row) => row.entries[0]);
 }

@@ -211,7 +211,7 @@ export function routhArray(p: Polynomial, signOf: SignOf, budget?: Budget): Rout
     );
   }
   const { rows, auxiliaries, notes } = buildRows(p, budget);
-  certifyRouth(p, rows);
+  certifyRouth(descendingInS(p), rows);
   return Object.freeze({
     rows: Object.freeze(rows),
     auxiliaries: Object.freeze(auxiliaries),
