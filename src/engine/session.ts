@@ -120,7 +120,7 @@ class WorksheetSession implements Session {
         ...referenceProblems(document.references, this.derivations),
       ]),
       references: referenceRows(document.references, results, this.statements),
-      loops: loopRows(document.statements, this.derivations, lineOf),
+      loops: loopRows(document.statements, this.queries, this.derivations, lineOf),
     };
   }
 }

@@ -32,12 +32,20 @@ require abs(e_ss) <= 100 mrad  # R-2
 const contents = (report: Report) => report.results.map((row) => row.content);
 
 describe('recomputing a worksheet', () => {
+  test('two loops of one name keep their own equations', () => {
+    const twin = WORKSHEET.replace('case load', 'loop arm driven by r\n  e = 2 r\n\ncase load');
+    const [first, second] = createSession().update(twin).loops;
+    expect(first.content.equationsLatex).toHaveLength(3);
+    expect(second.content.equationsLatex).toEqual(['e = 2\\,r']);
+  });
+
   test('a changed number derives nothing anew', () => {
     const session = createSession();
     const before = session.update(WORKSHEET);
     const after = session.update(WORKSHEET.replace('Tw is 3', 'Tw is 4'));
     const transfer = (report: Report) => contents(report).find((row) => row.kind === 'transfer');
     expect(transfer(after)).toBe(transfer(before));
+    expect(after.loops[0].content).toBe(before.loops[0].content);
     expect(after.results[0].content.shown).not.toBe(before.results[0].content.shown);
   });
 
