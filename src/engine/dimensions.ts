@@ -1,6 +1,6 @@
 import { errorAt, type Problem, type Span } from '../base/index.ts';
 import type { UnitRule, WorksheetFunction } from '../functions/index.ts';
-import { sourceNamed } from '../functions/index.ts';
+import { sourceNamed, type SourceArgument } from '../functions/index.ts';
 import {
   formatExpression,
   nameToText,
@@ -22,11 +22,13 @@ import {
   ANGULAR_FREQUENCY,
   angleOf,
   angleToCycles,
+  cyclesOf,
   cyclesToAngle,
   DERIVATIVE,
   divMeasures,
   fitsAnywhere,
   FREE,
+  FREQUENCY,
   Inference,
   LAPLACE,
   measureOfUnit,
@@ -38,6 +40,7 @@ import {
   PURE,
   saidAngle,
   TIME,
+  withoutPerAngle,
   unknownMeasure,
   type Measure,
 } from './measures.ts';
@@ -202,6 +205,7 @@ class DimensionCheck {
         return this.checkRequirement(statement);
       case 'draw':
         for (const part of [...statement.of, ...statement.where]) this.measure(part, null);
+        if (statement.over) this.expect(statement.over, TIME, 'a time');
         return;
     }
   }
@@ -339,11 +343,23 @@ class DimensionCheck {
     }
     if (source.kind !== 'call' || source.args.length === 0) return null;
     const spec = sourceNamed(source.callee);
-    const size = this.measure(source.args[0], null);
     const warning = temperatureSource(source.args[0], this.temperatures);
     if (warning) this.complain(warning);
     if (!spec || spec.availability === 'later') return null;
-    return divMeasures(size, powMeasure(DERIVATIVE, spec.power - 1));
+    return spec.parameters
+      .map(({ takes }, index) => this.argumentMeasure(takes, source.args[index]))
+      .reduce(mulMeasures, powMeasure(DERIVATIVE, 1 - spec.power));
+  }
+
+  /** What an argument of a source adds to the unit of its size. */
+  private argumentMeasure(takes: SourceArgument['takes'], arg: Expression | undefined): Measure {
+    if (!arg) return FREE;
+    if (takes === 'frequency') {
+      this.expect(arg, ANGULAR_FREQUENCY, 'a frequency');
+      return PURE;
+    }
+    const measure = this.measure(arg, null);
+    return takes === 'density' ? sizeOfNoise(measure) : measure;
   }
 
   private sourceConflict(
@@ -557,11 +573,19 @@ class DimensionCheck {
         return isTransform(call.args[0]) ? mulMeasures(first, DERIVATIVE) : first;
       case 'root':
         return powMeasure(first, 1 / 2);
+      case 'square':
+        return powMeasure(first, 2);
+      case 'density':
+        return divMeasures(powMeasure(first, 2), FREQUENCY);
+      case 'bandwidth':
+        return mulMeasures(powMeasure(first, 2), FREQUENCY);
       case 'number':
         return PURE;
       case 'pure':
         this.expectPure(spec.name, call.args[0], first);
         return spec.name === 'atan' ? ANGULAR : PURE;
+      case 'angle':
+        return ANGULAR;
       case 'time':
         return TIME;
       case 'angular frequency':
@@ -587,7 +611,7 @@ class DimensionCheck {
     );
   }
 
-  /** Terms agree with one of them; the one that holds an angle stands for the sum, so that `rad` is kept. */
+  /** Terms agree with the first; one that counts an angle stands for the sum, so that `rad` is kept, at best one without s. */
   private sumMeasure(sum: Sum, inner: (part: Expression) => Measure): Measure {
     const terms = sum.terms.map((term) => ({ term, measure: inner(term) }));
     const carrying = terms.filter(({ measure }) => !fitsAnywhere(measure));
@@ -597,7 +621,9 @@ class DimensionCheck {
       const where = sum.signs[sum.terms.indexOf(other.term)] < 0 ? 'difference' : 'sum';
       this.agree(first.term, first.measure, other.term, other.measure, sum.span, where);
     }
-    return (carrying.find(({ measure }) => angleOf(measure) !== 0) ?? first).measure;
+    const counting = carrying.filter(({ measure }) => angleOf(measure) !== 0);
+    const lead = counting.find(({ measure }) => !measure.laplace) ?? counting[0] ?? first;
+    return carrying.length < terms.length ? withoutPerAngle(lead.measure) : lead.measure;
   }
 
   private powerMeasure(
@@ -705,6 +731,14 @@ function conflictText(
     default:
       return `\`${l}\` is in ${a} and cannot be compared with \`${r}\`, which is in ${b}.`;
   }
+}
+
+/** The unit of the noise that a density is of: the root of the density times Hz, or an amplitude density times √Hz. */
+function sizeOfNoise(density: Measure): Measure {
+  const isAmplitude = cyclesOf(density) === -1 / 2;
+  const rate = powMeasure(FREQUENCY, isAmplitude ? 1 / 2 : 1);
+  const power = mulMeasures(density, rate);
+  return isAmplitude ? power : powMeasure(power, 1 / 2);
 }
 
 function constantMeasure(name: string): Measure {

@@ -54,6 +54,11 @@ export const FREE = measure(NONE, { free: true });
 export const ANGULAR = measure(exponentsOf(ANGLE, 1), { rigid: true });
 export const TIME = measure(exponentsOf(SECOND, 1), { rigid: true });
 export const ANGULAR_FREQUENCY = measure(exponentsOf(SECOND, -1, 1), { rigid: true });
+/** A frequency f, in cycles per second. */
+export const FREQUENCY = measure(
+  NONE.map((_, index) => (index === SECOND ? -1 : index === CYCLE ? 1 : 0)),
+  { rigid: true },
+);
 /** What a time derivative multiplies by: no unit is typed in it, so that by itself it makes no measure rigid. */
 export const DERIVATIVE = measure(exponentsOf(SECOND, -1));
 export const LAPLACE = measure(exponentsOf(SECOND, -1), { laplace: true });
@@ -185,6 +190,11 @@ export function cyclesOf(a: Measure): number {
 /** The dimension, where nothing is left to infer. */
 export function dimensionIn(a: Measure): Dimension {
   return { exponents: a.exponents.slice(0, BASES) };
+}
+
+/** A pure number per angle to which a bare number is added is a pure number: 1 + s/ω. */
+export function withoutPerAngle(a: Measure): Measure {
+  return hasNoDimension(a) && a.unknowns.size === 0 && angleOf(a) < 0 ? withCounted(a, 0, 0) : a;
 }
 
 /** Whether it has neither a dimension nor an angle, and nothing is left to infer. */

@@ -76,6 +76,30 @@ describe('dimensions', () => {
     ]);
   });
 
+  test.each([
+    ['w0^2/(s^2 + 2 w0 s + w0^2)', null],
+    ['1/(1 + s/w0)', null],
+    ['1/(1 + s/(2 pi f0))', null],
+    ['w0/(s + w0)', null],
+    ['1/(J s^2 + b s + k0)', 'rad/(N m)'],
+    ['k0 + b s', 'N m/rad'],
+    ['theta + 2', 'rad'],
+  ])('an angle in a transfer function is kept where it belongs: %s', (formula, unit) => {
+    const cell = evaluateCell(
+      `w0 is 3 rad/s\nf0 is 2 Hz\nJ is 2 kg m^2\nb is 3 N m s/rad\nk0 is 4 N m/rad\ntheta is 2 mrad\nx = ${formula}`,
+    );
+    expect(cell.problems).toEqual([]);
+    expect(cell.result('x').unit).toBe(unit);
+  });
+
+  test('of the span of a figure is a time', () => {
+    const loop = "loop a driven by w\n  x' = w - 2 x\ncase c of a\n  w = step(2)\n";
+    expect(evaluateCell(`${loop}draw response of c.x over 20 m`).problems).toEqual([
+      'error at ‹20 m›: `20 [m]` is in m, and a time is needed here.',
+    ]);
+    expect(evaluateCell(`${loop}draw response of c.x over 20 s`).problems).toEqual([]);
+  });
+
   test('the unit of a result is derived', () => {
     const cell = evaluateCell(`${GIVEN}x = T/J\ny = sqrt(T/J)\nz = T theta/J in mrad/s^2`);
     expect(cell.result('x')).toMatchObject({ unit: '1/s²' });
@@ -110,7 +134,9 @@ loop a driven by r, w
 case c of a
   w = step(3 N m)
   r = step(2 mrad)`);
-    expect(problems).toEqual(["error at ‹J theta'' = T + theta + w›: `T + theta` adds N m to rad."]);
+    expect(problems).toEqual([
+      "error at ‹J theta'' = T + theta + w›: `T + theta` adds N m to rad.",
+    ]);
   });
 
   test('are refused where one equation contradicts the others', () => {
