@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest';
+import { FUNCTIONS } from '../../src/functions/index.ts';
 import { afterFix, evaluateCell } from './worksheet.ts';
 
 const GIVEN = 'a is 2\nb is 3\nc is 5\n';
@@ -291,9 +292,12 @@ describe('functions of parameters', () => {
     }
   });
 
-  test('a function that comes later says so', () => {
-    expect(problemsOf('x = phase_margin(1/s)')).toEqual([
-      'error at ‹phase_margin(1/s)›: phase_margin is not available yet.',
-    ]);
+  test('functions that come later say so', () => {
+    const later = [...FUNCTIONS.values()].filter(({ availability }) => availability === 'later');
+    for (const { name } of later) {
+      expect(problemsOf(`x = ${name}(1)`)).toEqual([
+        `error at ‹${name}(1)›: ${name} is not available yet.`,
+      ]);
+    }
   });
 });
