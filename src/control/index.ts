@@ -16,6 +16,7 @@ export { finalValue } from './final-value.ts';
 export { noiseBandwidth, letsWhiteNoiseThrough } from './noise-bandwidth.ts';
 export { densityOf, rmsOf, varianceOf } from './random-part.ts';
 export { amplitudeOf, lineTransform } from './vibration.ts';
+export type { Knowledge } from './vibration.ts';
 export { initialValue } from './initial-value.ts';
 export { differentiateSignal } from './signal-derivative.ts';
 export { dcGain, errorConstants, polesOf, systemType, zerosOf } from './loop-gain.ts';

@@ -9,8 +9,8 @@ import {
   sumRatios,
   zeroRatio,
 } from '../algebra/index.ts';
-import type { Ratio, SignOf } from '../algebra/index.ts';
-import { isRefusal, type Budget, type Refusal } from '../base/index.ts';
+import type { Ratio } from '../algebra/index.ts';
+import { isRefusal, type Refusal } from '../base/index.ts';
 import { allOf, compare } from './conditions.ts';
 import { finalValue, noValue, plainValue, settledUnder } from './final-value.ts';
 import { squaredGain } from './frequency-point.ts';
@@ -19,7 +19,7 @@ import { letsWhiteNoiseThrough, noiseBandwidth } from './noise-bandwidth.ts';
 import { powerOfS } from './s-polynomial.ts';
 import { stable } from './stability.ts';
 import type { Condition, FormulaValue, NoValue, SignalTerm, SignalValue } from './values.ts';
-import { distinct, linesOf, squaredAmplitude, steadyUnder } from './vibration.ts';
+import { apart, linesOf, squaredAmplitude, steadyUnder, type Knowledge } from './vibration.ts';
 
 /** One white noise with all its paths to a signal. */
 interface NoisePath {
@@ -50,8 +50,7 @@ function randomTerms(x: SignalValue): readonly SignalTerm[] {
 function stationaryUnder(
   x: SignalValue,
   paths: readonly NoisePath[],
-  signOf: SignOf,
-  budget?: Budget,
+  { signOf, budget }: Knowledge,
 ): Condition | { readonly reason: string } {
   const wandering = paths.find(({ transfer }) => powerOfS(transfer.den) > 0);
   if (wandering) {
@@ -80,11 +79,7 @@ const ONE_SIDED = 'Power spectral densities are one-sided, per Hz.';
  * not decay. Exact, with symbols as far as `noiseBandwidth` goes; it stands where the blocks are stable.
  * Source: see {@link noiseBandwidth}.
  */
-export function varianceOf(
-  x: SignalValue,
-  signOf: SignOf,
-  budget?: Budget,
-): FormulaValue | NoValue {
+export function varianceOf(x: SignalValue, known: Knowledge): FormulaValue | NoValue {
   const paths = noisePaths(x);
   if (paths.length === 0) return plainValue(withNote(x, `No noise acts on ${x.name}.`), zeroRatio);
   const through = paths.find(({ transfer }) => letsWhiteNoiseThrough(transfer));
@@ -92,13 +87,13 @@ export function varianceOf(
     const reason = `the variance is infinite: white noise at ${through.input} reaches ${x.name} without rolling off at high frequencies`;
     return noValue(x, reason);
   }
-  const stationary = stationaryUnder(x, paths, signOf, budget);
+  const stationary = stationaryUnder(x, paths, known);
   if ('reason' in stationary) return noValue(x, stationary.reason);
   const variances = paths.map(({ density, transfer }) =>
-    mulRatios(density, noiseBandwidth(transfer, budget), budget),
+    mulRatios(density, noiseBandwidth(transfer, known.budget), known.budget),
   );
   const when = allOf([x.when, stationary]);
-  return plainValue({ ...withNote(x, ONE_SIDED), when }, sumRatios(variances, budget));
+  return plainValue({ ...withNote(x, ONE_SIDED), when }, sumRatios(variances, known.budget));
 }
 
 function withNote({ when, notes }: SignalValue, note: string): Pick<SignalValue, 'when' | 'notes'> {
@@ -114,18 +109,17 @@ function withNote({ when, notes }: SignalValue, note: string): Pick<SignalValue,
 export function densityOf(
   x: SignalValue,
   frequency: Ratio,
-  signOf: SignOf,
-  budget?: Budget,
+  known: Knowledge,
 ): FormulaValue | NoValue | Refusal {
   const paths = noisePaths(x);
   if (paths.length === 0) return plainValue(withNote(x, `No noise acts on ${x.name}.`), zeroRatio);
-  const stationary = stationaryUnder(x, paths, signOf, budget);
+  const stationary = stationaryUnder(x, paths, known);
   if ('reason' in stationary) return noValue(x, stationary.reason);
   let sum = zeroRatio;
   for (const { density, transfer } of paths) {
     const gain = squaredGain(transfer, frequency);
     if (isRefusal(gain)) return gain;
-    sum = addRatios(sum, mulRatios(density, gain, budget), budget);
+    sum = addRatios(sum, mulRatios(density, gain, known.budget), known.budget);
   }
   return plainValue({ ...withNote(x, ONE_SIDED), when: allOf([x.when, stationary]) }, sum);
 }
@@ -133,22 +127,18 @@ export function densityOf(
 const HALF = ratioFromRational(rational(1n, 2n));
 
 /** The mean square of the sines in a signal, under the conditions that they are steady and of different frequencies. */
-function periodicSquare(
-  x: SignalValue,
-  signOf: SignOf,
-  budget?: Budget,
-): FormulaValue | NoValue | Refusal {
-  const lines = linesOf(x);
+function periodicSquare(x: SignalValue, known: Knowledge): FormulaValue | NoValue | Refusal {
+  const lines = linesOf(x, known);
   const conditions: Condition[] = [x.when];
   let sum = zeroRatio;
   for (const [index, line] of lines.entries()) {
-    const steady = steadyUnder(x, line.terms, signOf, budget);
+    const steady = steadyUnder(x, line.terms, known);
     if ('reason' in steady) return noValue(x, steady.reason);
-    const square = squaredAmplitude(line);
+    const square = squaredAmplitude(line, known);
     if (isRefusal(square)) return square.code === 'resonance' ? noValue(x, square.reason) : square;
-    sum = addRatios(sum, mulRatios(HALF, square), budget);
-    const apart = lines.slice(0, index).map((other) => distinct(other.frequency, line.frequency)!);
-    conditions.push(steady, ...apart);
+    sum = addRatios(sum, mulRatios(HALF, square), known.budget);
+    const before = lines.slice(0, index);
+    conditions.push(steady, ...before.map((one) => apart(one.frequency, line.frequency, known)));
   }
   return plainValue({ when: allOf(conditions), notes: x.notes }, sum);
 }
@@ -164,20 +154,16 @@ function steadyPart(x: SignalValue): SignalValue {
  * Constant parts do not count, which is said. No value where the signal drifts, or where `varianceOf` or `amplitudeOf` has
  * none.
  */
-export function rmsOf(
-  x: SignalValue,
-  signOf: SignOf,
-  budget?: Budget,
-): FormulaValue | NoValue | Refusal {
-  const rest = finalValue(steadyPart(x), signOf, budget);
+export function rmsOf(x: SignalValue, known: Knowledge): FormulaValue | NoValue | Refusal {
+  const rest = finalValue(steadyPart(x), known.signOf, known.budget);
   if (rest.kind === 'none') return noValue(x, `${x.name} drifts: ${rest.reason}`);
-  const variance = varianceOf(x, signOf, budget);
+  const variance = varianceOf(x, known);
   if (variance.kind === 'none') return variance;
-  const periodic = periodicSquare(x, signOf, budget);
+  const periodic = periodicSquare(x, known);
   if (isRefusal(periodic) || periodic.kind === 'none') return periodic;
-  const square = addRatios(variance.ratio, periodic.ratio, budget);
+  const square = addRatios(variance.ratio, periodic.ratio, known.budget);
   const left = isZeroRatio(rest.ratio) ? [] : ['The constant part is not counted.'];
   const notes = [...variance.notes, ...left];
   const when = allOf([variance.when, periodic.when, rest.when]);
-  return plainValue({ when, notes }, rootOfSquare(square, signOf, budget));
+  return plainValue({ when, notes }, rootOfSquare(square, known.signOf, known.budget));
 }

@@ -17,7 +17,7 @@ import {
 } from '../algebra/index.ts';
 import type { Ratio, SignOf } from '../algebra/index.ts';
 import { isRefusal, refuse, type Budget, type Refusal } from '../base/index.ts';
-import { allOf, compare } from './conditions.ts';
+import { allOf, compare, FALSE, TRUE } from './conditions.ts';
 import { listed, noValue, plainValue, settledUnder } from './final-value.ts';
 import {
   addPoints,
@@ -32,6 +32,14 @@ import { rootOfSquare } from './magnitude.ts';
 import { stable } from './stability.ts';
 import type { Condition, FormulaValue, NoValue, SignalTerm, SignalValue } from './values.ts';
 
+/** What is known of the symbols in a signal. */
+export interface Knowledge {
+  readonly signOf: SignOf;
+  /** A formula with every derived parameter opened: `w1 = 2 pi f1` is then the same frequency as f1. */
+  readonly open: (r: Ratio) => Ratio;
+  readonly budget?: Budget;
+}
+
 /** The sines of one frequency that act on a signal. */
 export interface Line {
   readonly frequency: Ratio;
@@ -39,15 +47,19 @@ export interface Line {
 }
 
 /** The periodic shares of a signal by the frequency of their line. */
-export function linesOf(x: SignalValue): readonly Line[] {
+export function linesOf(x: SignalValue, { open }: Knowledge): readonly Line[] {
   const lines: { frequency: Ratio; terms: SignalTerm[] }[] = [];
   for (const term of x.terms) {
     if (!term.frequency) continue;
-    const line = lines.find(({ frequency }) => equalRatios(frequency, term.frequency!));
+    const line = lines.find(({ frequency }) => areSame(frequency, term.frequency!, open));
     if (line) line.terms.push(term);
     else lines.push({ frequency: term.frequency, terms: [term] });
   }
   return lines;
+}
+
+function areSame(a: Ratio, b: Ratio, open: Knowledge['open']): boolean {
+  return equalRatios(a, b) || equalRatios(open(a), open(b));
 }
 
 /** A formula taken as a transform has no sources: whatever line it holds at this frequency is in its poles. */
@@ -71,18 +83,18 @@ function phasorOf(term: SignalTerm, frequency: Ratio): ComplexRatio | Refusal {
   return isRefusal(turn) ? turn : mulPoints(phasor, turn);
 }
 
-/** The squared amplitude of a line; refused where the line falls on a mode that does not decay. */
-export function squaredAmplitude({ frequency, terms }: Line): Ratio | Refusal {
-  const active = terms.filter((term) => !isZeroRatio(term.transform));
-  const [first] = active;
-  const isTogether = active.every((term) => equalRatios(term.after, first.after));
+/** The squared amplitude of a line; refused as `resonance` where the line falls on a mode that does not decay. */
+export function squaredAmplitude({ frequency, terms }: Line, { open }: Knowledge): Ratio | Refusal {
+  const [first] = terms;
+  const isTogether = terms.every((term) => equalRatios(term.after, first.after));
   let sum = ZERO_POINT;
-  for (const term of active) {
+  for (const term of terms) {
     const phasor = phasorOf(isTogether ? { ...term, after: zeroRatio } : term, frequency);
     if (isRefusal(phasor)) return phasor.code === 'pole' ? resonance(term) : phasor;
     sum = addPoints(sum, phasor);
   }
-  return squaredSize(sum);
+  const square = squaredSize(sum);
+  return isZeroRatio(square) || isZeroRatio(open(square)) ? zeroRatio : square;
 }
 
 function resonance({ input }: SignalTerm): Refusal {
@@ -92,19 +104,19 @@ function resonance({ input }: SignalTerm): Refusal {
   );
 }
 
-/** Two frequencies with symbols in them differ only where their values do; null where they are equal. */
-export function distinct(a: Ratio, b: Ratio): Condition | null {
-  if (equalRatios(a, b)) return null;
-  const isNumeric = symbolsOfRatio(subRatios(a, b)).length === 0;
-  return isNumeric ? allOf([]) : compare(a, '!=', b);
+/** That two frequencies differ, where only their values can tell; false if they are the same. */
+export function apart(a: Ratio, b: Ratio, { open }: Knowledge): Condition {
+  const [one, other] = [open(a), open(b)];
+  if (equalRatios(one, other)) return FALSE;
+  const isNumeric = symbolsOfRatio(subRatios(one, other)).length === 0;
+  return isNumeric ? TRUE : compare(a, '!=', b);
 }
 
 /** What must decay for the lines of a signal to be steady, or why they never are. */
 export function steadyUnder(
   x: SignalValue,
   terms: readonly SignalTerm[],
-  signOf: SignOf,
-  budget?: Budget,
+  { signOf, budget }: Knowledge,
 ): Condition | { readonly reason: string } {
   const paths = terms.map((term): SignalTerm =>
     term.frequency
@@ -129,30 +141,32 @@ type Write = (r: Ratio) => string;
 export function amplitudeOf(
   x: SignalValue,
   frequency: Ratio,
-  { signOf, write, budget }: { signOf: SignOf; write: Write; budget?: Budget },
+  known: Knowledge,
+  write: Write,
 ): FormulaValue | NoValue | Refusal {
-  const lines = linesOf(withFormulaLine(x, frequency));
-  const line = lines.find((one) => equalRatios(one.frequency, frequency));
-  const others = lines.filter((one) => one !== line);
-  const apart = others.map((one) => distinct(one.frequency, frequency)!);
-  if (!line) return withoutLine(x, lines, allOf(apart), write);
-  const steady = steadyUnder(x, line.terms, signOf, budget);
+  const lines = linesOf(withFormulaLine(x, frequency), known);
+  const line = lines.find((one) => areSame(one.frequency, frequency, known.open));
+  const others = allOf(
+    lines.filter((one) => one !== line).map((one) => apart(one.frequency, frequency, known)),
+  );
+  if (!line) return withoutLine(x, lines, others, write);
+  const steady = steadyUnder(x, line.terms, known);
   if ('reason' in steady) return noValue(x, steady.reason);
-  const square = squaredAmplitude(line);
+  const square = squaredAmplitude(line, known);
   if (isRefusal(square)) return square.code === 'resonance' ? noValue(x, square.reason) : square;
-  const base = { when: allOf([x.when, steady, ...apart]), notes: x.notes };
-  return plainValue(base, rootOfSquare(square, signOf, budget));
+  const base = { when: allOf([x.when, steady, others]), notes: x.notes };
+  return plainValue(base, rootOfSquare(square, known.signOf, known.budget));
 }
 
 /** No sine has this frequency for certain: 0 if all others surely have another one. */
 function withoutLine(
   x: SignalValue,
   lines: readonly Line[],
-  apart: Condition,
+  others: Condition,
   write: Write,
 ): FormulaValue | Refusal {
   const places = listed(lines.map((line) => frequencyText(line.frequency, write)));
-  if (apart.kind !== 'truth') {
+  if (others.kind !== 'truth') {
     return refuse(
       'which-line',
       `${x.name} has lines at ${places}; write the frequency as the source does, so that it is certain which one is meant`,

@@ -1,41 +1,22 @@
-import {
-  asRational,
-  isZeroRatio,
-  laplace,
-  mulRatios,
-  negRatio,
-  oneRatio,
-  powRatio,
-  ratioOf,
-  zeroRatio,
-  divRatios,
-  dependsOn,
-  type Ratio,
-} from '../algebra/index.ts';
+import { isZeroRatio, mulRatios, oneRatio, zeroRatio, type Ratio } from '../algebra/index.ts';
 import type { Budget } from '../base/index.ts';
 import {
   allOf,
   closeLoop,
   transferFunction,
   type Condition,
-  type FormulaValue,
   type LoopRow,
   type SignalTerm,
   type SignalValue,
-  type SourceKind,
 } from '../control/index.ts';
-import { sourceNamed } from '../functions/index.ts';
 import {
   formatExpression,
   nameToText,
-  nearestName,
   type CaseStatement,
   type Expression,
-  type SourceTerm,
 } from '../language/index.ts';
-import { formulaValue } from './arithmetic.ts';
+import { amountOf, readSource, type ActingSource } from './acting-source.ts';
 import { initialValueName } from './equations.ts';
-import { parameterOf } from './replacements.ts';
 
 import type { LoopRecord, Meanings } from './meanings.ts';
 import type { Scope } from './scope.ts';
@@ -56,23 +37,16 @@ export interface CaseRecord {
   }[];
 }
 
-interface ActingSource {
-  readonly input: string;
-  readonly kind: SourceKind;
-  /** Transform of the input's share. */
-  readonly transform: Ratio;
-  readonly after: Ratio;
-  /** What must hold for its size to have a value. */
-  readonly when: Condition;
-}
-
 /** Reads a load case; stops at unknown inputs, unknown sources and sources that are not available yet. */
 export function readCase(statement: CaseStatement, scope: Scope, meanings: Meanings): CaseRecord {
   const loop = meanings.loopOf(statement.loop.name, statement.loop.span, scope);
   refuseSecondLines(statement);
   const acting = statement.inputs.flatMap((line) => {
     const input = requireSignal(loop, line.input, 'input');
-    return line.sources.map((term) => readSource(term, input, line.order, scope, meanings));
+    return line.sources.map((term, index) => {
+      const place = { input, order: line.order, id: `${statement.name}.${input}#${index}` };
+      return readSource(term, place, scope, meanings);
+    });
   });
   return {
     name: statement.name,
@@ -100,109 +74,6 @@ function refuseSecondLines({ inputs, starts, name }: CaseStatement): void {
       stopAt(span, 'given-twice', `${text} starts twice in ${name}; keep one of the two lines.`);
     given.add(`${text} starts`);
   }
-}
-
-function readSource(
-  term: SourceTerm,
-  input: string,
-  order: number,
-  scope: Scope,
-  meanings: Meanings,
-): ActingSource {
-  const { factor, call } = splitSource(term.source);
-  const source = sourceNamed(call.callee);
-  if (!source) unknownSource(call);
-  if (source.availability === 'later') {
-    stopAt(call.span, 'not-available-yet', `The source ${call.callee} is not available yet.`);
-  }
-  if (call.args.length !== 1) {
-    stopAt(call.span, 'argument-count', `${call.callee} takes one argument: ${source.summary}`);
-  }
-  const amounts = (factor ? [factor, call.args[0]] : [call.args[0]]).map((part) =>
-    amountOf(part, 'The size of a source', scope, meanings),
-  );
-  const after = term.after
-    ? amountOf(term.after, 'The time after `after`', scope, meanings)
-    : formulaValue(zeroRatio);
-  if (term.after && (asRational(after.ratio)?.n ?? 0n) < 0n)
-    stopAt(term.after.span, 'negative-time', 'A source begins at t = 0 at the earliest.');
-  const size = amounts.map(({ ratio }) => ratio).reduce((a, b) => mulRatios(a, b));
-  return {
-    input,
-    kind: source.kindAfterIntegrations(order),
-    transform: divRatios(
-      term.sign < 0 ? negRatio(size) : size,
-      powRatio(ratioOf(laplace), source.power + order),
-    ),
-    after: after.ratio,
-    when: allOf([...amounts, after].map(({ when }) => when)),
-  };
-}
-
-/** The value of a parameter in a line of a case. */
-function amountOf(
-  expression: Expression,
-  what: string,
-  scope: Scope,
-  meanings: Meanings,
-): FormulaValue {
-  const value = meanings.evaluate(expression, scope);
-  const ratio = parameterOf(value, expression.span);
-  if (dependsOn(ratio, laplace))
-    stopAt(expression.span, 'not-a-parameter', `${what} does not depend on s.`);
-  return value as FormulaValue;
-}
-
-/** `2 step(A)` is a factor and the call. */
-function splitSource(source: Expression): {
-  factor: Expression | null;
-  call: Extract<Expression, { kind: 'call' }>;
-} {
-  if (source.kind === 'call') return { factor: null, call: source };
-  if (source.kind === 'product' && !source.inverted.at(-1)) {
-    const call = source.factors.at(-1)!;
-    if (call.kind === 'call') {
-      const [rest, inverted] = [source.factors.slice(0, -1), source.inverted.slice(0, -1)];
-      const factor = rest.length === 1 ? rest[0] : { ...source, factors: rest, inverted };
-      return { factor, call };
-    }
-  }
-  refuseHiddenSource(source);
-  stopAt(
-    source.span,
-    'not-a-source',
-    `\`${formatExpression(source)}\` is not a source; for a constant load write \`step(…)\`.`,
-  );
-}
-
-/** A worksheet name hides a source as it hides a function; `step(3)` is a product then. */
-function refuseHiddenSource(source: Expression): void {
-  if (source.kind !== 'product') return;
-  const hidden = source.factors.find(
-    (factor) => factor.kind === 'name' && sourceNamed(factor.name),
-  );
-  if (hidden?.kind !== 'name') return;
-  const message = `The name ${hidden.name} of this worksheet hides the source; rename it.`;
-  stopAt(hidden.span, 'source-hidden', message);
-}
-
-function unknownSource(call: Extract<Expression, { kind: 'call' }>): never {
-  const near = nearestName(call.callee, [
-    'step',
-    'ramp',
-    'parabola',
-    'impulse',
-    'sine',
-    'noise',
-    'shaped',
-    'measured',
-  ]);
-  stopAt(
-    call.calleeSpan,
-    'unknown-source',
-    `There is no source ${call.callee}.${near ? ` Is ${near} meant?` : ''} Sources are step, ramp, parabola and impulse.`,
-    near ? [{ title: `Write ${near}`, edits: [{ span: call.calleeSpan, insert: near }] }] : [],
-  );
 }
 
 function readStarts(
@@ -244,8 +115,16 @@ export function signalIn(
   const { loop } = record;
   const terms = record.acting.map((acting): SignalTerm => {
     const transfer = transferRatio(loop, acting.input, signal, demandAt);
-    const { input, kind: source, after } = acting;
-    return { input, source, transform: mulRatios(transfer, acting.transform), after };
+    const { input, kind: source, after, noise, frequency } = acting;
+    const transform = mulRatios(transfer, acting.transform);
+    return {
+      input,
+      source,
+      transform,
+      after,
+      ...(noise && { noise }),
+      ...(frequency && { frequency }),
+    };
   });
   const initial = record.starts.map((start): SignalTerm => {
     const transfer = initialTransfer(loop, start.input, signal, budget, demandAt);

@@ -106,7 +106,7 @@ function drawCurve(
   axisEnd: number,
   sources: FigureSources,
 ): DrawnCurve {
-  const signal = signalIn(expression, value);
+  const { signal, left } = withoutNoise(signalIn(expression, value));
   const { numbers, derivations } = sources;
   const compiled = compileSignal(signal, expression, numbers);
   requireNumbers(compiled.inputs, expression, numbers);
@@ -131,6 +131,7 @@ function drawCurve(
       failure && isGrowing(responses[0]) ? `${label} grows without bound: ${failure}` : null,
     notes: [
       ...signal.notes,
+      ...left,
       ...(names.length > 0 ? [`Band: ${count - 1} points of the tolerances, corners first.`] : []),
     ],
   };
@@ -168,6 +169,13 @@ function signalIn(expression: Expression, value: Value): SignalValue {
     'not-a-signal',
     `\`${formatExpression(expression)}\` is not a signal; name a signal of a load case, or multiply a transfer function by the transform of a source, \`H/s\`.`,
   );
+}
+
+/** A curve over time shows what is certain; noise is left out, in words. */
+function withoutNoise(signal: SignalValue): { signal: SignalValue; left: readonly string[] } {
+  const terms = signal.terms.filter((term) => !term.noise);
+  if (terms.length === signal.terms.length) return { signal, left: [] };
+  return { signal: { ...signal, terms }, left: [`The noise in ${signal.name} is left out.`] };
 }
 
 interface CompiledSignal {

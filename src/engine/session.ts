@@ -1,5 +1,5 @@
 import { errorAt, type Problem } from '../base/index.ts';
-import { FUNCTIONS, SOURCES } from '../functions/index.ts';
+import { FUNCTIONS, SOURCES, sourceNamed, type Source } from '../functions/index.ts';
 import {
   lineStarts,
   parseWorksheet,
@@ -41,15 +41,17 @@ const VOCABULARY: Vocabulary = {
   isUnit: (text) => isUnitSymbol(text),
   functions: new Set([...FUNCTIONS.keys(), ...SOURCES.map((source) => source.name)]),
   slotArguments: (callee, index) => {
-    if (SOURCES.some((source) => source.name === callee)) return isSourceSlot(callee, index);
+    const source = sourceNamed(callee);
+    if (source) return isSourceSlot(source, index);
     const parameters = FUNCTIONS.get(callee)?.parameters ?? [];
     return parameters[Math.min(index, parameters.length - 1)]?.slot ?? false;
   },
 };
 
 /** Every argument of a source is a slot, except the transfer function of `shaped` and files. */
-function isSourceSlot(source: string, index: number): boolean {
-  return source === 'shaped' ? index === 1 : source !== 'measured';
+function isSourceSlot({ parameters }: Source, index: number): boolean {
+  const takes = parameters[Math.min(index, parameters.length - 1)]?.takes;
+  return takes !== 'transfer' && takes !== 'file';
 }
 
 class WorksheetSession implements Session {

@@ -18,6 +18,10 @@ export function vocabulary(): readonly VocabularyWord[] {
       signature: `(${spec.parameters.map((parameter) => parameter.name).join(', ')})`,
       help: spec.summary,
     })),
-    ...sources.map((source) => ({ name: source.name, signature: '(A)', help: source.summary })),
+    ...sources.map((source) => ({
+      name: source.name,
+      signature: `(${source.parameters.map((parameter) => parameter.name).join(', ')})`,
+      help: source.summary,
+    })),
   ];
 }

@@ -19,7 +19,7 @@ export interface Written {
   readonly latex: string;
   /** The rows and conditions of a Routh array; null for all else. */
   readonly array: unknown;
-  /** Which signs were used to simplify conditions. */
+  /** Which signs were used to simplify conditions, and what is not written. */
   readonly notes: readonly string[];
 }
 
@@ -32,8 +32,13 @@ export function writtenForm(value: Value, writing: Writing): Written {
     formula,
     latex: latexOf(value, writing),
     array: value.kind === 'array' ? arrayParts(value, writing) : null,
-    notes: isCondition ? signs.notes() : [],
+    notes: isCondition ? signs.notes() : noiseNotes(value),
   };
+}
+
+function noiseNotes(value: Value): readonly string[] {
+  const isNoisy = value.kind === 'signal' && value.terms.some((term) => term.noise);
+  return isNoisy ? ['The noise in it has no transform and is left out.'] : [];
 }
 
 function formulaOf(value: Value, writing: Writing): string | null {

@@ -1,5 +1,5 @@
 import { refuse } from '../base/index.ts';
-import { one, optional, slot, type Parameter, type WorksheetFunction } from './spec.ts';
+import { one, slot, type Parameter, type WorksheetFunction } from './spec.ts';
 
 /** A function of the language that is not built yet: refused in words, never guessed. */
 function announced(
@@ -42,17 +42,6 @@ export const ANNOUNCED: readonly WorksheetFunction[] = [
     transfer,
   ),
   announced('peak_gain', 'The largest gain over all frequencies.', transfer),
-  announced('amplitude', 'The amplitude of a signal at a frequency.', x, slot('f')),
-  announced('density', 'The one-sided density of a signal.', x, slot('f')),
-  announced('variance', 'The variance of the random part of a signal.', x),
-  announced(
-    'rms',
-    'The root mean square of the random and periodic parts.',
-    x,
-    { ...optional('f1', 'parameter'), slot: true },
-    { ...optional('f2', 'parameter'), slot: true },
-  ),
-  announced('noise_bandwidth', 'The equivalent noise bandwidth, cyclic.', transfer),
   announced('budget', 'The error budget of a signal.', x),
   announced('influence', 'How each assumption moves a result.', one('x', 'any')),
   announced(

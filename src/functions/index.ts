@@ -1,3 +1,4 @@
+import { amplitude } from './amplitude.ts';
 import { ANNOUNCED } from './announced.ts';
 import { characteristic } from './characteristic.ts';
 import { coefficient } from './coefficient.ts';
@@ -12,6 +13,7 @@ import { initial } from './initial.ts';
 import { limit } from './limit.ts';
 import { match } from './match.ts';
 import { MATRICES } from './matrices.ts';
+import { NOISE } from './noise.ts';
 import { nominal } from './nominal.ts';
 import { opened } from './opened.ts';
 import { partialFractions } from './partial-fractions.ts';
@@ -28,7 +30,7 @@ import { TRANSFER_PARTS } from './transfer-parts.ts';
 
 export * from './spec.ts';
 export { recordSigns, type UsedSigns } from './used-signs.ts';
-export { SOURCES, sourceNamed, type Source } from './sources.ts';
+export { SOURCES, sourceNamed, type Source, type SourceArgument } from './sources.ts';
 export { hiddenNote } from './hidden-modes.ts';
 
 const LIST: readonly WorksheetFunction[] = [
@@ -40,6 +42,8 @@ const LIST: readonly WorksheetFunction[] = [
   initial,
   response,
   ...SIGNAL_PARTS,
+  amplitude,
+  ...NOISE,
   systemType,
   errorConstants,
   ...TRANSFER_PARTS,

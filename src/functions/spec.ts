@@ -97,7 +97,8 @@ export function rest(name: string, takes: ParameterKind): Parameter {
 
 /**
  * Unit of a result: that of the first argument (`common`: of all, which must agree; `signal`: of the signal, or of the
- * transform times 1/s), of the second, its square root, first over second, a number (`pure`: of a pure argument), a
+ * transform times 1/s), of the second, its square root, its square (`density`: per Hz; `bandwidth`: times Hz), first over
+ * second, a number (`pure`: of a pure argument), a
  * time, an angular frequency, or not checked.
  */
 export type UnitRule =
@@ -106,6 +107,9 @@ export type UnitRule =
   | 'common'
   | 'signal'
   | 'root'
+  | 'square'
+  | 'density'
+  | 'bandwidth'
   | 'quotient'
   | 'number'
   | 'pure'

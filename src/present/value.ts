@@ -107,9 +107,11 @@ function joinSigned(terms: readonly string[], space: string): string {
   );
 }
 
-/** The transform of a signal, each source's share delayed as it begins. */
+/** The transform of a signal without its noise, each source's share delayed as it begins. */
 function transformOf(signal: SignalValue): Ratio {
-  return signal.terms.reduce((sum, term) => addRatios(sum, delayed(term)), zeroRatio);
+  return signal.terms
+    .filter((term) => !term.noise)
+    .reduce((sum, term) => addRatios(sum, delayed(term)), zeroRatio);
 }
 
 function delayed({ transform, after }: SignalTerm): Ratio {

@@ -14,6 +14,7 @@ import {
   rmsOf,
   varianceOf,
   type FormulaValue,
+  type Knowledge,
   type NoValue,
   type SignalTerm,
 } from '../../src/control/index.ts';
@@ -71,7 +72,9 @@ function line(transfer: string, amplitude = 'A', frequency = 'w0', after = '0'):
   };
 }
 
-const write = { signOf: positive, write: () => '…' };
+const open = (r: Ratio): Ratio => r;
+const allPositive: Knowledge = { signOf: positive, open };
+const write = (): string => '…';
 
 /** The polynomial of these coefficients, highest power first. */
 function inPowersOfS(list: readonly (string | number)[]): Ratio {
@@ -244,7 +247,9 @@ describe('noise bandwidth', () => {
 
 describe('variance', () => {
   test('of a first-order lag under white noise is S/(4 T)', () => {
-    expect(formula(varianceOf(signal([noisy('1/(T*s + 1)')]), positive))).toEqual(read('S/(4*T)'));
+    expect(formula(varianceOf(signal([noisy('1/(T*s + 1)')]), allPositive))).toEqual(
+      read('S/(4*T)'),
+    );
   });
 
   test('adds independent noises, and the paths of one noise before squaring', () => {
@@ -252,36 +257,36 @@ describe('variance', () => {
     const independent = signal([noisy(lag, 'S', 'a'), noisy(lag, 'S', 'b')]);
     const same = signal([noisy(lag, 'S', 'a'), noisy(lag, 'S', 'a')]);
     const cancelled = signal([noisy(lag, 'S', 'a'), noisy(`0 - ${lag}`, 'S', 'a')]);
-    expect(formula(varianceOf(independent, positive))).toEqual(read('S/2'));
-    expect(formula(varianceOf(same, positive))).toEqual(read('S'));
-    expect(formula(varianceOf(cancelled, positive))).toEqual(read(0));
+    expect(formula(varianceOf(independent, allPositive))).toEqual(read('S/2'));
+    expect(formula(varianceOf(same, allPositive))).toEqual(read('S'));
+    expect(formula(varianceOf(cancelled, allPositive))).toEqual(read(0));
   });
 
   test('is infinite where white noise does not roll off, and names the path', () => {
-    const value = varianceOf(signal([noisy('s/(s + 1)')]), positive);
+    const value = varianceOf(signal([noisy('s/(s + 1)')]), allPositive);
     expect(reasonOf(value)).toBe(
       'the variance is infinite: white noise at w reaches x without rolling off at high frequencies',
     );
   });
 
   test('grows without bound behind an integration, and names the path', () => {
-    const value = varianceOf(signal([noisy('1/(s*(s + 1))')]), positive);
+    const value = varianceOf(signal([noisy('1/(s*(s + 1))')]), allPositive);
     expect(reasonOf(value)).toBe(
       'the noise in w is integrated on its way to x (a pole at s = 0): its variance grows without bound',
     );
   });
 
   test('has no value where a mode does not decay, visible or not', () => {
-    const undamped = varianceOf(signal([noisy('1/(s**2 + 4)')]), positive);
+    const undamped = varianceOf(signal([noisy('1/(s**2 + 4)')]), allPositive);
     expect(undamped.kind).toBe('none');
     const blocks = [{ signals: ['x'], polynomial: read('(s - 1)*(s + 2)').num }];
-    const hidden = varianceOf(signal([noisy('1/(s + 2)')], blocks), positive);
+    const hidden = varianceOf(signal([noisy('1/(s + 2)')], blocks), allPositive);
     expect(hidden.kind).toBe('none');
   });
 
   test('stands under the condition that the loop is stable', () => {
     const blocks = [{ signals: ['x'], polynomial: read('s + a').num }];
-    const value = varianceOf(signal([noisy('1/(s + a)')], blocks), unknown);
+    const value = varianceOf(signal([noisy('1/(s + a)')], blocks), { signOf: unknown, open });
     expect(formula(value)).toEqual(read('S/(4*a)'));
     expect(JSON.stringify(value.when, (_, v) => (typeof v === 'bigint' ? String(v) : v))).toContain(
       'stable',
@@ -292,13 +297,13 @@ describe('variance', () => {
 describe('density', () => {
   test('is the density of the noise times the squared gain', () => {
     const x = signal([noisy('1/(T*s + 1)'), noisy('k/(s + 1)', 'R', 'v')]);
-    const value = densityOf(x, read('w'), positive);
+    const value = densityOf(x, read('w'), allPositive);
     expect(formula(found(value))).toEqual(read('S/(1 + T**2*w**2) + R*k**2/(1 + w**2)'));
   });
 
   test('keeps its size through a dead time', () => {
     const delayed = signal([noisy('exp(0 - s*Td)/(s + 1)')]);
-    const value = formula(found(densityOf(delayed, read('w'), positive)));
+    const value = formula(found(densityOf(delayed, read('w'), allPositive)));
     expect(numberAt(value, { S: 3, w: 2, Td: 0.7 })).toBeCloseTo(3 / 5, 14);
   });
 });
@@ -307,7 +312,7 @@ describe('amplitude', () => {
   test.each(published((c) => c.kind === 'sin_dist'))('%s', (_, c: PublishedCase) => {
     const { w, amp } = c.given as unknown as { w: number[]; amp: number };
     const x = signal([line('1/(J*s**2 + kd*s + kp)')]);
-    const value = formula(found(amplitudeOf(x, read('w0'), write)));
+    const value = formula(found(amplitudeOf(x, read('w0'), allPositive, write)));
     const { amplitude } = c.expect as unknown as { amplitude: string[] };
     const numbers = { J: 10, kp: 40, kd: 30, A: amp, w0: w[0] };
     expect(numberAt(value, numbers)).toBeCloseTo(numberAt(read(amplitude[0]), {}), 14);
@@ -315,40 +320,42 @@ describe('amplitude', () => {
 
   test('is exactly 0 where a controller holds the poles of the line', () => {
     const x = signal([line('s*(s**2 + w0**2)/(s**3 + a*s**2 + b*s + c)')]);
-    expect(formula(found(amplitudeOf(x, read('w0'), write)))).toEqual(read(0));
+    expect(formula(found(amplitudeOf(x, read('w0'), allPositive, write)))).toEqual(read(0));
   });
 
   test('adds the sines of one frequency by their phases', () => {
     const turned = signal([line('1/(s + 1)', '3', '2'), line('1/(s + 1)', '3', '2', '1/2')]);
-    const value = numberAt(formula(found(amplitudeOf(turned, read(2), write))), {});
+    const value = numberAt(formula(found(amplitudeOf(turned, read(2), allPositive, write))), {});
     expect(value).toBeCloseTo((6 * Math.cos(0.5)) / Math.sqrt(5), 12);
   });
 
   test('of two lines stands where their frequencies differ', () => {
     const x = signal([line('1/(s + 1)', 'A', 'w1'), line('1/(s + 1)', 'B', 'w2')]);
-    const value = found(amplitudeOf(x, read('w1'), write));
+    const value = found(amplitudeOf(x, read('w1'), allPositive, write));
     expect(value.when).toMatchObject({ kind: 'compare', operator: '!=' });
   });
 
   test('is refused where it is not certain which line is meant', () => {
     const x = signal([line('1/(s + 1)', 'A', 'w1')]);
-    expect(amplitudeOf(x, read(3), write)).toMatchObject({ code: 'which-line' });
+    expect(amplitudeOf(x, read(3), allPositive, write)).toMatchObject({ code: 'which-line' });
   });
 
   test('is 0 at a frequency that no sine has, which is said', () => {
-    const value = found(amplitudeOf(signal([line('1/(s + 1)', 'A', '2*pi')]), read(3), write));
+    const value = found(
+      amplitudeOf(signal([line('1/(s + 1)', 'A', '2*pi')]), read(3), allPositive, write),
+    );
     expect(formula(value)).toEqual(read(0));
     expect(value.notes).toEqual(['No sine at this frequency acts on x; its lines are at … Hz.']);
   });
 
   test('grows without bound on an undamped mode of the same frequency', () => {
     const x = signal([line('1/(s**2 + w0**2)')]);
-    expect(found(amplitudeOf(x, read('w0'), write)).kind).toBe('none');
+    expect(found(amplitudeOf(x, read('w0'), allPositive, write)).kind).toBe('none');
   });
 
   test('of a formula is read from its poles', () => {
     const x = signal([{ input: '', transform: read('6/((s**2 + 9)*(s + 3))') }]);
-    const value = formula(found(amplitudeOf(x, read(3), write)));
+    const value = formula(found(amplitudeOf(x, read(3), allPositive, write)));
     expect(numberAt(value, {})).toBeCloseTo(2 / Math.sqrt(18), 14);
   });
 });
@@ -357,20 +364,20 @@ describe('rms', () => {
   test('counts noise and sines, not constants, and says so', () => {
     const step: Partial<SignalTerm> = { input: 'r', transform: read('1/(s*(s + 1))') };
     const x = signal([step, noisy('1/(s + 1)', '8'), line('1/(s + 1)', '2', '1')]);
-    const value = found(rmsOf(x, positive));
+    const value = found(rmsOf(x, allPositive));
     expect(numberAt(formula(value), {})).toBeCloseTo(Math.sqrt(2 + 1), 14);
     expect(value.notes).toContain('The constant part is not counted.');
   });
 
   test('has no value where the signal drifts', () => {
     const ramp: Partial<SignalTerm> = { input: 'r', source: 'drifting', transform: read('1/s**2') };
-    const value = rmsOf(signal([ramp, noisy('1/(s + 1)')]), positive);
+    const value = rmsOf(signal([ramp, noisy('1/(s + 1)')]), allPositive);
     expect(reasonOf(value)).toMatch(/^x drifts: grows without bound/);
   });
 
   test('of noise alone agrees with the spectrum', () => {
     const { num, den } = numbersOf(read('(3*s + 1)/(s**3 + 2*s**2 + 5*s + 1)'));
-    const value = rmsOf(signal([noisy(quotient({ num, den }), '2')]), positive);
+    const value = rmsOf(signal([noisy(quotient({ num, den }), '2')]), allPositive);
     if (isRefusal(value)) throw new Error(value.reason);
     expect(numberAt(formula(value), {}) ** 2).toBeCloseTo(2 * bandwidthByQuadrature(num, den), 9);
   });
