@@ -6,6 +6,7 @@ import { exponentsIn, gatherPowers, termValues } from './point-image.ts';
 import {
   coefficientsIn,
   contentOf,
+  contentWork,
   degreeIn,
   equalPolynomials,
   isConstantPolynomial,
@@ -40,6 +41,7 @@ export function gcdPolynomials(a: Polynomial, b: Polynomial, budget?: Budget): P
   if (isZeroPolynomial(a)) return normalPart(b);
   if (isZeroPolynomial(b)) return normalPart(a);
   if (isConstantPolynomial(a) || isConstantPolynomial(b)) return onePolynomial;
+  spend(budget, contentWork(a) + contentWork(b), 'a greatest common divisor');
   const [left, right] = [normalPart(a), normalPart(b)];
   if (equalPolynomials(left, right)) return left;
   const [leftMonomial, rightMonomial] = [monomialContent(left), monomialContent(right)];

@@ -1,6 +1,7 @@
 import type { Budget } from '../base/index.ts';
+import { spend } from '../base/index.ts';
 import { contentIn, gcdPolynomials } from './gcd.ts';
-import { absolute, bitLength, inverseOf } from './integer.ts';
+import { absolute, bitLength, inverseOf, longWork } from './integer.ts';
 import { liftPair, symmetricResidues, type LiftProblem, type Pair } from './pair-lift.ts';
 import {
   addPolynomials,
@@ -79,8 +80,8 @@ function imageIn(
   );
 }
 
-function isSquareFree(image: Polynomial, g: Generator): boolean {
-  return isConstantPolynomial(gcdPolynomials(image, derivativePolynomial(image, g)));
+function isSquareFree(image: Polynomial, g: Generator, budget?: Budget): boolean {
+  return isConstantPolynomial(gcdPolynomials(image, derivativePolynomial(image, g), budget));
 }
 
 /** 0 at first, then more and more often another small number: every one that is not 0 costs terms. */
@@ -99,7 +100,12 @@ function bestExpansion(p: Polynomial, main: Generator, budget?: Budget): Expansi
   for (let turn = 0; turn < POINTS_TRIED && found.length < POINTS_COMPARED; turn += 1) {
     const point = others.map(() => coordinate(turn, elements));
     const image = imageIn(p, others, point);
-    if (degreeIn(image, main) < degreeIn(p, main) || !isSquareFree(image, main)) continue;
+    spend(
+      budget,
+      p.exponents.length * longWork(image.coefficients[0] ?? 0n),
+      'factoring a polynomial',
+    );
+    if (degreeIn(image, main) < degreeIn(p, main) || !isSquareFree(image, main, budget)) continue;
     found.push({ main, others, point, images: factorUnivariate(normalPart(image), main, budget) });
     if (found[found.length - 1].images.length === 1) break;
   }

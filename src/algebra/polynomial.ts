@@ -221,6 +221,12 @@ function isWord(c: bigint): boolean {
   return c < WORD && c > -WORD;
 }
 
+/** The work of finding the content of p: Euclid's algorithm goes with the square of the bits. */
+export function contentWork(p: Polynomial): number {
+  const isTerm = p.coefficients.length === 1;
+  return Math.ceil(p.exponents.length / 8 + (isTerm ? 0 : coefficientBits(p) ** 2 / 2 ** 11));
+}
+
 /** The work of one product of coefficients of a and b: 1 for short ones, for long ones by their lengths. */
 export function coefficientWork(a: Polynomial, b: Polynomial): number {
   return 1 + Math.ceil((coefficientBits(a) * coefficientBits(b)) / 2 ** 20);

@@ -4,7 +4,6 @@ import { frameOf, keysIn, placesIn } from './frame.ts';
 import type { Frame } from './frame.ts';
 import {
   coefficientWork,
-  constantPolynomial,
   degreeIn,
   isConstantPolynomial,
   isZeroPolynomial,
@@ -16,7 +15,7 @@ import {
   zeroPolynomial,
 } from './polynomial.ts';
 import type { Generator, Polynomial } from './ring.ts';
-import { polynomialOfPacked, type PackedTerms } from './terms.ts';
+import { polynomialOfPacked, polynomialOfTerms, type PackedTerms } from './terms.ts';
 import { divideWide } from './wide-terms.ts';
 
 /** The products quotient[row] · divisor[column] still to be subtracted, largest monomial on top (a binary heap). */
@@ -212,13 +211,11 @@ export function pseudoRemainder(
 /** The smallest power of each generator in p, as a monomial with coefficient 1; p is not zero. */
 export function monomialContent(p: Polynomial): Polynomial {
   const width = p.generators.length;
-  let monomial = constantPolynomial(1n);
-  p.generators.forEach((g, k) => {
-    let lowest = p.degrees[k];
-    for (let i = 0; i < termCount(p) && lowest > 0; i += 1) {
-      lowest = Math.min(lowest, p.exponents[i * width + k]);
+  const lowest = Int32Array.from(p.degrees);
+  for (let at = 0; at < p.exponents.length;) {
+    for (let k = 0; k < width; k += 1, at += 1) {
+      if (p.exponents[at] < lowest[k]) lowest[k] = p.exponents[at];
     }
-    if (lowest > 0) monomial = mulPolynomials(monomial, generatorPower(g, lowest));
-  });
-  return monomial;
+  }
+  return polynomialOfTerms(p.generators, lowest, [1n]);
 }
