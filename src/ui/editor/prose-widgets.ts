@@ -1,7 +1,7 @@
 import { WidgetType } from '@codemirror/view';
 import { typeset } from '../results/mathematics.ts';
 import { element } from '../results/element.ts';
-import { withMinus } from '../results/result-row.ts';
+import { withMinus } from '../results/minus.ts';
 
 /** Maths in prose, typeset. */
 export class MathsWidget extends WidgetType {

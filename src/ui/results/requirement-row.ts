@@ -4,7 +4,8 @@ import { verdictClass, verdictShape, verdictWord } from '../verdicts.ts';
 import { element } from './element.ts';
 import { spoken } from './spoken.ts';
 import { marginBarElement } from './margin-bar.ts';
-import { movementElement, waitingLine, withMinus } from './result-row.ts';
+import { withMinus } from './minus.ts';
+import { movementElement, waitingLine } from './result-row.ts';
 
 /** A verdict under its `require` statement: shape and word, and at the right edge the margin and its bar. */
 export function requirementRow(

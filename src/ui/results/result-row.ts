@@ -1,6 +1,7 @@
 import type { ResultContent } from '../../engine/index.ts';
 import type { Movement } from '../baseline.ts';
 import { element } from './element.ts';
+import { withMinus } from './minus.ts';
 import { scrollable } from './scrollable.ts';
 import { spoken } from './spoken.ts';
 import { typeset } from './mathematics.ts';
@@ -67,9 +68,4 @@ function figures(content: ResultContent, movement: Movement | null): HTMLElement
 /** "was 0.31 mrad, × 1.07". */
 export function movementElement({ was, by }: Movement): HTMLElement {
   return element('span', 'was', withMinus(was), by === null ? null : element('span', 'by', by));
-}
-
-/** Sets a hyphen before a digit, or between spaces, as a minus sign, as print does. */
-export function withMinus(text: string): string {
-  return text.replace(/(^|[\s(,])-(?=[\d.])|(\s)-(?=\s)/gu, '$1$2−');
 }
