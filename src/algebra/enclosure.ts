@@ -81,6 +81,7 @@ export type RealPoint = (g: Generator, isNominal: boolean) => number;
 function encloseGenerator(g: Generator, point: RealPoint, isNominal: boolean): Enclosure | null {
   if (g.kind === 'constant') return enclosing(Math.PI, Math.PI);
   if (!g.args) return exactly(point(g, isNominal));
+  if (g.binds) return null;
   const args: Enclosure[] = [];
   for (const argument of g.args) {
     const value = enclose(argument, point, isNominal || g.name === 'nominal');

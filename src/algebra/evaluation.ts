@@ -1,6 +1,6 @@
 import { isRefusal, refuse, type Budget, type Refusal } from '../base/index.ts';
 import { placesIn } from './frame.ts';
-import { generatorDependsOn } from './generator.ts';
+import { functionOf, generatorDependsOn } from './generator.ts';
 import { applyFunction } from './function-value.ts';
 import {
   constantValue,
@@ -12,7 +12,7 @@ import {
   sumPolynomials,
 } from './polynomial.ts';
 import { divRational, isZeroRational, rational, type Rational } from './rational.ts';
-import { divRatios, generatorsOfRatio, isZeroRatio, ratio } from './ratio.ts';
+import { divRatios, generatorsOfRatio, isZeroRatio, ratio, ratioOf } from './ratio.ts';
 import type { Quotient } from './relation.ts';
 import type { Generator, Polynomial, Ratio } from './ring.ts';
 import { polynomialOfTerms } from './terms.ts';
@@ -129,13 +129,16 @@ function withFunctions(
   const replaced = [...values.keys()];
   for (const g of generatorsOfRatio(r)) {
     if (!g.args || all.has(g) || !replaced.some((other) => generatorDependsOn(g, other))) continue;
+    const free = g.binds ? new Map([...values].filter(([other]) => other !== g.binds)) : values;
     const args: Ratio[] = [];
     for (const argument of g.args) {
-      const changed = substituteRatio(argument, values, budget);
+      const changed = substituteRatio(argument, free, budget);
       if (isRefusal(changed)) return changed;
       args.push(changed);
     }
-    const value = applyFunction(g.name, args, budget);
+    const value = g.binds
+      ? ratioOf(functionOf(g.name, args, g.binds))
+      : applyFunction(g.name, args, budget);
     if (isRefusal(value)) return value;
     all.set(g, value);
   }

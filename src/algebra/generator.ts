@@ -45,13 +45,15 @@ export function symbol(name: string): Generator {
 
 /**
  * The opaque function of exact arguments, such as exp(−s Td), as a generator. It does not simplify; see
- * `applyFunction`. For `sqrt` the relation sqrt(a)² = a is kept on it.
+ * `applyFunction`. For `sqrt` the relation sqrt(a)² = a is kept on it. What depends on s only through arguments in which
+ * `binds` is s does not depend on s.
  */
-export function functionOf(name: string, args: readonly Ratio[]): Generator {
+export function functionOf(name: string, args: readonly Ratio[], binds?: Generator): Generator {
   const key = `function:${name}(${args.map(ratioKey).join(',')})`;
   const known = interned.get(key);
   if (known) return known;
   const generator = { kind: 'function' as const, key, name, args: Object.freeze([...args]) };
+  if (binds) return intern({ ...generator, binds });
   return intern(name === 'sqrt' ? { ...generator, square: args[0] } : generator);
 }
 
@@ -91,6 +93,7 @@ export function generatorsWithin(generators: Iterable<Generator>): readonly Gene
 /** Whether a generator is `other`, or a function whose arguments contain it. */
 export function generatorDependsOn(g: Generator, other: Generator): boolean {
   if (g === other) return true;
+  if (g.binds === other) return false;
   return argumentPolynomials(g).some((p) =>
     p.generators.some((inner) => generatorDependsOn(inner, other)),
   );

@@ -15,6 +15,8 @@ export interface Generator {
   readonly name: string;
   readonly args?: readonly Ratio[];
   readonly square?: Ratio;
+  /** The variable that stands for itself only inside the arguments, as s does in a phase margin of L(s). */
+  readonly binds?: Generator;
 }
 
 /**

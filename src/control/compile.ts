@@ -14,6 +14,8 @@ import type { Generator, Polynomial, Ratio } from '../algebra/index.ts';
 import { invariant } from '../base/index.ts';
 import { TapeBuilder } from '../numeric/index.ts';
 import type { Slot, Tape, TapeFunction } from '../numeric/index.ts';
+import { FOUND_NUMBERS, type FoundNumber } from './found-numbers.ts';
+import { transferSlots, type TransferSlots } from './transfer-slots.ts';
 
 /** What a generator stands for in numbers: a formula to put in its place, or an input of the tape. */
 export type Resolve = (g: Generator) => Ratio | 'input';
@@ -125,12 +127,36 @@ export class RatioCompiler {
   private functionOf(g: Generator, nominal: boolean): ComplexSlot {
     const args = g.args ?? [];
     if (g.name === 'nominal') return this.ratio(args[0], true);
+    const found = FOUND_NUMBERS.get(g.name);
+    if (found) return this.foundNumber(g, found, nominal);
     const slots = args.map((a) => this.ratio(a, nominal));
     if (g.name === 'min' || g.name === 'max') return this.extreme(g.name, slots);
     invariant(FUNCTIONS.has(g.name) && slots.length === 1, `${g.name} cannot be computed`);
     const [{ re, im }] = slots;
     if (im === null) return { re: this.builder.call(g.name as TapeFunction, re), im: null };
     return this.complexFunction(g.name, re, im);
+  }
+
+  private foundNumber(g: Generator, { find }: FoundNumber, nominal: boolean): ComplexSlot {
+    const layout = this.transfers(g.args ?? [], nominal);
+    if (!layout) return this.real(NaN);
+    const key = `${nominal}|${g.key}`;
+    const value = (values: Float64Array): number => find(...layout.read(values)).value;
+    return { re: this.builder.external(key, value, layout.slots), im: null };
+  }
+
+  /** Functions of s as a row of slots; null where they hold one that is no dead time, or j. */
+  transfers(args: readonly Ratio[], nominal = false): TransferSlots | null {
+    let isReal = true;
+    const realPart = ({ re, im }: ComplexSlot): Slot => {
+      if (im !== null) isReal = false;
+      return re;
+    };
+    const layout = transferSlots(args, {
+      polynomial: (p) => realPart(this.polynomial(p, nominal)),
+      ratio: (r) => realPart(this.ratio(r, nominal)),
+    });
+    return isReal ? layout : null;
   }
 
   private extreme(name: 'min' | 'max', slots: readonly ComplexSlot[]): ComplexSlot {

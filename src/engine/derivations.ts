@@ -21,6 +21,7 @@ import {
   ALWAYS,
   conditionKey,
   expandStable,
+  FOUND_NUMBERS,
   readable,
   type Condition,
   type SignalValue,
@@ -503,6 +504,7 @@ function signOfFunction(g: Generator, signOf: (g: Generator) => Sign): Sign {
     return signOfRatio(g.args![0], signOf) === 'positive' ? 'positive' : 'nonnegative';
   if (g.name === 'abs') return signOfRatio(g.args![0], signOf) === 'zero' ? 'zero' : 'nonnegative';
   if (g.name === 'nominal') return signOfRatio(g.args![0], signOf);
+  if (FOUND_NUMBERS.get(g.name)?.isMagnitude) return 'nonnegative';
   return 'unknown';
 }
 

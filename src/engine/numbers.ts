@@ -18,12 +18,15 @@ import {
 import { Budget, BudgetExceeded, isRefusal } from '../base/index.ts';
 import {
   compileConditions,
+  compileFindings,
+  foundMultiple,
   compileRatios,
   stabilityConditions,
   YES,
   type CompiledConditions,
   type CompiledRatios,
   type Condition,
+  type Finding,
   type Value,
 } from '../control/index.ts';
 import type { AssumptionStatement } from '../language/index.ts';
@@ -58,6 +61,8 @@ export interface Compiled {
   readonly ratios: CompiledRatios | null;
   readonly conditions: CompiledConditions;
   readonly inputs: readonly string[];
+  /** Whether an infinite value can be judged, as in `gain_margin(L) >= 6 dB`. */
+  readonly mayBeInfinite: boolean;
 }
 
 /** Values at points. `exists` says where the value exists; a condition's verdict is in `verdicts`. */
@@ -181,7 +186,9 @@ export class Numbers {
     const exists: Condition = value.kind === 'none' ? { kind: 'truth', value: false } : value.when;
     const conditions = compileConditions([own, exists], this.resolve);
     const inputs = [...new Set([...(ratios?.inputs ?? []), ...conditions.inputs])];
-    return { value, ratios, conditions, inputs };
+    const mayBeInfinite =
+      value.kind === 'condition' && list.some((side) => foundMultiple(side) !== null);
+    return { value, ratios, conditions, inputs, mayBeInfinite };
   }
 
   /** What is made of a subject as it is derived, in symbols; kept while its derivation stands. Null where it has none. */
@@ -292,9 +299,23 @@ export class Numbers {
     const [own, when] = conditions.evaluate(this.inputs(conditions.inputs, points), points.count);
     const exists = when.map((verdict) => (verdict === YES ? 1 : 0));
     for (const column of columns) {
-      for (let i = 0; i < points.count; i++) if (!Number.isFinite(column[i])) exists[i] = 0;
+      for (let i = 0; i < points.count; i++) {
+        const isJudged = compiled.mayBeInfinite && column[i] === Infinity;
+        if (!Number.isFinite(column[i]) && !isJudged) exists[i] = 0;
+      }
     }
     return { columns, verdicts: own, exists };
+  }
+
+  /** What is found for the functions in a value whose numbers come from a search, at one point. */
+  findings(value: Value, at: Points): readonly Finding[] {
+    return ratiosIn(value).flatMap((ratio) =>
+      compileFindings(this.opened(ratio), this.resolve).map(({ inputs, find }) =>
+        find(
+          this.inputs(inputs, at).map((input) => (typeof input === 'number' ? input : input[0])),
+        ),
+      ),
+    );
   }
 
   /** Inputs of a tape at points. */

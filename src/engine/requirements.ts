@@ -8,6 +8,7 @@ import { unitFor, type Display } from './display.ts';
 import { failureOf } from './failures.ts';
 import type { Evaluated, Numbers, Points, Subject } from './numbers.ts';
 import type { RequirementContent, Verdict } from './report.ts';
+import { missingReason } from './results.ts';
 import { sampleBox, type ToleranceSample } from './tolerance.ts';
 import { isMonotoneSubject, movingNames, variantsOf } from './variants.ts';
 
@@ -201,27 +202,30 @@ function relationNumbers(
     Math.max(Math.abs(limit), limit === 0 ? Math.abs(left[0]) : 0),
     request.hints,
   );
-  const inUnit = (si: number): number | null => {
-    const number = unit ? valueIn(si, unit) : si;
-    return Number.isFinite(number) ? number : null;
-  };
+  const inUnit = (si: number): number => (unit ? valueIn(si, unit) : si);
+  const finite = (number: number): number | null => (Number.isFinite(number) ? number : null);
   const ends = [left[0], evaluated.exists[worst] ? left[worst] : NaN].map(inUnit);
   return {
-    nominal: ends[0],
-    worst: ends[1],
-    limit: inUnit(limit),
+    nominal: finite(ends[0]),
+    worst: finite(ends[1]),
+    limit: finite(inUnit(limit)),
     unit: unit && unitText(unit) !== '' ? unit.text : null,
     shown: shownMargin(ends, limit, unit, relation.operators[0]),
   };
 }
 
 function shownMargin(
-  [nominal, worst]: readonly (number | null)[],
+  [nominal, worst]: readonly number[],
   limit: number,
   unit: Unit | null,
   operator: Relation['operators'][number],
 ): string {
-  const write = (number: number | null) => (number === null ? 'no value' : formatNumber(number, 3));
+  const write = (number: number) =>
+    Number.isFinite(number)
+      ? formatNumber(number, 3)
+      : number === Infinity
+        ? 'infinite'
+        : 'no value';
   const end = unit ? formatValue(limit, unit, { digits: 3 }) : formatNumber(limit, 3);
   const values = nominal === worst ? write(nominal) : `${write(nominal)}, worst ${write(worst)},`;
   return `${values} ${operator.startsWith('>') ? 'at least' : 'of'} ${end}`;
@@ -268,6 +272,10 @@ function failureAt(
   const at = pointAt(sample, index);
   const absent = failureOf(value.when, numbers, writing, at);
   if (absent) return `there is no value: ${absent}`;
+  const notFound = missingReason(
+    numbers.findings(value, at).filter((finding) => Number.isNaN(finding.value)),
+  );
+  if (notFound) return `there is no value: ${notFound}`;
   return value.kind === 'condition'
     ? failureOf(stableParts(value.condition), numbers, writing, at)
     : null;

@@ -9,13 +9,14 @@ import {
 } from '../algebra/index.ts';
 import type {
   Condition,
+  Finding,
   FormulaValue,
   NoValue,
   PartsValue,
   RootsValue,
   Value,
 } from '../control/index.ts';
-import { ALWAYS, allOf, compileRatios, UNDECIDED, YES } from '../control/index.ts';
+import { ALWAYS, allOf, compileRatios, foundMultiple, UNDECIDED, YES } from '../control/index.ts';
 import { formatExpression, nameToLatex, type Expression } from '../language/index.ts';
 import { polynomialRoots } from '../numeric/index.ts';
 import {
@@ -198,7 +199,8 @@ function nominalValue(
   if (!evaluated.exists[0]) return absentAtNominal(subject, compiled, numbers, writing);
   const undecided = undecidedReason(compiled, evaluated, numbers, writing);
   if (undecided) return { value: null, notes: [`Undecided: ${undecided}.`] };
-  return { value: numberIn(compiled, evaluated), notes: [] };
+  const notes = numbers.findings(value, NOMINAL).flatMap((finding) => finding.notes);
+  return { value: numberIn(compiled, evaluated), notes };
 }
 
 /** How fast a signal grows that has no final value, as a number with its unit. */
@@ -281,8 +283,16 @@ function absentAtNominal(
         notes: ['Derived anew at the nominal values, where the formula does not hold.'],
       };
   }
-  const why = failure ?? 'the formula divides by 0 there, or is not real';
+  const why =
+    failure ??
+    missingReason(numbers.findings(compiled.value, NOMINAL)) ??
+    'the formula divides by 0 there, or is not real';
   return { value: null, notes: [`No value at the nominal: ${why}.`] };
+}
+
+/** Why a number that is searched for does not exist; null where all do. */
+export function missingReason(findings: readonly Finding[]): string | null {
+  return findings.find(({ reason }) => reason !== null)?.reason ?? null;
 }
 
 /** The part of a condition that asks for stability. */
@@ -421,9 +431,24 @@ function partsOf(value: Value, numbers: Numbers, writing: Writing): unknown {
           growth: { rate: formulaText(value.growth.rate, writing), power: value.growth.power },
         }
       );
+    case 'formula':
+      return crossingsOf(value, numbers);
     default:
       return null;
   }
+}
+
+/** All crossings of a margin, the binding one marked. */
+function crossingsOf(value: FormulaValue, numbers: Numbers): unknown {
+  if (!foundMultiple(value.ratio)) return null;
+  const [finding] = numbers.findings(value, NOMINAL);
+  if (!finding || finding.crossings.length === 0) return null;
+  const crossings = finding.crossings.map(({ frequency, margin, binding }) => ({
+    frequency: jsonNumber(frequency),
+    margin: jsonNumber(margin),
+    binding,
+  }));
+  return { crossings };
 }
 
 function listParts(value: PartsValue, numbers: Numbers, writing: Writing): unknown {

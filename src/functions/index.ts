@@ -8,6 +8,7 @@ import { ELEMENTARY } from './elementary.ts';
 import { errorConstants } from './error-constants.ts';
 import { final } from './final.ts';
 import { FORMS } from './forms.ts';
+import { FREQUENCY } from './frequency.ts';
 import { inFull } from './in-full.ts';
 import { initial } from './initial.ts';
 import { limit } from './limit.ts';
@@ -44,6 +45,7 @@ const LIST: readonly WorksheetFunction[] = [
   ...SIGNAL_PARTS,
   amplitude,
   ...NOISE,
+  ...FREQUENCY,
   systemType,
   errorConstants,
   ...TRANSFER_PARTS,

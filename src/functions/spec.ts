@@ -114,6 +114,7 @@ export type UnitRule =
   | 'number'
   | 'pure'
   | 'time'
+  | 'angle'
   | 'angular frequency'
   | 'unchecked';
 

@@ -14,6 +14,7 @@ export {
 export type { MultipleRoot } from './roots.ts';
 export { polynomialRoots, rootsWithMultiplicity } from './roots.ts';
 export { noiseBandwidthOf } from './noise-bandwidth.ts';
+export { positiveRoots } from './positive-roots.ts';
 export { hurwitzVerdicts, isHurwitz } from './hurwitz.ts';
 export type { BatchInput } from './tape.ts';
 export { Tape } from './tape.ts';

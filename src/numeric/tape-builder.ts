@@ -2,7 +2,8 @@ import { invariant } from '../base/index.ts';
 import { operate } from './tape-operations.ts';
 import type { TapeBinary, TapeFunction, TapeOperation } from './tape-operations.ts';
 import { Tape } from './tape.ts';
-import type { TapeStep } from './tape.ts';
+import { argumentsOf, movedStep } from './tape-step.ts';
+import type { ExternalFunction, TapeStep } from './tape-step.ts';
 
 /** The place of a value in a tape under construction. */
 export type Slot = number;
@@ -73,6 +74,19 @@ export class TapeBuilder {
     return this.operation(name, a, -1);
   }
 
+  /**
+   * A number that a function of others finds, such as a root: called at every point with the values of `slots`.
+   * Equal keys mean equal functions.
+   */
+  external(key: string, find: ExternalFunction, slots: readonly Slot[]): Slot {
+    const known = slots.map((slot) => this.constantAt(slot));
+    if (known.every((value) => value !== undefined)) {
+      return this.constant(find(Float64Array.from(known)));
+    }
+    const step = { kind: 'external' as const, find, slots };
+    return this.shared(`external ${key} ${slots.join(' ')}`, () => step);
+  }
+
   /** The integer power a^exponent, by repeated squaring. */
   powInt(a: Slot, exponent: number): Slot {
     invariant(Number.isInteger(exponent), `the power ${exponent} of a tape is not an integer`);
@@ -89,10 +103,9 @@ export class TapeBuilder {
     const isNeeded = this.steps.map(() => false);
     const need = [...outputs];
     for (let slot = need.pop(); slot !== undefined; slot = need.pop()) {
-      if (slot < 0 || isNeeded[slot]) continue;
+      if (isNeeded[slot]) continue;
       isNeeded[slot] = true;
-      const step = this.steps[slot]!;
-      if (step.kind === 'operation') need.push(step.a, step.b);
+      need.push(...argumentsOf(this.steps[slot]!));
     }
     return new Tape(this.inputs.slice(), ...this.renumbered(isNeeded, outputs));
   }
@@ -101,13 +114,12 @@ export class TapeBuilder {
     isNeeded: readonly boolean[],
     outputs: readonly Slot[],
   ): [TapeStep[], number[]] {
-    const place = new Map<Slot, number>([[-1, -1]]);
+    const place = new Map<Slot, number>();
     const steps: TapeStep[] = [];
     this.steps.forEach((step, slot) => {
       if (!isNeeded[slot]) return;
       place.set(slot, steps.length);
-      const moved = step.kind === 'operation' && { a: place.get(step.a)!, b: place.get(step.b)! };
-      steps.push(moved ? { ...step, ...moved } : step);
+      steps.push(movedStep(step, (argument) => place.get(argument)!));
     });
     return [steps, outputs.map((slot) => place.get(slot)!)];
   }

@@ -1,12 +1,7 @@
 import { invariant } from '../base/index.ts';
 import { operate, operateArrays } from './tape-operations.ts';
-import type { TapeOperation } from './tape-operations.ts';
-
-/** One step of a tape; arguments refer to earlier steps. */
-export type TapeStep =
-  | { readonly kind: 'input'; readonly index: number }
-  | { readonly kind: 'constant'; readonly value: number }
-  | ({ readonly kind: 'operation' } & TapeOperation);
+import { argumentsOf } from './tape-step.ts';
+import type { ExternalFunction, TapeStep } from './tape-step.ts';
 
 /** An input of a batch: one number for all points, or one for each. */
 export type BatchInput = number | Float64Array;
@@ -40,8 +35,7 @@ export class Tape {
     const slots = new Float64Array(this.steps.length);
     this.steps.forEach((step, i) => {
       if (step.kind === 'input') slots[i] = values[step.index]!;
-      else if (step.kind === 'constant') slots[i] = step.value;
-      else slots[i] = operate(step.name, slots[step.a]!, step.b < 0 ? 0 : slots[step.b]!);
+      else slots[i] = stepValue(step, (slot) => slots[slot]!);
     });
     return Float64Array.from(this.outputs, (slot) => slots[slot]!);
   }
@@ -72,11 +66,20 @@ export class Tape {
   }
 }
 
-/** A step that differs between the points, with the arrays it works on. */
+/** The value of a step that is not an input, from those of its arguments. */
+function stepValue(
+  step: Exclude<TapeStep, { kind: 'input' }>,
+  valueOf: (slot: number) => number,
+): number {
+  if (step.kind === 'constant') return step.value;
+  if (step.kind === 'external') return step.find(Float64Array.from(step.slots, valueOf));
+  return operate(step.name, valueOf(step.a), step.b < 0 ? 0 : valueOf(step.b));
+}
+
+/** A step that differs between the points, with the arrays of its arguments and the one that it fills. */
 interface Run {
   readonly step: TapeStep;
-  readonly a: Float64Array;
-  readonly b: Float64Array;
+  readonly args: readonly Float64Array[];
   readonly target: Float64Array;
 }
 
@@ -104,15 +107,13 @@ function planBatch(
       registers.push(new Float64Array(BLOCK).fill(value));
       return;
     }
-    const [a, b] = step.kind === 'operation' ? [step.a, step.b] : [-1, -1];
-    for (const argument of new Set([a, b])) {
-      if (argument >= 0 && lastUse[argument] === i && uniform[argument] === null) {
-        free.push(registers[argument]!);
-      }
+    const slots = argumentsOf(step);
+    for (const slot of new Set(slots)) {
+      if (lastUse[slot] === i && uniform[slot] === null) free.push(registers[slot]!);
     }
     const target = free.pop() ?? new Float64Array(BLOCK);
     registers.push(target);
-    runs.push({ step, a: registers[a] ?? target, b: registers[b] ?? target, target });
+    runs.push({ step, args: slots.map((slot) => registers[slot]!), target });
   });
   return { uniform, registers, runs };
 }
@@ -123,14 +124,12 @@ function uniformValues(
 ): (number | null)[] {
   const uniform: (number | null)[] = [];
   for (const step of steps) {
-    if (step.kind === 'constant') uniform.push(step.value);
-    else if (step.kind === 'input') {
+    if (step.kind === 'input') {
       const value = values[step.index]!;
       uniform.push(typeof value === 'number' ? value : null);
     } else {
-      const a = uniform[step.a]!;
-      const b = step.b < 0 ? 0 : uniform[step.b]!;
-      uniform.push(a === null || b === null ? null : operate(step.name, a, b));
+      const isUniform = argumentsOf(step).every((slot) => uniform[slot] !== null);
+      uniform.push(isUniform ? stepValue(step, (slot) => uniform[slot]!) : null);
     }
   }
   return uniform;
@@ -140,18 +139,31 @@ function uniformValues(
 function lastUses(steps: readonly TapeStep[], outputs: readonly number[]): number[] {
   const last = steps.map((_, i) => i);
   steps.forEach((step, i) => {
-    if (step.kind !== 'operation') return;
-    last[step.a] = i;
-    if (step.b >= 0) last[step.b] = i;
+    for (const slot of argumentsOf(step)) last[slot] = i;
   });
   for (const slot of outputs) last[slot] = Infinity;
   return last;
 }
 
 function runStep(run: Run, values: readonly BatchInput[], from: number, size: number): void {
-  const { step, a, b, target } = run;
-  if (step.kind === 'operation') operateArrays(step.name, a, b, target, size);
+  const { step, args, target } = run;
+  if (step.kind === 'operation') operateArrays(step.name, args[0], args[1] ?? target, target, size);
+  else if (step.kind === 'external') findEach(step.find, args, target, size);
   else if (step.kind === 'input') {
     target.set((values[step.index] as Float64Array).subarray(from, from + size));
+  }
+}
+
+/** `target` may be one of the arguments: each point reads only its own place. */
+function findEach(
+  find: ExternalFunction,
+  args: readonly Float64Array[],
+  target: Float64Array,
+  size: number,
+): void {
+  const values = new Float64Array(args.length);
+  for (let i = 0; i < size; i++) {
+    for (let k = 0; k < args.length; k++) values[k] = args[k]![i]!;
+    target[i] = find(values);
   }
 }
