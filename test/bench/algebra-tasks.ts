@@ -157,7 +157,7 @@ function exponentRows(width: number, degree: number): number[][] {
 }
 
 /** A polynomial with all monomials up to a total degree and coefficients in −9 … 9. */
-export function densePolynomial(
+function densePolynomial(
   generators: readonly Generator[],
   degree: number,
   seed: number,
