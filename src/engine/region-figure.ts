@@ -1,5 +1,7 @@
+import { generatorsOfRatio, generatorsWithin } from '../algebra/index.ts';
 import {
   compileConditions,
+  FOUND_NUMBERS,
   expandStable,
   NO,
   YES,
@@ -38,6 +40,8 @@ import { sampleBox } from './tolerance.ts';
 
 /** Samples on each side of a gain plane. */
 const REGION_SAMPLES = 400;
+/** The same where a condition is searched for at every sample, such as a margin. */
+const SEARCHED_SAMPLES = 64;
 
 /** A gain plane: where conditions hold at nominal values and over the tolerances. Dragging its point redraws nothing else. */
 export function regionContent(node: DrawStatement, sources: FigureSources): FigureContent {
@@ -151,10 +155,13 @@ function traceOf(
       regionPart(subject, node.where[index], [x, y], sources),
     );
     const requests = conditions.map((part) => regionCondition(part, x, y, node, sources.numbers));
+    const samples = conditions.some((part) => isSearched(part.condition))
+      ? SEARCHED_SAMPLES
+      : REGION_SAMPLES;
     const corners = Math.max(...requests.map((request) => request.tolerance.length));
     const trace = traceRegion({
-      x: { from: x.axis.from, to: x.axis.to, n: REGION_SAMPLES },
-      y: { from: y.axis.from, to: y.axis.to, n: REGION_SAMPLES },
+      x: { from: x.axis.from, to: x.axis.to, n: samples },
+      y: { from: y.axis.from, to: y.axis.to, n: samples },
       conditions: requests,
     });
     const words = `The area over the tolerances holds at ${corners} corners of them: looked at, not proved.`;
@@ -179,6 +186,23 @@ function regionPart(
     'not-a-condition',
     `\`${formatExpression(expression)}\` cannot bound a region: ${why}.`,
   );
+}
+
+/** Whether a condition holds a number that is searched for. */
+function isSearched(condition: Condition): boolean {
+  switch (condition.kind) {
+    case 'compare':
+      return [condition.left, condition.right]
+        .flatMap((side) => generatorsWithin(generatorsOfRatio(side)))
+        .some((g) => g.kind === 'function' && FOUND_NUMBERS.has(g.name));
+    case 'all':
+    case 'any':
+      return condition.of.some(isSearched);
+    case 'not':
+      return isSearched(condition.of);
+    default:
+      return false;
+  }
 }
 
 /** Corner sets of the tolerances that the area is checked at, at the most. */
