@@ -4,6 +4,7 @@ import {
   addScaled,
   delayedRational,
   multiply,
+  numberOf,
   squaredMagnitude,
   sumAt,
   transferAt,
@@ -14,12 +15,6 @@ import { unwrappedPhase } from './phase-curve.ts';
 const MANY_DELAYS =
   'the dead times stand in several terms of the transfer function, and this figure is found for one dead time';
 const AT_POLE = 'there is a pole at this frequency';
-
-/** The number that an argument without s is. */
-function numberOf({ num, den }: NumericTransfer): number {
-  const last = (terms: NumericTransfer['num']): number => terms[0]?.coefficients.at(-1) ?? 0;
-  return last(num) / last(den);
-}
 
 /** |H(jω)| */
 export function gainAt(transfer: NumericTransfer, frequency: NumericTransfer): Finding {

@@ -114,3 +114,8 @@ export function transferAt({ num, den }: NumericTransfer, w: number): Complex | 
     im: (top.im * bottom.re - top.re * bottom.im) / square,
   };
 }
+
+/** The number that a function free of s is. */
+export function numberOf({ num, den }: NumericTransfer): number {
+  return (num[0]?.coefficients.at(-1) ?? 0) / (den[0]?.coefficients.at(-1) ?? 0);
+}

@@ -17,7 +17,13 @@ import {
   type ParameterKind,
   type WorksheetFunction,
 } from '../functions/index.ts';
-import { formatExpression, nearestName, type Call, type Expression } from '../language/index.ts';
+import {
+  childrenOf,
+  formatExpression,
+  nearestName,
+  type Call,
+  type Expression,
+} from '../language/index.ts';
 import { formulaValue, kindInWords } from './arithmetic.ts';
 import { constantOf } from './constants.ts';
 import { angularOf, cyclesIn } from './cycles.ts';
@@ -55,6 +61,7 @@ function withInherited(value: Value, args: readonly Argument[]): Value {
 function valuesIn(arg: Argument): readonly Value[] {
   switch (arg.kind) {
     case 'value':
+    case 'band':
       return [arg.value];
     case 'signal':
       return [arg.signal];
@@ -174,6 +181,8 @@ function readArgument(
       return rowsArgument(arg, scope, meanings);
     case 'signal':
       return { kind: 'signal', signal: signalArgument(arg, spec, call, scope, meanings) };
+    case 'band':
+      return bandArgument(parameter, arg, spec, scope, meanings);
     case 'frequency':
     case 'angular frequency':
       return { kind: 'value', value: frequencyArgument(parameter, arg, spec, scope, meanings) };
@@ -188,6 +197,7 @@ function readArgument(
 /** Kinds of arguments that do not depend on s. */
 const FREE_OF_S: ReadonlySet<ParameterKind> = new Set([
   'parameter',
+  'band',
   'frequency',
   'angular frequency',
 ]);
@@ -230,6 +240,27 @@ function frequencyArgument(
   if (value.kind !== 'formula') return value;
   const cycles = cyclesIn(arg, meanings) ?? (parameter.takes === 'frequency' ? 1 : 0);
   return cycles === 1 ? { ...value, ratio: angularOf(value.ratio) } : value;
+}
+
+/** A band in % (or a bare number) is relative; one with a unit is a quantity. */
+function bandArgument(
+  parameter: Parameter,
+  arg: Expression,
+  spec: WorksheetFunction,
+  scope: Scope,
+  meanings: Meanings,
+): Argument {
+  const value = valueArgument(parameter, arg, spec, scope, meanings);
+  if (value.kind !== 'formula') return { kind: 'value', value };
+  return { kind: 'band', value, isRelative: isPlainNumber(arg, meanings) };
+}
+
+function isPlainNumber(arg: Expression, meanings: Meanings): boolean {
+  if (arg.kind === 'quantity') return arg.unit === '%' || arg.unit === '';
+  const parts = childrenOf(arg.kind === 'name' ? (meanings.formulaOf(arg.name) ?? arg) : arg);
+  if (arg.kind === 'name' && parts.length === 0)
+    return /^%?$/.test(meanings.unitTextOf(arg.name) ?? '');
+  return parts.every((part) => isPlainNumber(part, meanings));
 }
 
 function wrongKind(arg: Expression, spec: WorksheetFunction, wanted: string, value: Value): never {

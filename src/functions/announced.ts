@@ -1,5 +1,5 @@
 import { refuse } from '../base/index.ts';
-import { one, slot, type Parameter, type WorksheetFunction } from './spec.ts';
+import { one, type Parameter, type WorksheetFunction } from './spec.ts';
 
 /** A function of the language that is not built yet: refused in words, never guessed. */
 function announced(
@@ -23,11 +23,6 @@ const x = one('x', 'signal');
 
 /** Functions that the language names and that are refused until they are built. */
 export const ANNOUNCED: readonly WorksheetFunction[] = [
-  announced('peak', 'The largest magnitude of a signal.', x),
-  announced('peak_time', 'The time of the largest magnitude.', x),
-  announced('overshoot', 'The overshoot relative to the final value.', x),
-  announced('rise_time', 'The time from 10 % to 90 % of the final value.', x),
-  announced('settling_time', 'The last entry into a band about the final value.', x, slot('band')),
   announced('budget', 'The error budget of a signal.', x),
   announced('influence', 'How each assumption moves a result.', one('x', 'any')),
   announced(

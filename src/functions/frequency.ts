@@ -1,12 +1,6 @@
-import { functionOf, laplace, ratioOf } from '../algebra/index.ts';
-import { formulaAnswer, ratioOfArgument } from './answer.ts';
-import {
-  frequencySlot,
-  one,
-  type Argument,
-  type UnitRule,
-  type WorksheetFunction,
-} from './spec.ts';
+import { ratioOfArgument } from './answer.ts';
+import { foundAnswer } from './found-answer.ts';
+import { frequencySlot, one, type UnitRule, type WorksheetFunction } from './spec.ts';
 
 const MARGINS =
   'K. J. Åström, R. M. Murray, Feedback Systems, Princeton University Press, 2008, section 9.3.';
@@ -28,14 +22,9 @@ function frequencyFigure(
     parameters: [one('H', 'formula')],
     unit,
     availability: 'now',
-    evaluate: (args) => foundAnswer(name, args),
+    evaluate: (args) => foundAnswer(name, args.map(ratioOfArgument)),
     ...more,
   };
-}
-
-/** The formula that stands for a number found from its arguments, in which s is bound. */
-function foundAnswer(name: string, args: readonly Argument[]) {
-  return formulaAnswer(ratioOf(functionOf(name, args.map(ratioOfArgument), laplace)));
 }
 
 function ofLoopGain(name: string, summary: string, unit: UnitRule): WorksheetFunction {

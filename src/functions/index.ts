@@ -27,6 +27,7 @@ import { solve } from './solve.ts';
 import type { WorksheetFunction } from './spec.ts';
 import { stable } from './stable.ts';
 import { systemType } from './system-type.ts';
+import { TIME_FIGURES } from './time-figures.ts';
 import { TRANSFER_PARTS } from './transfer-parts.ts';
 
 export * from './spec.ts';
@@ -46,6 +47,7 @@ const LIST: readonly WorksheetFunction[] = [
   amplitude,
   ...NOISE,
   ...FREQUENCY,
+  ...TIME_FIGURES,
   systemType,
   errorConstants,
   ...TRANSFER_PARTS,

@@ -3,6 +3,7 @@ import type { Generator, Ratio, Sign } from '../algebra/index.ts';
 import type {
   ClosedLoop,
   Condition,
+  FormulaValue,
   LoopRow,
   SignalValue,
   StabilityBlock,
@@ -54,6 +55,8 @@ export type ParameterKind =
   | 'relation'
   | 'limit'
   | 'matrix'
+  /** A band about a final value: in % of it, or a quantity. */
+  | 'band'
   /** Rows of entries, `a, b | c, d`. */
   | 'rows'
   | 'any';
@@ -83,6 +86,11 @@ export function frequencySlot(
   unitless: 'frequency' | 'angular frequency',
 ): Parameter {
   return { name, takes: unitless, count: 'one', slot: true };
+}
+
+/** A frequency that may be left out. */
+export function optionalFrequency(name: string): Parameter {
+  return { name, takes: 'frequency', count: 'optional', slot: true };
 }
 
 /** An argument that may be left out. */
@@ -121,6 +129,7 @@ export type UnitRule =
 export type Argument =
   | { readonly kind: 'value'; readonly value: Value }
   | { readonly kind: 'signal'; readonly signal: SignalValue }
+  | { readonly kind: 'band'; readonly value: FormulaValue; readonly isRelative: boolean }
   | { readonly kind: 'loop'; readonly loop: LoopMeaning }
   | { readonly kind: 'name'; readonly name: string; readonly generator: Generator }
   | {
