@@ -1,8 +1,8 @@
 import type { Finding } from './finding.ts';
 import { bandwidthOf, gainAt, peakGain, phaseAt } from './frequency-figures.ts';
 import type { NumericTransfer } from './frequency-polynomials.ts';
-import { overshootOf, peakOf, peakTimeOf, riseTimeOf, settlingTimeOf } from './time-figures.ts';
 import { delayMargin, gainCrossover, gainMargin, phaseMargin } from './margins.ts';
+import { noiseBandwidthIn } from './noise-integral.ts';
 
 /**
  * A function of a worksheet whose value is found from the numbers of its arguments, which may be functions of s. In
@@ -24,9 +24,5 @@ export const FOUND_NUMBERS: ReadonlyMap<string, FoundNumber> = new Map<string, F
   ['crossover', { isMagnitude: true, find: gainCrossover }],
   ['bandwidth', { isMagnitude: true, find: bandwidthOf }],
   ['peak_gain', { isMagnitude: true, find: peakGain }],
-  ['peak', { isMagnitude: true, find: peakOf }],
-  ['peak_time', { isMagnitude: true, find: peakTimeOf }],
-  ['overshoot', { isMagnitude: true, find: overshootOf }],
-  ['rise_time', { isMagnitude: true, find: riseTimeOf }],
-  ['settling_time', { isMagnitude: true, find: settlingTimeOf }],
+  ['noise_bandwidth', { isMagnitude: true, find: noiseBandwidthIn }],
 ]);

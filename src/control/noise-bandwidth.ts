@@ -75,7 +75,7 @@ function closedForm(transfer: Ratio, budget?: Budget): Ratio {
 
 /** The bandwidth as a function of the transfer function, to be found in numbers. */
 function kernel(transfer: Ratio): Ratio {
-  return ratioOf(functionOf('noise_bandwidth', [transfer]));
+  return ratioOf(functionOf('noise_bandwidth', [transfer], laplace));
 }
 
 function shortClosedForm(transfer: Ratio): Ratio | null {
@@ -108,4 +108,13 @@ export function noiseBandwidth(transfer: Ratio, budget?: Budget): Ratio {
   if (!closed) return kernel(transfer);
   certifyNoiseBandwidth(transfer, closed);
   return closed;
+}
+
+/**
+ * ∫ |H(j2πf)|² df over a band of frequencies in Hz, as the kernel `noise_bandwidth(H, from, to)`, which is found in
+ * numbers.
+ */
+export function noiseBandwidthBetween(transfer: Ratio, from: Ratio, to: Ratio): Ratio {
+  if (isZeroRatio(transfer)) return zeroRatio;
+  return ratioOf(functionOf('noise_bandwidth', [transfer, from, to], laplace));
 }

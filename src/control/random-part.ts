@@ -2,9 +2,7 @@ import {
   addRatios,
   isZeroRatio,
   mulRatios,
-  ratioFromRational,
   ratioKey,
-  rational,
   signOfRatio,
   sumRatios,
   zeroRatio,
@@ -12,14 +10,13 @@ import {
 import type { Ratio } from '../algebra/index.ts';
 import { isRefusal, type Refusal } from '../base/index.ts';
 import { allOf, compare } from './conditions.ts';
-import { finalValue, noValue, plainValue, settledUnder } from './final-value.ts';
+import { noValue, plainValue, settledUnder } from './final-value.ts';
 import { squaredGain } from './frequency-point.ts';
-import { rootOfSquare } from './magnitude.ts';
-import { letsWhiteNoiseThrough, noiseBandwidth } from './noise-bandwidth.ts';
+import { letsWhiteNoiseThrough, noiseBandwidth, noiseBandwidthBetween } from './noise-bandwidth.ts';
 import { powerOfS } from './s-polynomial.ts';
 import { stable } from './stability.ts';
 import type { Condition, FormulaValue, NoValue, SignalTerm, SignalValue } from './values.ts';
-import { apart, linesOf, squaredAmplitude, steadyUnder, type Knowledge } from './vibration.ts';
+import type { Knowledge } from './vibration.ts';
 
 /** One white noise with all its paths to a signal. */
 interface NoisePath {
@@ -71,18 +68,25 @@ function stationaryUnder(
 /** Densities are one-sided everywhere, which is said wherever one goes in or comes out. */
 const ONE_SIDED = 'Power spectral densities are one-sided, per Hz.';
 
+/** A band of frequencies in Hz. */
+export interface Band {
+  readonly from: Ratio;
+  readonly to: Ratio;
+}
+
 /**
  * The variance of the random part of a signal, Σ S · ∫₀^∞ |H(j2πf)|² df over the independent noises, each of one-sided
  * density S per Hz.
  *
  * No value where it is infinite, with the path named: white noise that does not roll off, an integration, a mode that does
- * not decay. Exact, with symbols as far as `noiseBandwidth` goes; it stands where the blocks are stable.
+ * not decay. Exact, with symbols as far as `noiseBandwidth` goes; it stands where the blocks are stable. Within a `band`
+ * it is found in numbers.
  * Source: see {@link noiseBandwidth}.
  */
-export function varianceOf(x: SignalValue, known: Knowledge): FormulaValue | NoValue {
+export function varianceOf(x: SignalValue, known: Knowledge, band?: Band): FormulaValue | NoValue {
   const paths = noisePaths(x);
   if (paths.length === 0) return plainValue(withNote(x, `No noise acts on ${x.name}.`), zeroRatio);
-  const through = paths.find(({ transfer }) => letsWhiteNoiseThrough(transfer));
+  const through = band ? null : paths.find(({ transfer }) => letsWhiteNoiseThrough(transfer));
   if (through) {
     const reason = `the variance is infinite: white noise at ${through.input} reaches ${x.name} without rolling off at high frequencies`;
     return noValue(x, reason);
@@ -90,10 +94,16 @@ export function varianceOf(x: SignalValue, known: Knowledge): FormulaValue | NoV
   const stationary = stationaryUnder(x, paths, known);
   if ('reason' in stationary) return noValue(x, stationary.reason);
   const variances = paths.map(({ density, transfer }) =>
-    mulRatios(density, noiseBandwidth(transfer, known.budget), known.budget),
+    mulRatios(density, bandwidthIn(transfer, known, band), known.budget),
   );
   const when = allOf([x.when, stationary]);
   return plainValue({ ...withNote(x, ONE_SIDED), when }, sumRatios(variances, known.budget));
+}
+
+function bandwidthIn(transfer: Ratio, { budget }: Knowledge, band?: Band): Ratio {
+  return band
+    ? noiseBandwidthBetween(transfer, band.from, band.to)
+    : noiseBandwidth(transfer, budget);
 }
 
 function withNote({ when, notes }: SignalValue, note: string): Pick<SignalValue, 'when' | 'notes'> {
@@ -122,48 +132,4 @@ export function densityOf(
     sum = addRatios(sum, mulRatios(density, gain, known.budget), known.budget);
   }
   return plainValue({ ...withNote(x, ONE_SIDED), when: allOf([x.when, stationary]) }, sum);
-}
-
-const HALF = ratioFromRational(rational(1n, 2n));
-
-/** The mean square of the sines in a signal, under the conditions that they are steady and of different frequencies. */
-function periodicSquare(x: SignalValue, known: Knowledge): FormulaValue | NoValue | Refusal {
-  const lines = linesOf(x, known);
-  const conditions: Condition[] = [x.when];
-  let sum = zeroRatio;
-  for (const [index, line] of lines.entries()) {
-    const steady = steadyUnder(x, line.terms, known);
-    if ('reason' in steady) return noValue(x, steady.reason);
-    const square = squaredAmplitude(line, known);
-    if (isRefusal(square)) return square.code === 'resonance' ? noValue(x, square.reason) : square;
-    sum = addRatios(sum, mulRatios(HALF, square), known.budget);
-    const before = lines.slice(0, index);
-    conditions.push(steady, ...before.map((one) => apart(one.frequency, line.frequency, known)));
-  }
-  return plainValue({ when: allOf(conditions), notes: x.notes }, sum);
-}
-
-/** The shares of a signal that are neither random nor periodic. */
-function steadyPart(x: SignalValue): SignalValue {
-  return { ...x, terms: x.terms.filter((term) => !term.noise && !term.frequency) };
-}
-
-/**
- * The root mean square of the random and periodic parts of a signal, in the long run.
- *
- * Constant parts do not count, which is said. No value where the signal drifts, or where `varianceOf` or `amplitudeOf` has
- * none.
- */
-export function rmsOf(x: SignalValue, known: Knowledge): FormulaValue | NoValue | Refusal {
-  const rest = finalValue(steadyPart(x), known.signOf, known.budget);
-  if (rest.kind === 'none') return noValue(x, `${x.name} drifts: ${rest.reason}`);
-  const variance = varianceOf(x, known);
-  if (variance.kind === 'none') return variance;
-  const periodic = periodicSquare(x, known);
-  if (isRefusal(periodic) || periodic.kind === 'none') return periodic;
-  const square = addRatios(variance.ratio, periodic.ratio, known.budget);
-  const left = isZeroRatio(rest.ratio) ? [] : ['The constant part is not counted.'];
-  const notes = [...variance.notes, ...left];
-  const when = allOf([variance.when, periodic.when, rest.when]);
-  return plainValue({ when, notes }, rootOfSquare(square, known.signOf, known.budget));
 }

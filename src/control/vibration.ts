@@ -120,7 +120,11 @@ export function steadyUnder(
 ): Condition | { readonly reason: string } {
   const paths = terms.map((term): SignalTerm =>
     term.frequency
-      ? { ...term, transform: divRatios(term.transform, lineTransform(term.frequency)) }
+      ? {
+          ...term,
+          source: 'impulsive',
+          transform: divRatios(term.transform, lineTransform(term.frequency)),
+        }
       : term,
   );
   const settled = settledUnder({ ...x, terms: paths }, signOf, budget);

@@ -1,4 +1,6 @@
 import { describe, expect, test } from 'vitest';
+import { isRefusal } from '../../src/base/index.ts';
+import { integrate } from '../../src/numeric/index.ts';
 import { evaluateCell } from './worksheet.ts';
 
 const MAST = `m is 12 kg
@@ -18,12 +20,13 @@ function numberOf(cell: ReturnType<typeof evaluateCell>, name: string): number {
   return value;
 }
 
-describe('a sine', () => {
-  const atSpring = (f: number): number => {
-    const w = 2 * Math.PI * f;
-    return 4 / Math.hypot(7000 - 12 * w * w, 90 * w);
-  };
+/** The amplitude of x for 4 N at the mast, in m. */
+function atSpring(f: number): number {
+  const w = 2 * Math.PI * f;
+  return 4 / Math.hypot(7000 - 12 * w * w, 90 * w);
+}
 
+describe('a sine', () => {
   test('has an amplitude at its frequency in Hz', () => {
     const cell = mast('case run of mast\n  F = sine(F1, f1)\na = amplitude(run.x, f1)');
     expect(cell.problems).toEqual([]);
@@ -215,6 +218,54 @@ v = variance(wind.y)`);
       'The noise in it has no transform and is left out.',
     );
     expect(cell.result('draw').notes).toContain('The noise in gale.x is left out.');
+  });
+
+  test('in a band has an rms that agrees with the integral of its density', () => {
+    const cell = mast(
+      'S is 0.5 N^2/Hz\ncase gale of mast\n  F = noise(S) + step(3 N)\na = rms(gale.x, 1 Hz, 5 Hz)\nb = rms(gale.x, 1 Hz, 10 pi (1 [rad/s]))',
+    );
+    expect(cell.problems).toEqual([]);
+    const density = (f: number): number => (0.5 * atSpring(f) ** 2) / 16;
+    const integral = integrate(density, 1, 5);
+    if (isRefusal(integral)) throw new Error(integral.reason);
+    expect(numberOf(cell, 'a')).toBeCloseTo(Math.sqrt(integral.value), 12);
+    expect(numberOf(cell, 'b')).toBeCloseTo(numberOf(cell, 'a'), 12);
+    expect(cell.result('a').unit).toBe('m');
+  });
+
+  test('in bands adds up to the whole, a sine counting in the one that holds it', () => {
+    const cell = mast(
+      'S is 0.5 N^2/Hz\ncase gale of mast\n  F = noise(S) + sine(F1, f1)\na = rms(gale.x)\nb = rms(gale.x, 0 Hz, 6 Hz)\nd = rms(gale.x, 6 Hz, 2 kHz)\ng = rms(gale.x, 6 Hz, f1)',
+    );
+    expect(cell.problems).toEqual([]);
+    const [a, b, d, g] = ['a', 'b', 'd', 'g'].map((name) => numberOf(cell, name));
+    expect(Math.hypot(b, d)).toBeCloseTo(a, 8);
+    expect(g).toBeGreaterThan(atSpring(8) / Math.SQRT2);
+  });
+
+  test('behind many poles is found from the numbers, as the closed form would be', () => {
+    const cell = evaluateCell(`T is 0.1 s
+T is positive
+Td is 20 ms
+a = noise_bandwidth(1/(T s + 1)^7)
+b = noise_bandwidth(delay(Td)/(T s + 1))
+require noise_bandwidth(1/(T s + 1)^7) <= 1 Hz # R-1`);
+    expect(cell.problems).toEqual([]);
+    // I. S. Gradshteyn, I. M. Ryzhik, 7th ed., 3.249.1: binomial(2n−2, n−1)/2^(2n−1), halved (from memory).
+    expect(numberOf(cell, 'a')).toBeCloseTo(924 / 2 ** 13 / 2 / 0.1, 12);
+    expect(numberOf(cell, 'b')).toBeCloseTo(2.5, 12);
+    expect(cell.requirement('R-1').verdict).toBe('met');
+  });
+
+  test('in a band with one end or from high to low is refused in words', () => {
+    const cell = mast(
+      'case gale of mast\n  F = noise(1 N^2/Hz)\na = rms(gale.x, 1 Hz)\nb = rms(gale.x, 5 Hz, 1 Hz)',
+    );
+    expect(cell.problems).toEqual([
+      'error at ‹rms(gale.x, 1 Hz)›: a band has two ends, f1 and f2.',
+    ]);
+    expect(cell.result('b').value).toBeNull();
+    expect(cell.result('b').notes.join(' ')).toContain('a band runs from a frequency, 0 or above');
   });
 
   test('of a formula in s is refused with the way out', () => {
