@@ -1,6 +1,7 @@
 import type { Finding } from './finding.ts';
 import { bandwidthOf, gainAt, peakGain, phaseAt } from './frequency-figures.ts';
 import type { NumericTransfer } from './frequency-polynomials.ts';
+import { overshootOf, peakOf, peakTimeOf, riseTimeOf, settlingTimeOf } from './time-figures.ts';
 import { delayMargin, gainCrossover, gainMargin, phaseMargin } from './margins.ts';
 import { noiseBandwidthIn } from './noise-integral.ts';
 
@@ -25,4 +26,9 @@ export const FOUND_NUMBERS: ReadonlyMap<string, FoundNumber> = new Map<string, F
   ['bandwidth', { isMagnitude: true, find: bandwidthOf }],
   ['peak_gain', { isMagnitude: true, find: peakGain }],
   ['noise_bandwidth', { isMagnitude: true, find: noiseBandwidthIn }],
+  ['peak', { isMagnitude: true, find: peakOf }],
+  ['peak_time', { isMagnitude: true, find: peakTimeOf }],
+  ['overshoot', { isMagnitude: true, find: overshootOf }],
+  ['rise_time', { isMagnitude: true, find: riseTimeOf }],
+  ['settling_time', { isMagnitude: true, find: settlingTimeOf }],
 ]);

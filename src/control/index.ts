@@ -42,6 +42,8 @@ export type { CompiledRatio, CompiledRatios, Resolve } from './compile.ts';
 export { compileFindings, foundMultiple } from './found-in.ts';
 export type { CompiledFinding } from './found-in.ts';
 export type { Crossing, Finding } from './finding.ts';
+export { motionTransform } from './motion-transform.ts';
+export type { MotionTransform } from './motion-transform.ts';
 export { FOUND_NUMBERS } from './found-numbers.ts';
 export type { FoundNumber } from './found-numbers.ts';
 export { compileConditions, NO, UNDECIDED, YES } from './condition-batch.ts';
