@@ -39,9 +39,9 @@ const MOST_CORNERS = 1024;
 const SAMPLES = 2000;
 const SEED = 20260101;
 /** Work that may be spent on proving that a formula is monotone. */
-const PROOF_BUDGET = 400_000;
+const PROOF_BUDGET = 50_000;
 /** Work that may be spent on one sign over the box, where the signs of the symbols leave it open. */
-const BOX_BUDGET = 20_000;
+const BOX_BUDGET = 10_000;
 
 /**
  * The points at which a quantity is judged over its tolerances: the corners alone where it is proved monotone in every
