@@ -5,9 +5,7 @@ import {
   isZeroRatio,
   mulRatios,
   oneRatio,
-  pi,
   ratioFromRational,
-  ratioOf,
   rational,
   subRatios,
   zeroRatio,
@@ -19,9 +17,15 @@ import { finalValue, noValue, plainValue } from './final-value.ts';
 import { rootOfSquare } from './magnitude.ts';
 import { varianceOf, type Band } from './random-part.ts';
 import type { Condition, FormulaValue, NoValue, SignalValue } from './values.ts';
-import { apart, linesOf, squaredAmplitude, steadyUnder, type Knowledge } from './vibration.ts';
+import {
+  apart,
+  linesOf,
+  squaredAmplitude,
+  steadyUnder,
+  TURN,
+  type Knowledge,
+} from './vibration.ts';
 
-const TURN = mulRatios(ratioFromRational(rational(2n)), ratioOf(pi));
 const HALF = ratioFromRational(rational(1n, 2n));
 
 /** The mean square of the sines in a signal, under the conditions that they are steady and of different frequencies. */
@@ -86,7 +90,8 @@ export function rmsOf(
   if (isRefusal(periodic) || periodic.kind === 'none') return periodic;
   const square = addRatios(variance.ratio, periodic.ratio, known.budget);
   const left = isZeroRatio(rest.ratio) ? [] : ['The constant part is not counted.'];
-  const notes = [...variance.notes, ...left];
+  const isSilent = !x.terms.some((term) => term.noise) && !isZeroRatio(periodic.ratio);
+  const notes = [...(isSilent ? x.notes : variance.notes), ...left];
   const when = allOf([variance.when, periodic.when, rest.when]);
   return plainValue({ when, notes }, rootOfSquare(square, known.signOf, known.budget));
 }

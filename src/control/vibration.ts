@@ -32,6 +32,9 @@ import { rootOfSquare } from './magnitude.ts';
 import { stable } from './stability.ts';
 import type { Condition, FormulaValue, NoValue, SignalTerm, SignalValue } from './values.ts';
 
+/** One turn, 2 π rad. */
+export const TURN: Ratio = mulRatios(ratioFromRational(rational(2n)), ratioOf(pi));
+
 /** What is known of the symbols in a signal. */
 export interface Knowledge {
   readonly signOf: SignOf;
@@ -109,7 +112,7 @@ export function apart(a: Ratio, b: Ratio, { open }: Knowledge): Condition {
   const [one, other] = [open(a), open(b)];
   if (equalRatios(one, other)) return FALSE;
   const isNumeric = symbolsOfRatio(subRatios(one, other)).length === 0;
-  return isNumeric ? TRUE : compare(a, '!=', b);
+  return isNumeric ? TRUE : compare(divRatios(a, TURN), '!=', divRatios(b, TURN));
 }
 
 /** What must decay for the lines of a signal to be steady, or why they never are. */
@@ -182,8 +185,6 @@ function withoutLine(
       : `No sine at this frequency acts on ${x.name}; its lines are at ${places}.`;
   return plainValue({ when: x.when, notes: [...x.notes, note] }, zeroRatio);
 }
-
-const TURN = mulRatios(ratioFromRational(rational(2n)), ratioOf(pi));
 
 /** `f1` or `2 Hz` where that is short, otherwise the angular frequency. */
 function frequencyText(frequency: Ratio, write: Write): string {

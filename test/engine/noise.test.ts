@@ -71,6 +71,16 @@ a = amplitude(hum.q, f1)`);
     expect(numberOf(cell, 'a')).toBe(0);
   });
 
+  test('beside another one has an amplitude where their frequencies differ, which is said', () => {
+    const cell = mast(
+      'case run of mast\n  F = sine(F1, f1) + sine(1 N, 3 Hz)\na = amplitude(run.x, f1)\nr = rms(run.x)',
+    );
+    expect(cell.result('a').notes).toEqual(['Provided that not (3 = f1).']);
+    expect(cell.result('r').notes).toEqual(['Provided that not (f1 = 3).']);
+    const square = atSpring(8) ** 2 + (atSpring(3) / 4) ** 2;
+    expect(numberOf(cell, 'r')).toBeCloseTo(Math.sqrt(square / 2), 12);
+  });
+
   test('does not settle, and is left out of the constant part', () => {
     const cell = mast(
       'case run of mast\n  F = step(14 N) + sine(F1, f1)\na = final(run.x)\nb = final(constant(run.x))',
