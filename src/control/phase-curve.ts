@@ -54,13 +54,13 @@ export function unwrappedPhase(transfer: DelayedRational, w: number): number {
 function* gridFor({ zeros, poles, delay }: PhaseCurve): Generator<number> {
   const roots = [...zeros, ...poles];
   const sizes = [...roots.map(({ re, im }) => Math.hypot(re, im)), 1 / delay];
-  let w = Math.min(...sizes) * 1e-3;
+  let w = Math.min(...sizes) * 1e-2;
   for (let k = 0; k < MOST_STEPS; k++) {
     yield w;
     const near = roots.map(
-      ({ re, im }) => Math.max(Math.hypot(re, w - Math.abs(im)), 1e-9 * w) / 4,
+      ({ re, im }) => Math.max(Math.hypot(re, w - Math.abs(im)), 1e-9 * w) / 3,
     );
-    w += Math.min(w / 20, 0.2 / delay, ...near);
+    w += Math.min(w / 10, 0.5 / delay, ...near);
   }
 }
 
