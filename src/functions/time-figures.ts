@@ -1,9 +1,9 @@
-import { zeroRatio, type Ratio } from '../algebra/index.ts';
+import { isZeroRatio, zeroRatio, type Ratio } from '../algebra/index.ts';
 import { isRefusal } from '../base/index.ts';
 import { motionTransform } from '../control/index.ts';
-import { signalOf } from './answer.ts';
+import { ratioOfArgument, signalOf } from './answer.ts';
 import { foundAnswer } from './found-answer.ts';
-import { one, type Argument, type UnitRule, type WorksheetFunction } from './spec.ts';
+import { one, optional, type Argument, type UnitRule, type WorksheetFunction } from './spec.ts';
 
 const STEP = 'K is 4 1/s^2\na is 2 1/s\nK, a are positive\n';
 const SIGNAL = 'K/(s (s^2 + a s + K))';
@@ -34,10 +34,11 @@ function timeFigure(
   };
 }
 
-/** The band, and whether it is relative to the final value. */
-function bandIn([, band]: readonly Argument[]): readonly Ratio[] {
+/** The band, and a 0 where it is not relative to the final value: as typed, or said by its unit. */
+function bandIn([, band, relative]: readonly Argument[]): readonly Ratio[] {
   if (band?.kind !== 'band') return [];
-  return band.isRelative ? [band.value.ratio] : [band.value.ratio, zeroRatio];
+  const isRelative = relative ? !isZeroRatio(ratioOfArgument(relative)) : band.isRelative;
+  return isRelative ? [band.value.ratio] : [band.value.ratio, zeroRatio];
 }
 
 /** Figures of signals over time. */
@@ -52,10 +53,14 @@ export const TIME_FIGURES: readonly WorksheetFunction[] = [
   timeFigure('rise_time', 'The time from 10 % to 90 % of the final value.', 'time'),
   timeFigure(
     'settling_time',
-    'The last entry into a band about the final value, in % of it or as a quantity.',
+    'The last entry into a band about the final value, in % of it or as a quantity (a number without a unit is one where 0 follows it).',
     'time',
     {
-      parameters: [one('x', 'signal'), { ...one('band', 'band'), slot: true }],
+      parameters: [
+        one('x', 'signal'),
+        { ...one('band', 'band'), slot: true },
+        optional('relative', 'parameter'),
+      ],
       example: `${STEP}settling_time(${SIGNAL}, 2 %)`,
     },
   ),

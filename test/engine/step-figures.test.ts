@@ -76,6 +76,15 @@ overshoot(kick.theta)`);
     expect(cell.problems).toEqual([]);
   });
 
+  test('with a band in a unit is written so that it is read again', () => {
+    const kick = `${DRIVE}case kick of az\n  w = impulse(20 N m s)\n`;
+    const first = evaluateCell(`${kick}x = settling_time(kick.theta, 0.1 mrad)`).result('x');
+    const again = evaluateCell(`${kick}x = ${first.formula}`);
+    expect(again.problems).toEqual([]);
+    expect(again.result('x').value).toBe(first.value);
+    expect(first.value).toBeGreaterThan(0.5);
+  });
+
   test('that grows or keeps moving is refused with the reason', () => {
     const cell = evaluateCell(`${DRIVE}case run of az
   w = ramp(3 N m/s)
