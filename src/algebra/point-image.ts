@@ -48,13 +48,3 @@ export function gatherPowers(
   }
   return trimmed(coefficients);
 }
-
-/** The univariate image of p in `main` with the other generators at a point. */
-export function imageAt(
-  p: Polynomial,
-  main: Generator,
-  point: Point,
-  field: PrimeField,
-): PrimePolynomial {
-  return gatherPowers(termValues(p, point, field, main), exponentsIn(p, main), field);
-}

@@ -63,7 +63,8 @@ export function initialValue(x: SignalValue): FormulaValue | NoValue {
     if (term.source === 'random')
       return noValue(x, `the noise in ${term.input} has no initial value`);
     const limit = limitAtInfinity(term.transform);
-    if (limit === 'impulse') return noValue(x, `an impulse at t = 0, from ${term.input || 'the transform'}`);
+    if (limit === 'impulse')
+      return noValue(x, `an impulse at t = 0, from ${term.input || 'the transform'}`);
     sum = addRatios(sum, limit);
   }
   return plainValue(x, sum);

@@ -204,7 +204,7 @@ function relationNumbers(
   );
   const inUnit = (si: number): number => (unit ? valueIn(si, unit) : si);
   const finite = (number: number): number | null => (Number.isFinite(number) ? number : null);
-  const ends = [left[0], evaluated.exists[worst] ? left[worst] : NaN].map(inUnit);
+  const ends = [0, worst].map((at) => inUnit(evaluated.exists[at] ? left[at] : NaN));
   return {
     nominal: finite(ends[0]),
     worst: finite(ends[1]),

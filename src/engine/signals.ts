@@ -96,7 +96,7 @@ export function transferOf(
   const transfer = demand(transferFunction(loop.closed, input, signal), to.span);
   const note = hiddenNote(transfer.hidden, write);
   return formulaValue(mulRatios(transfer.ratio, factor), {
-    hidden: transfer.hidden,
+    hidden: transfer.cancelled,
     origin: 'transfer',
     when,
     notes: note ? [note] : [],

@@ -1,4 +1,5 @@
-import { ratioOfArgument } from './answer.ts';
+import { ALWAYS, stable, type FormulaValue } from '../control/index.ts';
+import { ratioOfArgument, valueOf } from './answer.ts';
 import { foundAnswer } from './found-answer.ts';
 import { frequencySlot, one, type UnitRule, type WorksheetFunction } from './spec.ts';
 
@@ -27,11 +28,28 @@ function frequencyFigure(
   };
 }
 
-function ofLoopGain(name: string, summary: string, unit: UnitRule): WorksheetFunction {
+function ofLoopGain(
+  name: string,
+  summary: string,
+  unit: UnitRule,
+  more: Partial<WorksheetFunction> = {},
+): WorksheetFunction {
   return frequencyFigure(name, summary, unit, {
     source: MARGINS,
     example: `${LOOP}${name}(L)`,
     parameters: [one('L', 'formula')],
+    ...more,
+  });
+}
+
+/** A margin exists where the closed loop is stable, the modes that cancelled in the loop gain included. */
+function margin(name: string, summary: string, unit: UnitRule): WorksheetFunction {
+  return ofLoopGain(name, summary, unit, {
+    evaluate: ([loopGain]) => {
+      const { ratio, hidden } = valueOf(loopGain) as FormulaValue;
+      const when = hidden ? stable([{ signals: [], polynomial: hidden }]) : ALWAYS;
+      return foundAnswer(name, [ratio], { when });
+    },
   });
 }
 
@@ -51,17 +69,17 @@ export const FREQUENCY: readonly WorksheetFunction[] = [
     'angle',
     { ...atFrequency, example: `${TRANSFER}phase(H, 2 rad/s)` },
   ),
-  ofLoopGain(
+  margin(
     'gain_margin',
     'The factor of the gain, nearest 1, that brings the closed loop to its limit; every crossing is listed.',
     'number',
   ),
-  ofLoopGain(
+  margin(
     'phase_margin',
     'The smallest angle between the loop gain and −1 where its magnitude is 1; every crossing is listed.',
     'angle',
   ),
-  ofLoopGain(
+  margin(
     'delay_margin',
     'The smallest further dead time that brings the closed loop to its limit.',
     'time',

@@ -28,7 +28,7 @@ export const opened: WorksheetFunction = {
     if (isRefusal(transfer)) return transfer;
     const note = hiddenNote(transfer.hidden, context.write);
     return formulaAnswer(transfer.ratio, {
-      hidden: transfer.hidden,
+      hidden: transfer.cancelled,
       origin: 'transfer',
       notes: note ? [note] : [],
     });

@@ -1,10 +1,5 @@
 export type { Dimension } from './dimension.ts';
-export {
-  dimensionless,
-  dimensionOf,
-  equalDimensions,
-  powDimension,
-} from './dimension.ts';
+export { dimensionless, dimensionOf, equalDimensions, powDimension } from './dimension.ts';
 export type { Counted } from './dimension-text.ts';
 export { dimensionText } from './dimension-text.ts';
 export type { ExactFactor, Unit } from './unit.ts';

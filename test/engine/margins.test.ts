@@ -116,3 +116,38 @@ describe('a margin in a worksheet', () => {
     expect(cell.result('x').notes.join(' ')).toContain('conditionally stable');
   });
 });
+
+describe('margins of a loop that hides a mode', () => {
+  const cell = evaluateCell(`
+K is 4
+C = K (s - 1)/(s + 2)
+G = 1/(s - 1)
+G2 = K/(s (s + 2))
+
+loop trap driven by r
+  u = C (r - y)
+  y = G u
+
+loop good driven by r
+  q = G2 (r - z)
+  z = q
+  x' = z
+
+cancelled = phase_margin(opened(trap, u))
+behind = phase_margin(opened(good, q))
+require phase_margin(opened(trap, u)) >= 45 deg
+`);
+
+  test('have no value where the cancelled mode is unstable, and no number in a requirement', () => {
+    expect(cell.result('cancelled').value).toBeNull();
+    expect(cell.result('cancelled').notes.join(' ')).toContain('s = 1');
+    expect(cell.requirement('phase_margin')).toMatchObject({ verdict: 'not met', nominal: null });
+  });
+
+  test('stand where the mode is only behind the loop: 90° − atan(wc/2) at wc² = √20 − 2', () => {
+    // |K/(jw (jw + 2))| = 1 for w² (w² + 4) = 16: w² = √20 − 2.
+    const crossover = Math.sqrt(Math.sqrt(20) - 2);
+    const expected = Math.PI / 2 - Math.atan(crossover / 2);
+    expect(cell.result('behind').value).toBeCloseTo(expected, 9);
+  });
+});
