@@ -250,10 +250,7 @@ function sumOfTerms(
   return sum;
 }
 
-/** Steps between two points of a curve where a source begins between them. */
-const FINE = 8;
-
-/** x(t − after) on the curve's times: the impulse response of its transform. */
+/** x(t − after) on the curve's times: the impulse response of its transform, 0 before it begins. */
 function termResponse(
   numerator: number[],
   denominator: number[],
@@ -261,32 +258,20 @@ function termResponse(
   duration: number,
   expression: Expression,
 ): Float64Array {
-  const fine = after === 0 ? 1 : FINE;
-  const step = duration / CURVE_POINTS / fine;
-  const response = timeResponse(
-    numerator,
-    denominator,
-    { kind: 'impulse', size: 1 },
-    step,
-    CURVE_POINTS * fine + 1,
-  );
-  if (isRefusal(response))
-    return stopAt(
-      expression.span,
-      response.code,
-      `\`${formatExpression(expression)}\` cannot be drawn over time: ${response.reason}.`,
-    );
-  if (after === 0) return response;
-  return Float64Array.from({ length: CURVE_POINTS + 1 }, (_, i) =>
-    interpolated(response, i * fine - after / step),
-  );
-}
-
-function interpolated(samples: Float64Array, position: number): number {
-  if (position < 0) return 0;
-  const index = Math.min(samples.length - 2, Math.floor(position));
-  const part = position - index;
-  return samples[index] * (1 - part) + samples[index + 1] * part;
+  const step = duration / CURVE_POINTS;
+  const first = Math.ceil(after / step - 1e-9);
+  const values = new Float64Array(CURVE_POINTS + 1);
+  const count = values.length - first;
+  const begun = Math.max(0, first * step - after);
+  const impulse = { kind: 'impulse', size: 1 } as const;
+  const response = timeResponse(numerator, denominator, impulse, step, Math.max(1, count), begun);
+  if (isRefusal(response)) {
+    const text = formatExpression(expression);
+    const reason = `\`${text}\` cannot be drawn over time: ${response.reason}.`;
+    return stopAt(expression.span, response.code, reason);
+  }
+  if (count > 0) values.set(response, first);
+  return values;
 }
 
 function isGrowing(values: Float64Array): boolean {

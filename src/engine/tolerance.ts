@@ -98,6 +98,12 @@ function signsOverBox(numbers: Numbers, derivations: Derivations): (g: Generator
   };
 }
 
+/** What may be spent on proving one formula monotone, in all its names together. */
+interface Effort {
+  readonly signs: Budget;
+  readonly box: Budget;
+}
+
 /** Whether a formula is proved monotone over the box in each of the names: no derivative changes sign. */
 export function isMonotone(
   ratio: Ratio,
@@ -108,7 +114,10 @@ export function isMonotone(
   try {
     const opened = holdNominals(numbers.opened(ratio), numbers);
     const signOf = signsOverBox(numbers, derivations);
-    return opened !== null && names.every((name) => isMonotoneIn(opened, name, signOf, numbers));
+    const effort = { signs: new Budget(PROOF_BUDGET), box: new Budget(BOX_BUDGET) };
+    return (
+      opened !== null && names.every((name) => isMonotoneIn(opened, name, signOf, numbers, effort))
+    );
   } catch (error) {
     if (error instanceof BudgetExceeded) return false;
     throw error;
@@ -134,20 +143,26 @@ function isMonotoneIn(
   name: string,
   signOf: (g: Generator) => Sign,
   numbers: Numbers,
+  effort: Effort,
 ): boolean {
   const g = symbol(name);
   if (!dependsOn(ratio, g)) return true;
-  const denominator = signOver(ratio.den, signOf, numbers);
+  const denominator = signOver(ratio.den, signOf, numbers, effort);
   if (denominator !== 'positive' && denominator !== 'negative') return false;
   const derivative = numbers.derivative(ratio, g);
   if (derivative === null) return false;
   const parts = [derivative.num, derivative.den];
-  return parts.every((p) => signOver(p, signOf, numbers) !== 'unknown');
+  return parts.every((p) => signOver(p, signOf, numbers, effort) !== 'unknown');
 }
 
 /** The sign of a polynomial over the box: from the signs of its symbols, else from its Bernstein coefficients. */
-function signOver(p: Polynomial, signOf: (g: Generator) => Sign, numbers: Numbers): Sign {
-  const known = signOfPolynomial(p, signOf, new Budget(PROOF_BUDGET));
+function signOver(
+  p: Polynomial,
+  signOf: (g: Generator) => Sign,
+  numbers: Numbers,
+  effort: Effort,
+): Sign {
+  const known = signOfPolynomial(p, signOf, effort.signs);
   if (known !== 'unknown') return known;
   const fixed = new Map<Generator, Ratio>();
   for (const g of generatorsOf(p)) {
@@ -155,7 +170,7 @@ function signOver(p: Polynomial, signOf: (g: Generator) => Sign, numbers: Number
     if (range && isFixed(range)) fixed.set(g, ratioFromRational(range.low));
   }
   const { num } = substitutePolynomial(p, fixed);
-  const sign = signOverBox(num, (g) => rangeOf(g, numbers), new Budget(BOX_BUDGET));
+  const sign = signOverBox(num, (g) => rangeOf(g, numbers), effort.box);
   return sign === 'mixed' || sign === 'undecided' ? 'unknown' : sign;
 }
 

@@ -9,7 +9,7 @@ export type TestInput =
   | { readonly kind: 'sine'; readonly size: number; readonly frequency: number };
 
 /**
- * The response of a transfer function to an input, at the times 0, dt, …, (count − 1) dt.
+ * The response of a transfer function to an input, at the times start, start + dt, …, start + (count − 1) dt.
  *
  * Polynomials in s, highest power first; `frequency` is in rad/s. For the inverse Laplace transform of X(s), ask for
  * the response of X to a unit impulse. Refuses a ratio that is improper with this input (an impulse in the answer), a
@@ -24,6 +24,7 @@ export function timeResponse(
   input: TestInput,
   dt: number,
   count: number,
+  start = 0,
 ): Float64Array | Refusal {
   const [above, below] = withInput(
     withoutLeadingZeros(numerator),
@@ -37,7 +38,7 @@ export function timeResponse(
   if (above.length >= below.length) {
     return refuse('improper', `the response to ${articleOf(input.kind)} contains an impulse`);
   }
-  return companionSamples(above, below, dt, count);
+  return companionSamples(above, below, dt, count, start);
 }
 
 function articleOf(kind: TestInput['kind']): string {
@@ -79,20 +80,29 @@ function companionSamples(
   denominator: readonly number[],
   dt: number,
   count: number,
+  start: number,
 ): Float64Array {
   const size = denominator.length - 1;
   const lead = denominator[0]!;
   const unit = balancingUnit(denominator);
   const scaled = (c: number, k: number): number => c / lead / unit ** k;
-  const data = new Float64Array(size * size);
-  for (let k = 0; k < size; k++) {
-    data[k] = -scaled(denominator[k + 1]!, k) * dt;
-    if (k > 0) data[k * size + k - 1] = unit * dt;
-  }
+  const over = (time: number): Matrix => {
+    const data = new Float64Array(size * size);
+    for (let k = 0; k < size; k++) {
+      data[k] = -scaled(denominator[k + 1]!, k) * time;
+      if (k > 0) data[k * size + k - 1] = unit * time;
+    }
+    return matrixExponential({ rows: size, columns: size, data });
+  };
   const offset = size - numerator.length;
   const row = new Float64Array(size);
   numerator.forEach((c, k) => (row[offset + k] = scaled(c, offset + k)));
-  return march(matrixExponential({ rows: size, columns: size, data }), row, count);
+  return march(over(dt), row, firstColumn(over(start)), count);
+}
+
+/** M · (1, 0, …, 0)ᵀ. */
+function firstColumn({ rows, data }: Matrix): Float64Array {
+  return Float64Array.from({ length: rows }, (_, i) => data[i * rows]!);
 }
 
 /** A power of two near the mean magnitude of the roots that are not 0. */
@@ -103,13 +113,11 @@ function balancingUnit(denominator: readonly number[]): number {
   return 2 ** Math.round(ratio / last);
 }
 
-/** row · step^k · (1, 0, …, 0)ᵀ for k = 0 … count − 1, in two vectors that take turns. */
-function march(step: Matrix, row: Float64Array, count: number): Float64Array {
+/** row · step^k · state for k = 0 … count − 1, in two vectors that take turns. */
+function march(step: Matrix, row: Float64Array, state: Float64Array, count: number): Float64Array {
   const size = step.rows;
   const { data } = step;
-  let state = new Float64Array(size);
-  let next = new Float64Array(size);
-  state[0] = 1;
+  let next: Float64Array = new Float64Array(size);
   const samples = new Float64Array(count);
   for (let k = 0; k < count; k++) {
     let sample = 0;
