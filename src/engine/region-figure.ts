@@ -36,7 +36,7 @@ import { rangeAround } from './gain-range.ts';
 import { plainName, type Numbers, type Subject } from './numbers.ts';
 import { BASE_SCOPE } from './scope.ts';
 import { outcomeOf, Stop, stopAt, type Outcome } from './stop.ts';
-import { sampleBox } from './tolerance.ts';
+import { sampleBox, spreadPoints } from './tolerance.ts';
 
 /** Samples on each side of a gain plane. */
 const REGION_SAMPLES = 400;
@@ -164,7 +164,7 @@ function traceOf(
       y: { from: y.axis.from, to: y.axis.to, n: samples },
       conditions: requests,
     });
-    const words = `The area over the tolerances holds at ${corners} corners of them: looked at, not proved.`;
+    const words = `The area over the tolerances holds at ${corners} points of them: looked at, not proved.`;
     return { trace, notes: corners > 0 ? [words] : [] };
   });
 }
@@ -292,10 +292,7 @@ function cornersOf(
   );
   if (names.length === 0) return [];
   const sample = sampleBox(names, true, numbers);
-  const step = Math.max(1, Math.ceil((sample.count - 1) / MOST_REGION_CORNERS));
-  const corners: ReadonlyMap<string, number>[] = [];
-  for (let i = 1; i < sample.count; i += step) {
-    corners.push(new Map(names.map((name) => [name, sample.columns.get(name)![i]] as const)));
-  }
-  return corners;
+  return spreadPoints(sample, MOST_REGION_CORNERS).map(
+    (i) => new Map(names.map((name) => [name, sample.columns.get(name)![i]] as const)),
+  );
 }

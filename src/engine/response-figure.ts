@@ -27,14 +27,14 @@ import {
 import { plainName, type Numbers, type Points } from './numbers.ts';
 import { BASE_SCOPE } from './scope.ts';
 import { stopAt } from './stop.ts';
-import { sampleBox } from './tolerance.ts';
+import { sampleBox, spreadPoints } from './tolerance.ts';
 
 /** Points on a curve over time, besides the first. */
 const CURVE_POINTS = 400;
 /** Curves in one figure; more cannot be told apart. */
 const MOST_CURVES = 12;
-/** Corners of the tolerances that a band is drawn over, at the most. */
-const MOST_BAND_POINTS = 64;
+/** Points of the tolerances that a band is drawn over, at the most. */
+const MOST_BAND_POINTS = 32;
 
 /** The responses of signals over time, each with its band over the tolerances. */
 export function responseContent(node: DrawStatement, sources: FigureSources): FigureContent {
@@ -114,12 +114,11 @@ function drawCurve(
     (name) => plainName(name) === name && numbers.bounds(name) !== null,
   );
   const sample = sampleBox(names, names.length <= Math.log2(MOST_BAND_POINTS), numbers);
-  const count = Math.min(sample.count, MOST_BAND_POINTS + 1);
-  const responses = compiled.responses(
-    { count, columns: firstOf(sample.columns, count) },
-    duration,
-    expression,
+  const drawn = [0, ...spreadPoints(sample, MOST_BAND_POINTS)];
+  const columns = new Map(
+    [...sample.columns].map(([name, column]) => [name, Float64Array.from(drawn, (i) => column[i])]),
   );
+  const responses = compiled.responses({ count: drawn.length, columns }, duration, expression);
   const label = formatExpression(expression);
   const failure =
     signal.blocks.length === 0
@@ -132,16 +131,9 @@ function drawCurve(
     notes: [
       ...signal.notes,
       ...left,
-      ...(names.length > 0 ? [`Band: ${count - 1} points of the tolerances, corners first.`] : []),
+      ...(names.length > 0 ? [`Band: ${drawn.length - 1} points of the tolerances.`] : []),
     ],
   };
-}
-
-function firstOf(
-  columns: ReadonlyMap<string, Float64Array>,
-  count: number,
-): Map<string, Float64Array> {
-  return new Map([...columns].map(([name, column]) => [name, column.slice(0, count)] as const));
 }
 
 function signalIn(expression: Expression, value: Value): SignalValue {

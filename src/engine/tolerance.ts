@@ -98,6 +98,22 @@ function signsOverBox(numbers: Numbers, derivations: Derivations): (g: Generator
   };
 }
 
+/**
+ * Some points of a sample, as indices from 1 (0 is the nominal), spread so that no name keeps to one of its ends:
+ * multiples of a stride near the golden section that shares no factor with their number. All, if no more than `most`.
+ */
+export function spreadPoints({ count }: Points, most: number): readonly number[] {
+  const points = count - 1;
+  if (points <= most) return Array.from({ length: points }, (_, i) => i + 1);
+  let stride = Math.floor(points * 0.618);
+  while (shareFactor(stride, points)) stride++;
+  return Array.from({ length: most }, (_, i) => 1 + ((i * stride) % points));
+}
+
+function shareFactor(a: number, b: number): boolean {
+  return b === 0 ? a > 1 : shareFactor(b, a % b);
+}
+
 /** What may be spent on proving one formula monotone, in all its names together. */
 interface Effort {
   readonly signs: Budget;
